@@ -1,0 +1,62 @@
+"""Writes the schedule and the quantities of a run as tables."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable
+from pathlib import Path
+
+from tunnelcalc import api
+
+SCHEDULE_HEADER = (
+    "from_m",
+    "to_m",
+    "length_m",
+    "support_class",
+    "least_factor_of_safety",
+    "governing_check",
+    "governing_chainage_m",
+    "needed_pressure_mpa",
+    "ground_units",
+    "flags",
+)
+QUANTITIES_HEADER = ("support_class", "item", "unit", "amount")
+
+
+class ScheduleTables:
+    """`schedule.csv`, a row a zone, and `quantities.csv`, a row a class and item."""
+
+    name = "schedule_tables"
+
+    def write(self, result: api.RunResult, folder: Path) -> Iterable[str]:
+        api.write_table(
+            folder / "schedule.csv", SCHEDULE_HEADER, [_row(zone) for zone in result.zones]
+        )
+        api.write_table(
+            folder / "quantities.csv",
+            QUANTITIES_HEADER,
+            [
+                (total.support_class, total.item, total.unit, api.number_text(total.amount))
+                for total in result.quantities
+            ],
+        )
+        return ("schedule.csv", "quantities.csv")
+
+
+def _row(zone: api.Zone) -> tuple[str, ...]:
+    return (
+        api.number_text(zone.from_m),
+        api.number_text(zone.to_m),
+        api.number_text(zone.length_m),
+        zone.support_class,
+        api.number_text(zone.least_factor_of_safety),
+        zone.governing_check,
+        api.number_text(zone.governing_chainage_m),
+        api.number_text(zone.needed_pressure_mpa),
+        ";".join(zone.ground_units),
+        ";".join(zone.flags),
+    )
+
+
+@api.hookimpl
+def tunnelcalc_register_report_writers(register: Callable[[api.ReportWriter], None]) -> None:
+    register(ScheduleTables())

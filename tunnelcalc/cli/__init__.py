@@ -1,0 +1,1 @@
+"""Commands, one module each, and the screen. Only this room knows the terminal."""

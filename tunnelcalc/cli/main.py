@@ -1,0 +1,105 @@
+"""The command line. Heavy modules are imported by the command that needs them."""
+
+from __future__ import annotations
+
+import argparse
+import sys
+from collections.abc import Sequence
+from pathlib import Path
+
+import tunnelcalc
+from tunnelcalc.errors import ExitCode, FolderHeldError, InputError
+
+EPILOG = (
+    "An aid to, and no substitute for, licensed engineering judgement; local codes govern. "
+    "Exit codes: 0 complete; 1 defect or machine failure; 2 wrong input; 3 complete, but "
+    "something could not be evaluated; 4 with --strict, a section has no adequate class; "
+    "6 the folder was filled by another run; 130 interrupted."
+)
+
+
+def build_parser() -> argparse.ArgumentParser:
+    """The commands and their options."""
+    parser = argparse.ArgumentParser(
+        prog="tunnelcalc",
+        description="From an alignment's ground, section by section, to a tunnel support schedule.",
+        epilog=EPILOG,
+    )
+    parser.add_argument("--version", action="version", version=tunnelcalc.__version__)
+    commands = parser.add_subparsers(dest="command", required=True, metavar="COMMAND")
+
+    run = commands.add_parser("run", help="compute a project and write a new folder of results")
+    run.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+    run.add_argument(
+        "--out", type=Path, metavar="DIR", help="folder for the results; must be absent or empty"
+    )
+    run.add_argument(
+        "--strict", action="store_true", help="exit with 4 if a section has no adequate class"
+    )
+    run.add_argument(
+        "--chunk",
+        type=_positive,
+        metavar="N",
+        help="sections computed together; changes memory and speed, never a result",
+    )
+
+    validate = commands.add_parser("validate", help="check a project and list every problem")
+    validate.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+
+    commands.add_parser("plugins", help="list what plugins offer, with parameters and ranges")
+
+    stages = commands.add_parser("stages", help="explain the chain of stages of a project")
+    stages.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+    return parser
+
+
+def _positive(text: str) -> int:
+    number = int(text)
+    if number < 1:
+        raise argparse.ArgumentTypeError("must be 1 or more")
+    return number
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run a command and return its exit code."""
+    options = build_parser().parse_args(arguments)
+    try:
+        return int(_command(options))
+    except InputError as error:
+        from tunnelcalc.cli.screen import print_problems
+
+        print_problems(error.problems, sys.stderr)
+        return ExitCode.INPUT
+    except FolderHeldError as error:
+        print(f"tunnelcalc: {error}", file=sys.stderr)
+        return ExitCode.HELD
+    except KeyboardInterrupt:
+        print("tunnelcalc: interrupted; nothing was written", file=sys.stderr)
+        return ExitCode.INTERRUPTED
+    except BrokenPipeError:
+        # The reader of our output has gone: nothing to tell, and nobody to tell it to.
+        sys.stderr.close()
+        return ExitCode.INTERNAL
+    except OSError as error:
+        place = f" {error.filename}" if error.filename else ""
+        print(f"tunnelcalc: the machine refused:{place}: {error.strerror}", file=sys.stderr)
+        print("  nothing was written; free the disk or correct the permission", file=sys.stderr)
+        return ExitCode.INTERNAL
+
+
+def _command(options: argparse.Namespace) -> ExitCode:
+    if options.command == "run":
+        from tunnelcalc.cli.run_command import run
+
+        return run(options.project, options.out, options.strict, options.chunk)
+    if options.command == "validate":
+        from tunnelcalc.cli.validate_command import validate
+
+        return validate(options.project)
+    if options.command == "stages":
+        from tunnelcalc.cli.stages_command import stages
+
+        return stages(options.project)
+    from tunnelcalc.cli.plugins_command import plugins
+
+    return plugins()

@@ -1,0 +1,198 @@
+"""`tunnelcalc run`: compute a project, then show what a designer wants to know first."""
+
+from __future__ import annotations
+
+import sys
+from pathlib import Path
+
+import numpy as np
+from rich.console import Console
+from rich.progress import BarColumn, MofNCompleteColumn, Progress, TextColumn, TimeRemainingColumn
+from rich.table import Table
+
+from tunnelcalc.cli.screen import console, metres, rounded, row, table
+from tunnelcalc.errors import ExitCode
+from tunnelcalc.limits_statement import LIMITS
+from tunnelcalc.plugin.registry import load_plugins
+from tunnelcalc.results import RunResult
+from tunnelcalc.run import CHUNK_SECTIONS, Finished, run_project
+from tunnelcalc.schedule.selection import NONE_ADEQUATE, NONE_ADEQUATE_NAME
+
+MOST_ZONES = 60
+MOST_WORST = 8
+
+
+def run(project: Path, out: Path | None, strict: bool, chunk: int | None) -> ExitCode:
+    """Run a project; the summary goes to standard output, progress to standard error."""
+    registry = load_plugins()
+    bar = Progress(
+        TextColumn("sections"),
+        BarColumn(),
+        MofNCompleteColumn(),
+        TimeRemainingColumn(),
+        console=console(sys.stderr),
+        transient=True,
+    )
+    with bar:
+        task = bar.add_task("sections", total=None)
+        finished = run_project(
+            project,
+            registry,
+            out=out,
+            strict=strict,
+            chunk_sections=chunk or CHUNK_SECTIONS,
+            progress=lambda done, total: bar.update(task, completed=done, total=total),
+        )
+    show(finished, console())
+    return finished.exit_code
+
+
+def show(finished: Finished, screen: Console) -> None:
+    """The summary of a run."""
+    result = finished.result
+    screen.print(result.project.title, style="bold")
+    screen.print(schedule_table(result))
+    screen.print(length_table(result))
+    screen.print(worst_table(result))
+    raised = flag_table(result)
+    if raised.row_count:
+        screen.print(raised)
+    for warning in result.warnings:
+        screen.print(f"note: {warning}")
+    if result.without_adequate_class:
+        screen.print(
+            f"attention: {result.without_adequate_class} of {result.sections.count} sections have "
+            "no adequate class",
+            style="bold",
+        )
+    for incident in result.incidents:
+        screen.print(
+            f"not evaluated: {incident.what}: {incident.reason} ({incident.sections} sections, "
+            f"first at {metres(incident.first_chainage_m)} m)",
+            style="bold",
+        )
+    screen.print("Limits", style="bold")
+    for limit in LIMITS:
+        screen.print(f"- {limit}")
+    screen.print(f"written: {finished.folder}", soft_wrap=True)
+
+
+def schedule_table(result: RunResult) -> Table:
+    """The zones, or the first of very many."""
+    numeric = ("from m", "to m", "length m", "least FS", "at m", "needs MPa")
+    made = table(
+        "Support schedule",
+        "from m",
+        "to m",
+        "length m",
+        "class",
+        "least FS",
+        "governed by",
+        "at m",
+        "needs MPa",
+        "ground units",
+        right=numeric,
+    )
+    for zone in result.zones[:MOST_ZONES]:
+        needed = zone.needed_pressure_mpa
+        made.add_row(
+            *row(
+                metres(zone.from_m),
+                metres(zone.to_m),
+                metres(zone.length_m),
+                zone.support_class,
+                rounded(zone.least_factor_of_safety),
+                zone.governing_check,
+                metres(zone.governing_chainage_m),
+                rounded(needed) if needed == needed else "",
+                ", ".join(zone.ground_units),
+            )
+        )
+    if len(result.zones) > MOST_ZONES:
+        made.caption = f"{len(result.zones) - MOST_ZONES} more zones stand in schedule.csv"
+    return made
+
+
+def length_table(result: RunResult) -> Table:
+    """Length of each class as required and as scheduled."""
+    made = table(
+        "Class lengths",
+        "class",
+        "required m",
+        "scheduled m",
+        "share %",
+        right=("required m", "scheduled m", "share %"),
+    )
+    sections = result.sections
+    length = sections["to_m"] - sections["from_m"]
+    total = float(length.sum())
+    numbers = [*range(len(result.project.class_names)), NONE_ADEQUATE]
+    for number, name in zip(
+        numbers, (*result.project.class_names, NONE_ADEQUATE_NAME), strict=True
+    ):
+        required = float(length[sections["required_class"] == number].sum())
+        scheduled = float(length[sections["scheduled_class"] == number].sum())
+        made.add_row(
+            *row(name, metres(required), metres(scheduled), f"{100 * scheduled / total:.1f}")
+        )
+    made.add_section()
+    made.add_row(*row("all", metres(total), metres(total), "100.0"))
+    return made
+
+
+def worst_table(result: RunResult) -> Table:
+    """The sections with the least factor in their scheduled class."""
+    numeric = ("at m", "FS", "closure %", "limit %", "cover m")
+    made = table(
+        "Worst sections",
+        "at m",
+        "class",
+        "FS",
+        "closure %",
+        "limit %",
+        "ground unit",
+        "cover m",
+        right=numeric,
+    )
+    sections = result.sections
+    scheduled = sections["scheduled_class"]
+    decided = np.flatnonzero(scheduled != NONE_ADEQUATE)
+    factors = sections["class_factor_of_safety"][decided, scheduled[decided]]
+    order = np.argsort(np.where(np.isnan(factors), np.inf, factors), kind="stable")
+    for position in decided[order[:MOST_WORST]].tolist():
+        number = int(scheduled[position])
+        made.add_row(
+            *row(
+                metres(float(sections["chainage_m"][position])),
+                result.project.class_names[number],
+                rounded(float(sections["class_factor_of_safety"][position, number])),
+                rounded(float(sections["class_closure_pct"][position, number])),
+                rounded(result.project.criteria.closure_pct),
+                str(sections["ground_unit"][position]),
+                rounded(float(sections["cover_m"][position])),
+            )
+        )
+    return made
+
+
+def flag_table(result: RunResult) -> Table:
+    """Flags that were raised or could not be assessed."""
+    made = table(
+        "Flags on validity",
+        "flag",
+        "sections",
+        "not assessed",
+        "meaning and remedy",
+        right=("sections", "not assessed"),
+    )
+    for flag in result.flags:
+        if flag.raised or flag.not_assessed:
+            made.add_row(
+                *row(
+                    flag.name,
+                    str(flag.raised),
+                    str(flag.not_assessed),
+                    f"{flag.meaning}; {flag.remedy}",
+                )
+            )
+    return made

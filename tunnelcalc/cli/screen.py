@@ -1,0 +1,62 @@
+"""What stands on the screen: engineering rounding, with units."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import TextIO
+
+from rich.console import Console
+from rich.table import Table
+from rich.text import Text
+
+from tunnelcalc.errors import Problem
+
+NARROWEST = 100
+"""Columns that tables take when nobody looks at a terminal."""
+
+
+def console(stream: TextIO | None = None) -> Console:
+    """A console that prints names as they are: no markup, no highlighting."""
+    screen = Console(file=stream, markup=False, highlight=False, emoji=False, soft_wrap=False)
+    if not screen.is_terminal:
+        screen.width = max(screen.width, NARROWEST)
+    return screen
+
+
+def print_problems(problems: Sequence[Problem], stream: TextIO) -> None:
+    """Every problem, and how many there are."""
+    for problem in problems:
+        print(problem, file=stream)
+    count = len(problems)
+    print(f"{count} problem{'s' if count != 1 else ''} found", file=stream)
+
+
+def table(title: str, *columns: str, right: Sequence[str] = ()) -> Table:
+    """A plain table with a title; the columns in `right` hold numbers."""
+    made = Table(title=title, title_justify="left", title_style="bold")
+    for name in columns:
+        made.add_column(name, justify="right" if name in right else "left", overflow="fold")
+    return made
+
+
+def row(*cells: str) -> list[Text]:
+    """Cells that are printed as they are."""
+    return [Text(cell) for cell in cells]
+
+
+def rounded(value: float, digits: int = 3) -> str:
+    """A number to a few significant digits, without an exponent where that is readable."""
+    if value != value:
+        return "-"
+    if value == 0:
+        return "0"
+    if abs(value) >= 1e7 or abs(value) < 1e-4:
+        return f"{value:.{digits - 1}e}"
+    text = f"{value:.{digits}g}"
+    return f"{float(text):.0f}" if "e" in text else text
+
+
+def metres(value: float) -> str:
+    """A chainage or length to the centimetre, without idle zeros."""
+    text = f"{value:.2f}"
+    return text.rstrip("0").rstrip(".")

@@ -1,0 +1,157 @@
+"""Reads support classes: each element against the parameters that its kind declares."""
+
+from __future__ import annotations
+
+from collections import Counter
+
+from tunnelcalc.inputs.values import Reader
+from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import Element, SupportClass
+from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
+from tunnelcalc.support.reaction import FORMS, SOLVED_FORMS
+from tunnelcalc.text import suggestion
+from tunnelcalc.vocabulary import Limits
+
+INSTALLED_AT = Limits(0, 10000)
+RESERVED_NAMES = (NONE_ADEQUATE_NAME, "not_decided")
+
+
+def read_support_classes(
+    reader: Reader, registry: Registry, plugins: tuple[str, ...], smallest_radius_m: float | None
+) -> tuple[SupportClass, ...]:
+    """The classes, lightest first. Classes with problems are left out: they are told."""
+    classes: list[SupportClass] = []
+    names: set[str] = set()
+    for entry in reader.tables_of("support_classes", may_be_empty=False):
+        name = entry.text("name", "a name of its own")
+        if name is not None and (name in names or name in RESERVED_NAMES):
+            entry.complain(
+                "name",
+                f'holds "{name}", which is taken',
+                allowed="a name that no other class has; not " + " or ".join(RESERVED_NAMES),
+                fix="give the class another name",
+            )
+        names.add(name or "")
+        installed = entry.number("installed_at_m", INSTALLED_AT, "m", required=False)
+        elements = _elements(entry, registry, plugins, installed, smallest_radius_m)
+        entry.finish()
+        if name is not None:
+            classes.append(SupportClass(name, tuple(elements)))
+    return tuple(classes)
+
+
+def _elements(
+    entry: Reader,
+    registry: Registry,
+    plugins: tuple[str, ...],
+    class_installed_m: float | None,
+    smallest_radius_m: float | None,
+) -> list[Element]:
+    elements: list[Element] = []
+    count: Counter[str] = Counter()
+    for item in entry.tables_of("elements"):
+        kind = _kind(item, registry)
+        own = item.number("installed_at_m", INSTALLED_AT, "m", required=False)
+        if own is None and class_installed_m is None and not item.has("installed_at_m"):
+            item.complain(
+                "installed_at_m",
+                "is missing here and in the class",
+                allowed=INSTALLED_AT.describe("m") + ", behind the face",
+                fix="state it for the class, or for each of its elements",
+            )
+        if kind is None:
+            continue
+        before = len(item.problems)
+        values = _parameters(item, kind)
+        item.finish()
+        count[kind.name] += 1
+        label = kind.name if count[kind.name] == 1 else f"{kind.name}_{count[kind.name]}"
+        installed = own if own is not None else class_installed_m
+        if len(item.problems) > before or installed is None:
+            continue
+        element = Element(kind.name, label, installed, values)
+        _fits(item, kind, element, smallest_radius_m)
+        _is_supported(item, kind, element, registry, plugins)
+        elements.append(element)
+    return elements
+
+
+def _kind(item: Reader, registry: Registry) -> SupportKind | None:
+    known = registry.names("support_kind")
+    name = item.text("kind", " or ".join(known))
+    if name is None:
+        return None
+    if name in known:
+        return registry.support_kind(name)
+    claimants = registry.disputed.get(("support_kind", name))
+    if claimants:
+        message = f'names "{name}", which the plugins {" and ".join(sorted(claimants))} both offer'
+        fix = "uninstall one of them"
+    else:
+        hint = suggestion(name, known)
+        failed = "".join(f"; {failure}" for failure in registry.failures)
+        message = f'names "{name}", a kind of support that no plugin handles'
+        fix = f'did you mean "{hint}"?' if hint else f"install the plugin that offers it{failed}"
+    allowed = " or ".join(known) or "none: no plugin offers a kind of support"
+    item.complain("kind", message, allowed=allowed, fix=fix)
+    return None
+
+
+def _parameters(item: Reader, kind: SupportKind) -> dict[str, float | str]:
+    values: dict[str, float | str] = {}
+    for parameter in sorted(kind.parameters, key=lambda p: p.only_if is not None):
+        if parameter.only_if is not None:
+            other, choice = parameter.only_if
+            if values.get(other) != choice:
+                if item.has(parameter.name) and other in values:
+                    item.complain(
+                        parameter.name,
+                        f"has no use with {other}: {values[other]}",
+                        fix=f"remove it, or write {other}: {choice}",
+                    )
+                item.known[parameter.name] = None
+                continue
+        value = _value(item, parameter)
+        if value is not None:
+            values[parameter.name] = value
+    return values
+
+
+def _value(item: Reader, parameter: Parameter) -> float | str | None:
+    if parameter.choices:
+        return item.choice(parameter.name, parameter.choices)
+    return item.number(parameter.name, parameter.limits, parameter.unit)
+
+
+def _fits(
+    item: Reader, kind: SupportKind, element: Element, smallest_radius_m: float | None
+) -> None:
+    if smallest_radius_m is None:
+        return
+    for misfit in kind.misfits(element, smallest_radius_m):
+        item.complain(misfit.parameter, misfit.message, fix=misfit.fix)
+
+
+def _is_supported(
+    item: Reader,
+    kind: SupportKind,
+    element: Element,
+    registry: Registry,
+    plugins: tuple[str, ...],
+) -> None:
+    form = kind.reaction_form(element)
+    if form not in SOLVED_FORMS:
+        known = "is not one of the four forms" if form not in FORMS else "is not solved yet"
+        item.complain(
+            "kind",
+            f'names "{kind.name}", which reacts as {form}; this form {known}',
+            allowed="an element that reacts as " + " or ".join(SOLVED_FORMS),
+            fix="take an element of another kind",
+        )
+    elif not any(check.carries_load for check in registry.checks_for(element, plugins)):
+        item.complain(
+            "kind",
+            f'names "{kind.name}", for which no load check is registered',
+            fix="name under plugins: the plugin that checks it, or take another kind",
+        )

@@ -1,0 +1,182 @@
+"""Gives the text of a table its meaning: known columns, numbers in range, choices."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass, field
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.errors import InputError, Problems, Where
+from tunnelcalc.inputs.files import ProjectFolder
+from tunnelcalc.plugin.raw_table import RawTable
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.text import as_number, number_fix, suggestion
+from tunnelcalc.vocabulary import GROUND, Limits, Quantity, Sort, ground_quantity
+
+
+@dataclass(slots=True)
+class TypedTable:
+    """Columns of a ground or units table.
+
+    `numbers[name]` is (r,), NaN where the cell is empty; `texts[name]` is (r,) of text, empty
+    where the cell is. Rows that could not be read are NaN or empty, with a problem told.
+    """
+
+    raw: RawTable
+    problems: Problems
+    numbers: dict[str, Array] = field(default_factory=dict)
+    texts: dict[str, Array] = field(default_factory=dict)
+    wrong: dict[str, Array] = field(default_factory=dict)
+    """Mask (r,) of the cells of a column about which a problem was told."""
+
+    def wrong_in(self, name: str) -> Array:
+        """Mask (r,): these cells are told already, and not missing."""
+        return self.wrong.get(name, np.zeros(self.rows, dtype=bool))
+
+    @property
+    def rows(self) -> int:
+        return len(self.raw.lines)
+
+    def has(self, name: str) -> bool:
+        return name in self.numbers or name in self.texts
+
+    def place(self, row: int, name: str | None = None) -> Where:
+        """Where a row, or its cell of one column, stands."""
+        if name is None or name not in self.raw.header:
+            return Where(self.raw.file, self.raw.lines[row])
+        return self.raw.place(row, self.raw.header.index(name))
+
+
+def open_table(
+    folder: ProjectFolder, path: str, named_at: Where, key: str, registry: Registry
+) -> RawTable | None:
+    """The text cells of a table, by the reader that knows its file ending."""
+    problems = folder.problems
+    suffix = "." + path.rpartition(".")[2].lower() if "." in path else ""
+    reader = registry.ground_reader(suffix)
+    if reader is None:
+        known = sorted({s for o in registry.of_sort("ground_reader") for s in o.thing.suffixes})
+        problems.add(
+            named_at,
+            f'names "{path}", which no plugin can read',
+            name=key,
+            allowed=f"a file ending in {' or '.join(known) or 'none: no reader is installed'}",
+            fix="save the table in one of these formats",
+        )
+        return None
+    file = folder.read(path, named_at, key)
+    if file is None:
+        return None
+    try:
+        return reader.read(file.path, file.content)
+    except InputError as error:
+        problems.found.extend(error.problems)
+        return None
+
+
+def typed(
+    raw: RawTable,
+    problems: Problems,
+    numbers: dict[str, Limits],
+    texts: Sequence[str],
+    carried: Iterable[str],
+    context: Callable[[int], str],
+) -> TypedTable:
+    """Read every cell.
+
+    Parameters
+    ----------
+    numbers, texts : columns that this table has besides the ground quantities.
+    carried : columns that the project asks to be carried along as they are.
+    context : words that help to find a row.
+    """
+    table = TypedTable(raw, problems)
+    kept = set(carried)
+    known = [*numbers, *texts, *GROUND]
+    seen: dict[str, int] = {}
+    for column, name in enumerate(raw.header):
+        cells = raw.columns[column]
+        if name in seen:
+            _about_header(
+                table, column, "stands twice", f"keep one column of this name, not {seen[name] + 1}"
+            )
+            continue
+        seen[name] = column
+        quantity = ground_quantity(name)
+        if name in texts or (name in kept and quantity is None and name not in numbers):
+            table.texts[name] = np.array(cells, dtype=object)
+        elif name in numbers:
+            table.numbers[name] = _numbers(table, column, numbers[name], "m", context)
+        elif quantity is None:
+            hint = suggestion(name, known)
+            fix = (
+                f'did you mean "{hint}"?'
+                if hint
+                else "remove it, or list it under ground: other_columns to carry it along"
+            )
+            if name == "":
+                fix = "give the column a name, or remove it"
+            _about_header(table, column, "is unknown", fix)
+        elif quantity.sort is Sort.CHOICE:
+            table.texts[name] = _choices(table, column, quantity, context)
+        else:
+            table.numbers[name] = _numbers(table, column, quantity.limits, quantity.unit, context)
+    return table
+
+
+def _about_header(table: TypedTable, column: int, message: str, fix: str) -> None:
+    table.problems.add(
+        table.raw.head(column), message, name=f'column "{table.raw.header[column]}"', fix=fix
+    )
+
+
+def _numbers(
+    table: TypedTable, column: int, limits: Limits, unit: str, context: Callable[[int], str]
+) -> Array:
+    cells = table.raw.columns[column]
+    values = np.array([_float(cell) for cell in cells], dtype=float)
+    filled = np.array([cell != "" for cell in cells], dtype=bool)
+    wrong = np.flatnonzero(filled & ~limits.contain(values))
+    for row in wrong.tolist():
+        text = cells[row]
+        number = as_number(text)
+        table.problems.add(
+            table.raw.place(row, column),
+            f'holds "{text}", which is {"not a number" if number is None else "out of range"}',
+            name=f'column "{table.raw.header[column]}"',
+            allowed=limits.describe(unit),
+            context=context(row),
+            fix=number_fix(text) if number is None else "correct the value, and check its unit",
+        )
+    values[wrong] = np.nan
+    table.wrong[table.raw.header[column]] = filled & np.isnan(values)
+    return values
+
+
+def _float(cell: str) -> float:
+    """Fast for what is nearly always a plain number; NaN for anything else."""
+    try:
+        value = float(cell)
+    except ValueError:
+        return np.nan
+    return value if "_" not in cell and cell.isascii() else np.nan
+
+
+def _choices(
+    table: TypedTable, column: int, quantity: Quantity, context: Callable[[int], str]
+) -> Array:
+    cells = np.array(table.raw.columns[column], dtype=object)
+    allowed = ("", *quantity.choices)
+    for row, text in enumerate(cells.tolist()):
+        if text not in allowed:
+            table.problems.add(
+                table.raw.place(row, column),
+                f'holds "{text}"',
+                name=f'column "{quantity.name}"',
+                allowed=quantity.allowed(),
+                context=context(row),
+                fix="write one of the allowed words, or leave the cell empty",
+            )
+    return cells

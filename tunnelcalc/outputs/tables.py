@@ -1,0 +1,193 @@
+"""The tables with a row a section: sections, classes, checks."""
+
+from __future__ import annotations
+
+import os
+from collections.abc import Sequence
+from itertools import chain
+from pathlib import Path
+from typing import TextIO
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.outputs.cells import number_texts, text_cell
+from tunnelcalc.project import Project
+from tunnelcalc.results import CheckLine, governing_labels
+from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
+from tunnelcalc.sections import Sections
+from tunnelcalc.support.adequacy import Outcome
+
+SECTION_COLUMNS = (
+    "radius_m",
+    "in_situ_stress_mpa",
+    "mb",
+    "s",
+    "a",
+    "rock_mass_strength_mpa",
+    "tensile_strength_mpa",
+    "global_strength_mpa",
+    "friction_angle_deg",
+    "cohesion_mpa",
+    "deformation_modulus_mpa",
+    "critical_pressure_mpa",
+    "plastic_radius_m",
+    "closure_mm",
+    "closure_pct",
+)
+"""Columns of `sections.csv` between the ground's and the classes."""
+
+CLASS_HEADER = (
+    "chainage_m",
+    "support_class",
+    "installation_closure_mm",
+    "support_pressure_mpa",
+    "supported_closure_mm",
+    "supported_closure_pct",
+    "supported_plastic_radius_m",
+    "factor_of_safety",
+    "governing_check",
+    "adequate",
+)
+
+CHECK_HEADER = (
+    "chainage_m",
+    "support_class",
+    "element",
+    "check",
+    "demand",
+    "capacity",
+    "unit",
+    "factor_of_safety",
+    "outcome",
+    "reason",
+)
+
+OUTCOME_WORDS = {
+    Outcome.PASS: "pass",
+    Outcome.FAIL: "fail",
+    Outcome.NOT_EVALUATED: "not_evaluated",
+}
+
+ROWS_AT_ONCE = 20_000
+
+
+class ChunkTables:
+    """Writes `classes.csv` and `checks.csv` while chunks of sections are finished."""
+
+    def __init__(self, folder: Path, project: Project, checks: Sequence[CheckLine]) -> None:
+        self.project = project
+        self.checks = checks
+        self._classes = _opened(folder / "classes.csv", CLASS_HEADER)
+        self._checks = _opened(folder / "checks.csv", CHECK_HEADER)
+
+    def write(self, chunk: Sections) -> None:
+        """Append the rows of a chunk: by section, then class, then element and check."""
+        chainage = number_texts(chunk["chainage_m"])
+        by_class = [
+            self._class_lines(chunk, chainage, number)
+            for number in range(len(self.project.support_classes))
+        ]
+        self._classes.writelines(chain.from_iterable(zip(*by_class, strict=True)))
+        by_check = [
+            self._check_lines(chunk, chainage, position, line)
+            for position, line in enumerate(self.checks)
+        ]
+        self._checks.writelines(chain.from_iterable(zip(*by_check, strict=True)))
+
+    def close(self) -> None:
+        """Finish both files and make sure that they are on the disk."""
+        for stream in (self._classes, self._checks):
+            _finish(stream)
+
+    def abandon(self) -> None:
+        """Close both files of a run that failed."""
+        for stream in (self._classes, self._checks):
+            stream.close()
+
+    def _class_lines(self, chunk: Sections, chainage: list[str], number: int) -> list[str]:
+        name = text_cell(self.project.class_names[number])
+        labels = [text_cell(label) for label in governing_labels(self.checks, number)]
+        numeric = [
+            number_texts(chunk[column][:, number])
+            for column in (
+                "installation_closure_mm",
+                "class_support_pressure_mpa",
+                "class_closure_mm",
+                "class_closure_pct",
+                "class_plastic_radius_m",
+                "class_factor_of_safety",
+            )
+        ]
+        governing = [labels[int(code)] for code in chunk["class_governing"][:, number].tolist()]
+        adequate = np.where(chunk["class_adequate"][:, number], "yes", "no").tolist()
+        rows = zip(chainage, *numeric, governing, adequate, strict=True)
+        return [
+            f"{at},{name},{u},{p},{us},{pct},{rp},{fs},{check},{ok}\n"
+            for at, u, p, us, pct, rp, fs, check, ok in rows
+        ]
+
+    def _check_lines(
+        self, chunk: Sections, chainage: list[str], position: int, line: CheckLine
+    ) -> list[str]:
+        middle = ",".join(text_cell(t) for t in (line.class_name, line.element, line.check))
+        unit = text_cell(line.unit)
+        demand, capacity, factor = (
+            number_texts(chunk[column][:, position])
+            for column in ("check_demand", "check_capacity", "check_factor_of_safety")
+        )
+        outcome = [OUTCOME_WORDS[Outcome(c)] for c in chunk["check_outcome"][:, position].tolist()]
+        reason = [text_cell(text) for text in chunk["check_reason"][:, position].tolist()]
+        return [
+            f"{at},{middle},{d},{c},{unit},{f},{o},{why}\n"
+            for at, d, c, f, o, why in zip(
+                chainage, demand, capacity, factor, outcome, reason, strict=True
+            )
+        ]
+
+
+def write_sections(
+    folder: Path, project: Project, sections: Sections, flag_names: Sequence[str]
+) -> None:
+    """Write `sections.csv`."""
+    names = [*("chainage_m", "from_m", "to_m"), *project.ground_columns, *SECTION_COLUMNS]
+    header = (*names, "required_class", "scheduled_class", "flags")
+    stream = _opened(folder / "sections.csv", [text_cell(name) for name in header])
+    class_cells = [text_cell(name) for name in (*project.class_names, NONE_ADEQUATE_NAME)]
+    for start in range(0, sections.count, ROWS_AT_ONCE):
+        part = sections.take(slice(start, start + ROWS_AT_ONCE))
+        columns = [_cells(part[name]) for name in names]
+        for name in ("required_class", "scheduled_class"):
+            # NONE_ADEQUATE is -1: the last of the cells.
+            columns.append([class_cells[number] for number in part[name].tolist()])
+        columns.append(flag_texts(part["flag_raised"], flag_names))
+        stream.writelines(",".join(row) + "\n" for row in zip(*columns, strict=True))
+    _finish(stream)
+
+
+def flag_texts(raised: Array, flag_names: Sequence[str]) -> list[str]:
+    """(n,) names of the raised flags, sorted and joined by a semicolon; `raised` is (n, f)."""
+    patterns, which = np.unique(raised, axis=0, return_inverse=True)
+    texts = [
+        ";".join(sorted(name for name, on in zip(flag_names, row, strict=True) if on))
+        for row in patterns.tolist()
+    ]
+    return [texts[number] for number in which.ravel().tolist()]
+
+
+def _cells(column: Array) -> list[str]:
+    if column.dtype == object:
+        return [text_cell(text) for text in column.tolist()]
+    return number_texts(column)
+
+
+def _opened(path: Path, header: Sequence[str]) -> TextIO:
+    stream = path.open("w", encoding="utf-8", newline="")
+    stream.write(",".join(header) + "\n")
+    return stream
+
+
+def _finish(stream: TextIO) -> None:
+    stream.flush()
+    os.fsync(stream.fileno())
+    stream.close()

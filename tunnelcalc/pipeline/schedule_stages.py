@@ -1,0 +1,63 @@
+"""Stages over the whole alignment: zoning, and flags on validity."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.pipeline.stage import Stage
+from tunnelcalc.plugin.contract import ValidityFlag
+from tunnelcalc.project import ScheduleRules
+from tunnelcalc.schedule.zoning import zone_classes
+from tunnelcalc.sections import Sections
+
+
+def zoning_stage(rules: ScheduleRules) -> Stage:
+    """From the required class of each section to zones that can be built."""
+
+    def compute(sections: Sections) -> Mapping[str, Array]:
+        zoning = zone_classes(
+            sections["required_class"],
+            sections["class_adequate"],
+            sections["from_m"],
+            sections["to_m"],
+            carry_m=rules.carry_m,
+            minimum_zone_m=rules.minimum_zone_m,
+        )
+        return {
+            "scheduled_class": zoning.scheduled,
+            "rule_not_applied": zoning.rule_not_applied,
+        }
+
+    return Stage(
+        "zoning",
+        "heavier class carried into lighter ground, then short zones merged, until nothing changes",
+        ("required_class", "class_adequate", "from_m", "to_m"),
+        ("scheduled_class", "rule_not_applied"),
+        compute,
+        whole_alignment=True,
+    )
+
+
+def flags_stage(flags: Sequence[ValidityFlag]) -> Stage:
+    """Which flags are raised, and which could not be assessed; (n, f) each."""
+
+    def compute(sections: Sections) -> Mapping[str, Array]:
+        raised = np.zeros((sections.count, len(flags)), dtype=bool)
+        unknown = np.zeros_like(raised)
+        for number, flag in enumerate(flags):
+            for need in flag.needs:
+                unknown[:, number] |= np.isnan(sections[need])
+            raised[:, number] = flag.raised(sections) & ~unknown[:, number]
+        return {"flag_raised": raised, "flag_not_assessed": unknown}
+
+    return Stage(
+        "flags",
+        "where the method reaches its limits: " + ", ".join(flag.name for flag in flags),
+        tuple(dict.fromkeys(need for flag in flags for need in flag.needs)),
+        ("flag_raised", "flag_not_assessed"),
+        compute,
+        whole_alignment=True,
+    )

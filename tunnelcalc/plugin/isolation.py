@@ -1,0 +1,150 @@
+"""Calls into plugins: what goes wrong inside one costs its own rows, never the run.
+
+A plugin that raises, or returns arrays of the wrong shape or values that are not finite, gives
+NaN rows with a reason. Our own bugs outside these calls are not caught here.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Sequence
+from typing import NamedTuple
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.plugin.contract import Amount, Evaluation, SupportCheck, SupportKind
+from tunnelcalc.plugin.registry import describe
+from tunnelcalc.project import Element
+from tunnelcalc.sections import Sections
+from tunnelcalc.support.reaction import LinearSpring
+
+NO_REASON = ""
+
+
+class Contained(NamedTuple):
+    """What a plugin returned: values (k, n), NaN where `reason` (n,) is not empty."""
+
+    values: Array
+    reason: Array
+
+
+def contained(
+    call: Callable[[Sections], Sequence[Array]], sections: Sections, names: Sequence[str]
+) -> Contained:
+    """Arrays of values not below 0 from a plugin, one for each of `names`.
+
+    Where the call raises, the sections are halved until the offending ones stand alone: the
+    outcome of a section never depends on the others that are computed with it.
+    """
+    count = sections.count
+    if count == 0:
+        return Contained(np.empty((len(names), 0)), np.empty(0, dtype=object))
+    try:
+        returned = call(sections)
+    except (Exception, SystemExit) as error:
+        if count == 1:
+            return _refused(names, 1, describe(error))
+        half = count // 2
+        parts = [
+            contained(call, sections.take(piece), names)
+            for piece in (slice(None, half), slice(half, None))
+        ]
+        return Contained(
+            np.concatenate([part.values for part in parts], axis=1),
+            np.concatenate([part.reason for part in parts]),
+        )
+    if len(returned) != len(names):
+        return _refused(names, count, f"returned {len(returned)} arrays, not {len(names)}")
+    values = np.empty((len(names), count))
+    reason = np.full(count, NO_REASON, dtype=object)
+    for row, (name, array) in enumerate(zip(names, returned, strict=True)):
+        fault = _misshapen(name, array, count)
+        if fault:
+            return _refused(names, count, fault)
+        values[row] = array
+        reason[~np.isfinite(values[row])] = f"{name} is not finite"
+        reason[values[row] < 0] = f"{name} is below 0"
+    values[:, reason != NO_REASON] = np.nan
+    return Contained(values, reason)
+
+
+def contained_spring(kind: SupportKind, sections: Sections, element: Element) -> Contained:
+    """Stiffness [MPa/m] and capacity [MPa] of an element that reacts as a linear spring."""
+
+    def call(part: Sections) -> Sequence[Array]:
+        reaction = kind.reaction(part, element)
+        if not isinstance(reaction, LinearSpring):
+            raise TypeError(f"the reaction is a {type(reaction).__name__}, not a LinearSpring")
+        return (reaction.stiffness_mpa_per_m, reaction.capacity_mpa)
+
+    return contained(call, sections, ("stiffness", "capacity"))
+
+
+def contained_evaluation(
+    check: SupportCheck, sections: Sections, element: Element
+) -> tuple[Contained, Array]:
+    """Demand and capacity of a check, and the mask of sections that a rule leaves out.
+
+    A row that is left out is NaN and carries the check's own reason. Only rules may leave rows
+    out: in a load check they stay marked as faults.
+    """
+
+    def call(part: Sections) -> Sequence[Array]:
+        evaluation: Evaluation = check.evaluate(part, element)
+        if evaluation.left_out is None:
+            return (evaluation.demand, evaluation.capacity, np.zeros(part.count))
+        left_out = np.asarray(evaluation.left_out, dtype=float)
+        if np.any(left_out):
+            reasons.append(evaluation.left_out_reason or "left out by the check")
+        return (
+            _zero_where(left_out, evaluation.demand),
+            _zero_where(left_out, evaluation.capacity),
+            left_out,
+        )
+
+    reasons: list[str] = []
+    found = contained(call, sections, ("demand", "capacity", "left_out"))
+    left_out = found.values[2] > 0
+    values, reason = found.values[:2], found.reason
+    if np.any(left_out):
+        values[:, left_out] = np.nan
+        reason[left_out] = reasons[0]
+    return Contained(values, reason), left_out & (not check.carries_load)
+
+
+def contained_amounts(
+    kind: SupportKind, sections: Sections, element: Element
+) -> tuple[tuple[Amount, ...], str]:
+    """Amounts of an element a metre, and what went wrong: on any fault, no amounts."""
+    try:
+        amounts = tuple(kind.amounts(sections, element))
+        for amount in amounts:
+            fault = _misshapen(amount.item, amount.per_metre, sections.count)
+            if not fault and not np.all(np.isfinite(amount.per_metre)):
+                fault = f"{amount.item} is not finite"
+            if fault:
+                return (), fault
+    except (Exception, SystemExit) as error:
+        return (), describe(error)
+    return amounts, NO_REASON
+
+
+def _zero_where(left_out: Array, values: Array) -> Array:
+    """What a check returned for sections that it leaves out need not be finite."""
+    if np.shape(values) != np.shape(left_out):
+        return values  # told as a wrong shape
+    return np.where(left_out > 0, 0.0, values)
+
+
+def _misshapen(name: str, array: Array, count: int) -> str:
+    if not isinstance(array, np.ndarray):
+        return f"{name} is a {type(array).__name__}, not an array"
+    if array.shape != (count,):
+        return f"{name} has a wrong shape, not one value a section"
+    if array.dtype.kind not in "fiub":
+        return f"{name} holds {array.dtype}, not numbers"
+    return ""
+
+
+def _refused(names: Sequence[str], count: int, reason: str) -> Contained:
+    return Contained(np.full((len(names), count), np.nan), np.full(count, reason, dtype=object))

@@ -1,0 +1,225 @@
+"""Loads plugins, each by itself, and keeps what they offer by sort and name."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Iterator
+from dataclasses import dataclass, field
+from importlib.metadata import EntryPoint, entry_points
+from typing import Any, cast
+
+import pluggy
+
+from tunnelcalc.errors import DuplicateNameError
+from tunnelcalc.plugin import hooks
+from tunnelcalc.plugin.contract import (
+    ClosureProfileMethod,
+    GroundReactionMethod,
+    GroundReader,
+    ModulusMethod,
+    ReportWriter,
+    StrengthMethod,
+    SupportCheck,
+    SupportKind,
+    ValidityFlag,
+)
+from tunnelcalc.project import Element
+
+OWN_DISTRIBUTION = "tunnelcalc"
+
+SORTS = {
+    "support_kind": "tunnelcalc_register_support_kinds",
+    "support_check": "tunnelcalc_register_support_checks",
+    "strength": "tunnelcalc_register_strengths",
+    "deformation_modulus": "tunnelcalc_register_deformation_moduli",
+    "ground_reaction": "tunnelcalc_register_ground_reactions",
+    "closure_profile": "tunnelcalc_register_closure_profiles",
+    "validity_flag": "tunnelcalc_register_validity_flags",
+    "ground_reader": "tunnelcalc_register_ground_readers",
+    "report_writer": "tunnelcalc_register_report_writers",
+}
+"""Each sort of thing that plugins offer, and the hook that offers it."""
+
+
+@dataclass(frozen=True, slots=True)
+class PluginSource:
+    """Where a plugin comes from: its entry-point name, distribution and version."""
+
+    plugin: str
+    distribution: str
+    version: str
+
+    def __str__(self) -> str:
+        return f"{self.plugin} ({self.distribution} {self.version})"
+
+
+@dataclass(frozen=True, slots=True)
+class Offer:
+    """One thing that a plugin offers."""
+
+    sort: str
+    name: str
+    thing: Any
+    source: PluginSource
+
+
+@dataclass(frozen=True, slots=True)
+class LoadFailure:
+    """A plugin that is of no use in this process, why, and what to do."""
+
+    source: PluginSource
+    cause: str
+    remedy: str
+
+    def __str__(self) -> str:
+        return f"plugin {self.source} could not be used: {self.cause}; {self.remedy}"
+
+
+@dataclass(slots=True)
+class Registry:
+    """What plugins offer. Lookups never depend on the order in which plugins were loaded."""
+
+    offers: dict[tuple[str, str], Offer] = field(default_factory=dict)
+    disputed: dict[tuple[str, str], set[str]] = field(default_factory=dict)
+    """Names that two plugins claim: neither is used."""
+    failures: list[LoadFailure] = field(default_factory=list)
+    sources: list[PluginSource] = field(default_factory=list)
+
+    def add(self, offer: Offer) -> None:
+        """Raises DuplicateNameError where another plugin offers the same sort and name."""
+        key = (offer.sort, offer.name)
+        present = self.offers.get(key)
+        if present is None and key not in self.disputed:
+            self.offers[key] = offer
+            return
+        claimants = self.disputed.setdefault(key, set())
+        claimants.add(offer.source.plugin)
+        if present is not None:
+            claimants.add(present.source.plugin)
+            del self.offers[key]
+        raise DuplicateNameError(
+            f"plugins {' and '.join(sorted(claimants))} both offer the {offer.sort} {offer.name!r}"
+        )
+
+    def remove_plugin(self, plugin: str) -> None:
+        """Forget all that a plugin offered."""
+        self.offers = {k: o for k, o in self.offers.items() if o.source.plugin != plugin}
+        self.sources = [source for source in self.sources if source.plugin != plugin]
+
+    def of_sort(self, sort: str) -> Iterator[Offer]:
+        """Offers of one sort, by name."""
+        return iter(
+            sorted((o for o in self.offers.values() if o.sort == sort), key=lambda o: o.name)
+        )
+
+    def names(self, sort: str) -> tuple[str, ...]:
+        return tuple(offer.name for offer in self.of_sort(sort))
+
+    def find(self, sort: str, name: str) -> Any | None:
+        offer = self.offers.get((sort, name))
+        return None if offer is None else offer.thing
+
+    def support_kind(self, name: str) -> SupportKind:
+        return cast("SupportKind", self.offers["support_kind", name].thing)
+
+    def strength(self, name: str) -> StrengthMethod:
+        return cast("StrengthMethod", self.offers["strength", name].thing)
+
+    def deformation_modulus(self, name: str) -> ModulusMethod:
+        return cast("ModulusMethod", self.offers["deformation_modulus", name].thing)
+
+    def ground_reaction(self, name: str) -> GroundReactionMethod:
+        return cast("GroundReactionMethod", self.offers["ground_reaction", name].thing)
+
+    def closure_profile(self, name: str) -> ClosureProfileMethod:
+        return cast("ClosureProfileMethod", self.offers["closure_profile", name].thing)
+
+    def ground_reader(self, suffix: str) -> GroundReader | None:
+        for offer in self.of_sort("ground_reader"):
+            if suffix.lower() in offer.thing.suffixes:
+                return cast("GroundReader", offer.thing)
+        return None
+
+    def checks_for(self, element: Element, named: Iterable[str]) -> Iterator[SupportCheck]:
+        """Checks of an element, by name: its kind's own plugin's and those of named plugins."""
+        kind = self.offers["support_kind", element.kind]
+        plugins = {kind.source.plugin, *named}
+        for offer in self.of_sort("support_check"):
+            if offer.source.plugin not in plugins or element.kind not in offer.thing.applies_to:
+                continue
+            if offer.thing.concerns(element):
+                yield cast("SupportCheck", offer.thing)
+
+    def flags(self, named: Iterable[str]) -> tuple[ValidityFlag, ...]:
+        return tuple(offer.thing for offer in self._taking_part("validity_flag", named))
+
+    def report_writers(self, named: Iterable[str]) -> tuple[ReportWriter, ...]:
+        return tuple(offer.thing for offer in self._taking_part("report_writer", named))
+
+    def _taking_part(self, sort: str, named: Iterable[str]) -> Iterator[Offer]:
+        """What runs follows from the project, not from what else happens to be installed."""
+        chosen = set(named)
+        for offer in self.of_sort(sort):
+            own = offer.source.distribution == OWN_DISTRIBUTION
+            if own or offer.source.plugin in chosen:
+                yield offer
+
+
+def load_plugins(points: Iterable[EntryPoint] | None = None) -> Registry:
+    """Load every installed plugin, or those of the given entry points.
+
+    A plugin that fails to load, misspells a hook or claims a taken name is reported in
+    `failures` and leaves the others unharmed.
+    """
+    registry = Registry()
+    manager = pluggy.PluginManager("tunnelcalc")
+    manager.add_hookspecs(hooks)
+    found = entry_points(group=hooks.ENTRY_POINT_GROUP) if points is None else points
+    for point in sorted(found, key=lambda p: (p.name, p.value)):
+        distribution = point.dist
+        source = PluginSource(
+            point.name,
+            distribution.name if distribution else "unknown",
+            distribution.version if distribution else "unknown",
+        )
+        try:
+            module = point.load()
+        except (Exception, SystemExit) as error:  # a stranger's module may raise anything
+            remedy = "reinstall or remove the distribution, or install what it misses"
+            registry.failures.append(LoadFailure(source, describe(error), remedy))
+            continue
+        register_plugin(registry, manager, module, source)
+    return registry
+
+
+def register_plugin(
+    registry: Registry, manager: pluggy.PluginManager, module: object, source: PluginSource
+) -> None:
+    """Take in what one plugin offers; on any fault of it, nothing of it."""
+    try:
+        manager.register(module, name=source.plugin)
+        manager.check_pending()
+        registry.sources.append(source)
+        others = [other for other in manager.get_plugins() if other is not module]
+        for sort, hook in SORTS.items():
+            caller = manager.subset_hook_caller(hook, others)
+            caller(register=_registrar(registry, sort, source))
+    except (Exception, SystemExit) as error:
+        registry.remove_plugin(source.plugin)
+        if manager.is_registered(module):
+            manager.unregister(module)
+        remedy = "mend or remove the plugin"
+        registry.failures.append(LoadFailure(source, describe(error), remedy))
+
+
+def _registrar(registry: Registry, sort: str, source: PluginSource) -> Callable[[Any], None]:
+    def register(thing: Any) -> None:
+        registry.add(Offer(sort, thing.name, thing, source))
+
+    return register
+
+
+def describe(error: BaseException) -> str:
+    """An exception in one short line, safe to print."""
+    first = next(iter(str(error).strip().splitlines()), "")
+    text = f"{type(error).__name__}: {first}" if first else type(error).__name__
+    return "".join(c if c.isprintable() else "?" for c in text)[:300]

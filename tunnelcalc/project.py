@@ -1,0 +1,106 @@
+"""What a project says, read and checked: plain data that the stages compute with."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+
+from tunnelcalc.sections import Sections
+
+DEFAULT_METHODS: Mapping[str, str] = {
+    "strength": "hoek_brown_2002",
+    "deformation_modulus": "hoek_diederichs_2006",
+    "ground_reaction": "hoek_brown_perfectly_plastic",
+    "closure_profile": "vlachopoulos_diederichs_2009",
+}
+"""The method of each step when the project names none. Every output states which was used."""
+
+
+@dataclass(frozen=True, slots=True)
+class Element:
+    """One support element of a class: its kind and the values of the kind's parameters.
+
+    `label` tells elements of one kind in a class apart; it stands in the outputs.
+    """
+
+    kind: str
+    label: str
+    installed_at_m: float
+    values: Mapping[str, float | str] = field(repr=False)
+
+    def number(self, parameter: str) -> float:
+        """Value of a numeric parameter, in the parameter's unit."""
+        value = self.values[parameter]
+        if isinstance(value, str):
+            raise TypeError(f"parameter {parameter!r} of {self.kind} is a choice")
+        return value
+
+    def choice(self, parameter: str) -> str:
+        """Value of a parameter that is one of several words."""
+        value = self.values[parameter]
+        if not isinstance(value, str):
+            raise TypeError(f"parameter {parameter!r} of {self.kind} is a number")
+        return value
+
+
+@dataclass(frozen=True, slots=True)
+class SupportClass:
+    """A named set of elements. Classes are listed lightest first."""
+
+    name: str
+    elements: tuple[Element, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Criteria:
+    """What makes a class adequate."""
+
+    factor_of_safety: float
+    closure_pct: float
+
+
+@dataclass(frozen=True, slots=True)
+class ScheduleRules:
+    """Lengths of the zoning rules; 0 switches a rule off. [m]"""
+
+    minimum_zone_m: float
+    carry_m: float
+
+
+@dataclass(frozen=True, slots=True)
+class Gap:
+    """A stretch without ground data that the project declares."""
+
+    from_m: float
+    to_m: float
+    reason: str
+
+
+@dataclass(frozen=True, slots=True)
+class InputFile:
+    """A file that the project was read from: path relative to the project, bytes as read."""
+
+    path: str
+    content: bytes = field(repr=False)
+
+
+@dataclass(frozen=True, slots=True)
+class Project:
+    """A checked project. `ground` holds its sections by increasing chainage."""
+
+    title: str
+    methods: Mapping[str, str]
+    support_classes: tuple[SupportClass, ...]
+    criteria: Criteria
+    schedule: ScheduleRules
+    plugins: tuple[str, ...]
+    gaps: tuple[Gap, ...]
+    ground: Sections
+    ground_columns: tuple[str, ...]
+    """Columns of `ground` that came from tables, in the order in which they are written."""
+    warnings: tuple[str, ...]
+    files: tuple[InputFile, ...]
+
+    @property
+    def class_names(self) -> tuple[str, ...]:
+        return tuple(support_class.name for support_class in self.support_classes)

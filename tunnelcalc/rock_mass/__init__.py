@@ -1,0 +1,1 @@
+"""In-situ stress, strength and stiffness of the ground. Pure functions over arrays."""

@@ -1,0 +1,1 @@
+"""How support and ground come to rest together, and whether the support is enough."""

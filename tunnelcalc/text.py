@@ -1,0 +1,58 @@
+"""Text as people and other programs write it: decoding, numbers, near misses."""
+
+from __future__ import annotations
+
+import difflib
+import math
+from collections.abc import Iterable
+
+from tunnelcalc.errors import Problems, Where
+
+
+def decoded(file: str, content: bytes, problems: Problems) -> str | None:
+    """Text of a UTF-8 file; None, with a problem, where it is not text."""
+    if b"\0" in content:
+        problems.add(
+            Where(file),
+            "is not a text file: it holds null bytes",
+            fix="save it as plain text in UTF-8",
+        )
+        return None
+    try:
+        return content.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        line = content.count(b"\n", 0, error.start) + 1
+        problems.add(
+            Where(file, line),
+            f"is not UTF-8 text: byte 0x{content[error.start]:02x} cannot be read",
+            fix="save it as plain text in UTF-8",
+        )
+        return None
+
+
+def as_number(text: str) -> float | None:
+    """A number as people write it; None for what is none. `1_000`, `nan`, `inf` are none."""
+    if not text.isascii() or "_" in text or not any(c.isdigit() for c in text):
+        return None
+    try:
+        value = float(text)
+    except ValueError:
+        return None
+    return value if math.isfinite(value) else None
+
+
+def number_fix(text: str) -> str:
+    """What to write in place of a text that should be a number."""
+    whole, comma, rest = text.strip().partition(",")
+    if comma and as_number(f"{whole}.{rest}") is not None:
+        if len(rest) == 3 and rest.isdigit():
+            return f"write {whole}{rest} or {whole}.{rest}, whichever is meant"
+        return f"write {whole}.{rest}, with a decimal point"
+    return "write a plain number with a decimal point, without unit or thousands separator"
+
+
+def suggestion(name: str, known: Iterable[str]) -> str | None:
+    """The known name that a misspelt one most likely means."""
+    by_lower = {candidate.lower(): candidate for candidate in known}
+    close = difflib.get_close_matches(name.strip().lower(), by_lower, n=1, cutoff=0.7)
+    return by_lower[close[0]] if close else None

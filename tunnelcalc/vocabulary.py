@@ -1,0 +1,238 @@
+"""The one list of quantities: name, symbol, unit, meaning, allowed range.
+
+Readers, checks, table headers and listings take their labels from here. A name is the trade's
+own term in full, followed by its unit, and is the same in input tables, project files, output
+tables and code.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+from enum import Enum
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+
+
+@dataclass(frozen=True, slots=True)
+class Limits:
+    """Allowed range of a number; `above` and `below` exclude the end itself."""
+
+    minimum: float = -math.inf
+    maximum: float = math.inf
+    above: bool = False
+    below: bool = False
+    whole: bool = False
+
+    def contain(self, values: Array) -> Array:
+        """Mask of the values inside the range; NaN and infinity are not."""
+        low = values > self.minimum if self.above else values >= self.minimum
+        high = values < self.maximum if self.below else values <= self.maximum
+        inside = low & high & np.isfinite(values)
+        return inside & (values == np.floor(values)) if self.whole else inside
+
+    def describe(self, unit: str = "") -> str:
+        """The range in words: "a number above 0, at most 100, in MPa"."""
+        words = []
+        if math.isfinite(self.minimum):
+            words.append(f"{'above' if self.above else 'at least'} {self.minimum:g}")
+        if math.isfinite(self.maximum):
+            words.append(f"{'below' if self.below else 'at most'} {self.maximum:g}")
+        kind = "a whole number" if self.whole else "a number"
+        text = f"{kind} {', '.join(words)}" if words else kind
+        return f"{text}, in {unit}" if unit else text
+
+
+UNLIMITED = Limits()
+
+
+class Sort(Enum):
+    """What a value is."""
+
+    NUMBER = "number"
+    CHOICE = "choice"
+    TEXT = "text"
+
+
+@dataclass(frozen=True, slots=True)
+class Quantity:
+    """One entry of the vocabulary.
+
+    `used` is False for a ground column that is read, checked and carried along although no
+    method of this version computes with it; a run that has such values says so.
+    """
+
+    name: str
+    symbol: str
+    unit: str
+    meaning: str
+    limits: Limits = UNLIMITED
+    sort: Sort = Sort.NUMBER
+    choices: tuple[str, ...] = ()
+    used: bool = True
+
+    def allowed(self) -> str:
+        """The allowed values in words."""
+        if self.sort is Sort.CHOICE:
+            return " or ".join(self.choices)
+        if self.sort is Sort.TEXT:
+            return "text"
+        return self.limits.describe(self.unit)
+
+
+_POSITIVE = Limits(0, above=True)
+_NOT_NEGATIVE = Limits(0)
+
+
+def _of_ground() -> tuple[Quantity, ...]:
+    stress = Limits(0, 500, above=True)
+    strength = Limits(0, 1000, above=True)
+    modulus = Limits(0, 1e6, above=True)
+    rating = Limits(0, 100)
+    return (
+        Quantity("cover_m", "H", "m", "height of ground over the crown", Limits(0, 10000)),
+        Quantity("unit_weight_kn_m3", "gamma", "kN/m3", "unit weight of the cover", Limits(5, 60)),
+        Quantity(
+            "vertical_stress_mpa",
+            "sv",
+            "MPa",
+            "vertical in-situ stress at the tunnel axis; measured, it overrides the cover",
+            stress,
+        ),
+        Quantity(
+            "stress_ratio", "k0", "", "horizontal over vertical stress", Limits(0, 10, above=True)
+        ),
+        Quantity(
+            "intact_strength_mpa",
+            "sci",
+            "MPa",
+            "uniaxial compressive strength of intact rock",
+            strength,
+        ),
+        Quantity("mi", "mi", "", "constant of the intact rock", Limits(0, 60, above=True)),
+        Quantity("gsi", "GSI", "", "geological strength index", Limits(0, 100, above=True)),
+        Quantity("disturbance", "D", "", "disturbance factor", Limits(0, 1)),
+        Quantity("poisson_ratio", "nu", "", "Poisson ratio", Limits(0, 0.5, below=True)),
+        Quantity("dilation_deg", "psi", "deg", "dilation angle", Limits(0, 60)),
+        Quantity("intact_modulus_mpa", "Ei", "MPa", "modulus of the intact rock", modulus),
+        Quantity(
+            "modulus_ratio",
+            "MR",
+            "",
+            "intact modulus over intact strength",
+            Limits(0, 10000, above=True),
+        ),
+        Quantity(
+            "rock_mass_modulus_mpa",
+            "Erm",
+            "MPa",
+            "measured deformation modulus of the rock mass; overrides the method",
+            modulus,
+        ),
+        Quantity(
+            "residual_gsi",
+            "GSIr",
+            "",
+            "residual geological strength index",
+            Limits(0, 100, above=True),
+            used=False,
+        ),
+        Quantity("rmr89", "RMR89", "", "rock mass rating, actual water", rating, used=False),
+        Quantity("rmr89_dry", "RMR89'", "", "rock mass rating, dry", rating, used=False),
+        Quantity("q", "Q", "", "rock mass quality Q", _POSITIVE, used=False),
+        Quantity("q_prime", "Q'", "", "Q without water and stress", _POSITIVE, used=False),
+        Quantity("jcond89", "JCond89", "", "joint condition rating", Limits(0, 30), used=False),
+        Quantity("rqd_pct", "RQD", "%", "rock quality designation", rating, used=False),
+        Quantity("block_volume_cm3", "Vb", "cm3", "block volume", _POSITIVE, used=False),
+        Quantity("joint_condition", "Jc", "", "joint condition factor", _POSITIVE, used=False),
+        Quantity("point_load_mpa", "Is50", "MPa", "point load index", _POSITIVE, used=False),
+        Quantity("water_head_m", "hw", "m", "water head above the axis", _NOT_NEGATIVE),
+        Quantity("inflow_l_min_10m", "", "L/min/10m", "water inflow", _NOT_NEGATIVE, used=False),
+        Quantity(
+            "joint_set_count", "", "", "number of joint sets", Limits(0, 20, whole=True), used=False
+        ),
+        Quantity("joint_spacing_m", "", "m", "spacing of joints", _POSITIVE, used=False),
+        Quantity("block_width_m", "", "m", "width of critical blocks", _POSITIVE),
+        Quantity(
+            "swelling_minerals",
+            "",
+            "",
+            "swelling minerals",
+            sort=Sort.CHOICE,
+            choices=("none", "present"),
+            used=False,
+        ),
+        Quantity(
+            "neighbour_clear_distance_m",
+            "",
+            "m",
+            "clear distance to a neighbouring opening",
+            _NOT_NEGATIVE,
+            used=False,
+        ),
+        Quantity("portal_distance_m", "", "m", "distance to the portal", _NOT_NEGATIVE, used=False),
+        Quantity(
+            "boundary_tolerance_m",
+            "",
+            "m",
+            "uncertainty of the interval's ends",
+            _NOT_NEGATIVE,
+            used=False,
+        ),
+        Quantity("fault_width_m", "", "m", "width of the fault zone", _NOT_NEGATIVE, used=False),
+    )
+
+
+def _of_results() -> tuple[Quantity, ...]:
+    return (
+        Quantity("chainage_m", "", "m", "middle of the section"),
+        Quantity("from_m", "", "m", "start of the interval or section"),
+        Quantity("to_m", "", "m", "end of the interval or section"),
+        Quantity("radius_m", "R", "m", "radius of the opening", Limits(0.5, 30)),
+        Quantity("in_situ_stress_mpa", "p0", "MPa", "mean in-plane in-situ stress"),
+        Quantity("mb", "mb", "", "Hoek-Brown constant of the rock mass"),
+        Quantity("s", "s", "", "Hoek-Brown constant of the rock mass"),
+        Quantity("a", "a", "", "Hoek-Brown exponent of the rock mass"),
+        Quantity("rock_mass_strength_mpa", "sc", "MPa", "unconfined strength of the rock mass"),
+        Quantity("tensile_strength_mpa", "st", "MPa", "tensile strength, magnitude"),
+        Quantity("global_strength_mpa", "scm", "MPa", "global strength of the rock mass"),
+        Quantity("friction_angle_deg", "phi", "deg", "equivalent friction angle"),
+        Quantity("cohesion_mpa", "c", "MPa", "equivalent cohesion"),
+        Quantity("deformation_modulus_mpa", "Erm", "MPa", "deformation modulus used"),
+        Quantity("critical_pressure_mpa", "pcr", "MPa", "pressure below which the wall yields"),
+        Quantity("plastic_radius_m", "Rp", "m", "radius of the plastic zone without support"),
+        Quantity("closure_mm", "u", "mm", "closure without support, far from the face"),
+        Quantity("closure_pct", "u/R", "%", "closure without support, per cent of the radius"),
+        Quantity("installation_closure_mm", "ui", "mm", "closure before the first element"),
+        Quantity("support_pressure_mpa", "p", "MPa", "pressure of the support at rest"),
+        Quantity("supported_closure_mm", "us", "mm", "closure with support"),
+        Quantity("supported_closure_pct", "us/R", "%", "closure with support"),
+        Quantity("supported_plastic_radius_m", "Rps", "m", "plastic radius with support"),
+        Quantity("factor_of_safety", "FS", "", "least capacity over demand of the load checks"),
+        Quantity("needed_pressure_mpa", "", "MPa", "pressure at which closure meets its limit"),
+        Quantity("element_pressure_mpa", "", "MPa", "wall pressure carried by one element"),
+        Quantity("element_capacity_mpa", "", "MPa", "wall pressure at the element's limit"),
+    )
+
+
+GROUND = {quantity.name: quantity for quantity in _of_ground()}
+"""Columns that ground and units tables may have, besides the interval's ends and unit."""
+
+QUANTITIES = GROUND | {quantity.name: quantity for quantity in _of_results()}
+"""Every quantity by name."""
+
+DEVIATION_SUFFIX = "_sd"
+"""NAME_sd is the standard deviation of the ground column NAME."""
+
+
+def ground_quantity(name: str) -> Quantity | None:
+    """The quantity of a ground column, its standard deviation included; None if unknown."""
+    if name in GROUND:
+        return GROUND[name]
+    base = GROUND.get(name.removesuffix(DEVIATION_SUFFIX))
+    if base is None or base.sort is not Sort.NUMBER or not name.endswith(DEVIATION_SUFFIX):
+        return None
+    meaning = f"standard deviation of {base.name}"
+    return Quantity(name, "", base.unit, meaning, _NOT_NEGATIVE, used=False)
