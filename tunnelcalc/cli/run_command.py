@@ -20,6 +20,8 @@ from tunnelcalc.schedule.selection import NONE_ADEQUATE, NONE_ADEQUATE_NAME
 
 MOST_ZONES = 60
 MOST_WORST = 8
+WIDE_SCREEN = 100
+"""Columns from which the schedule has room for the ground units."""
 
 
 def run(project: Path, out: Path | None, strict: bool, chunk: int | None) -> ExitCode:
@@ -51,7 +53,7 @@ def show(finished: Finished, screen: Console) -> None:
     """The summary of a run."""
     result = finished.result
     screen.print(result.project.title, style="bold")
-    screen.print(schedule_table(result))
+    screen.print(schedule_table(result, screen.width >= WIDE_SCREEN))
     screen.print(length_table(result))
     screen.print(worst_table(result))
     raised = flag_table(result)
@@ -77,37 +79,28 @@ def show(finished: Finished, screen: Console) -> None:
     screen.print(f"written: {finished.folder}", soft_wrap=True)
 
 
-def schedule_table(result: RunResult) -> Table:
+def schedule_table(result: RunResult, with_units: bool) -> Table:
     """The zones, or the first of very many."""
-    numeric = ("from m", "to m", "length m", "least FS", "at m", "needs MPa")
+    columns = ("from m", "to m", "length m", "class", "FS", "governed by", "at m")
     made = table(
         "Support schedule",
-        "from m",
-        "to m",
-        "length m",
-        "class",
-        "least FS",
-        "governed by",
-        "at m",
-        "needs MPa",
-        "ground units",
-        right=numeric,
+        *columns,
+        *(("ground units",) if with_units else ()),
+        right=("from m", "to m", "length m", "FS", "at m"),
+        wide=("governed by", "ground units"),
     )
     for zone in result.zones[:MOST_ZONES]:
         needed = zone.needed_pressure_mpa
-        made.add_row(
-            *row(
-                metres(zone.from_m),
-                metres(zone.to_m),
-                metres(zone.length_m),
-                zone.support_class,
-                rounded(zone.least_factor_of_safety),
-                zone.governing_check,
-                metres(zone.governing_chainage_m),
-                rounded(needed) if needed == needed else "",
-                ", ".join(zone.ground_units),
-            )
-        )
+        cells = [
+            metres(zone.from_m),
+            metres(zone.to_m),
+            metres(zone.length_m),
+            zone.support_class,
+            rounded(zone.least_factor_of_safety),
+            f"needs {rounded(needed)} MPa" if needed == needed else zone.governing_check,
+            metres(zone.governing_chainage_m),
+        ]
+        made.add_row(*row(*cells, *([", ".join(zone.ground_units)] if with_units else [])))
     if len(result.zones) > MOST_ZONES:
         made.caption = f"{len(result.zones) - MOST_ZONES} more zones stand in schedule.csv"
     return made
@@ -141,7 +134,7 @@ def length_table(result: RunResult) -> Table:
 
 
 def worst_table(result: RunResult) -> Table:
-    """The sections with the least factor in their scheduled class."""
+    """The governing sections of the zones with the least factors."""
     numeric = ("at m", "FS", "closure %", "limit %", "cover m")
     made = table(
         "Worst sections",
@@ -155,21 +148,19 @@ def worst_table(result: RunResult) -> Table:
         right=numeric,
     )
     sections = result.sections
-    scheduled = sections["scheduled_class"]
-    decided = np.flatnonzero(scheduled != NONE_ADEQUATE)
-    factors = sections["class_factor_of_safety"][decided, scheduled[decided]]
-    order = np.argsort(np.where(np.isnan(factors), np.inf, factors), kind="stable")
-    for position in decided[order[:MOST_WORST]].tolist():
-        number = int(scheduled[position])
+    loaded = [zone for zone in result.zones if zone.least_factor_of_safety > 0]
+    for zone in sorted(loaded, key=lambda z: z.least_factor_of_safety)[:MOST_WORST]:
+        at = int(np.searchsorted(sections["chainage_m"], zone.governing_chainage_m))
+        number = int(sections["scheduled_class"][at])
         made.add_row(
             *row(
-                metres(float(sections["chainage_m"][position])),
-                result.project.class_names[number],
-                rounded(float(sections["class_factor_of_safety"][position, number])),
-                rounded(float(sections["class_closure_pct"][position, number])),
+                metres(zone.governing_chainage_m),
+                zone.support_class,
+                rounded(zone.least_factor_of_safety),
+                rounded(float(sections["class_closure_pct"][at, number])),
                 rounded(result.project.criteria.closure_pct),
-                str(sections["ground_unit"][position]),
-                rounded(float(sections["cover_m"][position])),
+                str(sections["ground_unit"][at]),
+                rounded(float(sections["cover_m"][at])),
             )
         )
     return made
@@ -184,6 +175,7 @@ def flag_table(result: RunResult) -> Table:
         "not assessed",
         "meaning and remedy",
         right=("sections", "not assessed"),
+        wide=("meaning and remedy",),
     )
     for flag in result.flags:
         if flag.raised or flag.not_assessed:

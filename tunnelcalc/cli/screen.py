@@ -5,21 +5,22 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import TextIO
 
+from rich.box import SIMPLE_HEAD
 from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
 from tunnelcalc.errors import Problem
 
-NARROWEST = 100
-"""Columns that tables take when nobody looks at a terminal."""
+PAGE_WIDTH = 118
+"""Width of what is written to a file or a pipe."""
 
 
 def console(stream: TextIO | None = None) -> Console:
     """A console that prints names as they are: no markup, no highlighting."""
     screen = Console(file=stream, markup=False, highlight=False, emoji=False, soft_wrap=False)
     if not screen.is_terminal:
-        screen.width = max(screen.width, NARROWEST)
+        screen.width = PAGE_WIDTH
     return screen
 
 
@@ -31,11 +32,18 @@ def print_problems(problems: Sequence[Problem], stream: TextIO) -> None:
     print(f"{count} problem{'s' if count != 1 else ''} found", file=stream)
 
 
-def table(title: str, *columns: str, right: Sequence[str] = ()) -> Table:
-    """A plain table with a title; the columns in `right` hold numbers."""
-    made = Table(title=title, title_justify="left", title_style="bold")
+def table(title: str, *columns: str, right: Sequence[str] = (), wide: Sequence[str] = ()) -> Table:
+    """A plain table with a title: `right` columns hold numbers, `wide` ones may wrap."""
+    made = Table(
+        title=title, title_justify="left", title_style="bold", box=SIMPLE_HEAD, padding=(0, 1, 0, 0)
+    )
     for name in columns:
-        made.add_column(name, justify="right" if name in right else "left", overflow="fold")
+        made.add_column(
+            name,
+            justify="right" if name in right else "left",
+            no_wrap=name not in wide,
+            overflow="fold",
+        )
     return made
 
 
@@ -57,6 +65,5 @@ def rounded(value: float, digits: int = 3) -> str:
 
 
 def metres(value: float) -> str:
-    """A chainage or length to the centimetre, without idle zeros."""
-    text = f"{value:.2f}"
-    return text.rstrip("0").rstrip(".")
+    """A chainage or length to the decimetre."""
+    return f"{value:.1f}"

@@ -6,6 +6,7 @@ import csv
 import io
 import os
 from collections.abc import Iterable, Sequence
+from functools import lru_cache
 from pathlib import Path
 
 from tunnelcalc.arrays import Array
@@ -24,8 +25,9 @@ def number_texts(values: Array) -> list[str]:
     return [NUMBER_FORMAT % v if v == v else "" for v in (values + 0.0).tolist()]
 
 
+@lru_cache(maxsize=4096)
 def text_cell(text: str) -> str:
-    """Text as a CSV cell, in quotes where it must be."""
+    """Text as a CSV cell, in quotes where it must be. The same few texts stand in many rows."""
     if not any(character in text for character in ',"\r\n'):
         return text
     return '"' + text.replace('"', '""') + '"'

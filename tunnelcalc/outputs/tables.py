@@ -63,11 +63,8 @@ CHECK_HEADER = (
     "reason",
 )
 
-OUTCOME_WORDS = {
-    Outcome.PASS: "pass",
-    Outcome.FAIL: "fail",
-    Outcome.NOT_EVALUATED: "not_evaluated",
-}
+OUTCOME_WORDS = tuple(outcome.name.lower() for outcome in Outcome)
+"""By the number of the outcome: pass, fail, not_evaluated."""
 
 ROWS_AT_ONCE = 20_000
 
@@ -136,7 +133,7 @@ class ChunkTables:
             number_texts(chunk[column][:, position])
             for column in ("check_demand", "check_capacity", "check_factor_of_safety")
         )
-        outcome = [OUTCOME_WORDS[Outcome(c)] for c in chunk["check_outcome"][:, position].tolist()]
+        outcome = [OUTCOME_WORDS[c] for c in chunk["check_outcome"][:, position].tolist()]
         reason = [text_cell(text) for text in chunk["check_reason"][:, position].tolist()]
         return [
             f"{at},{middle},{d},{c},{unit},{f},{o},{why}\n"
