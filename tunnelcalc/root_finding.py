@@ -35,7 +35,8 @@ def increasing_roots(
     Parameters
     ----------
     function : called with the present estimates (k,) and the indices (k,) that they belong to;
-        returns values and slopes, each (k,). A NaN value leaves its element not converged.
+        returns values and slopes, each (k,). A NaN value leaves its element not converged; an
+        infinite value, with any finite slope, only says on which side of the root it lies.
     lower, upper : (n,) ends of the brackets, function(lower) <= 0 <= function(upper).
     start : (n,) first estimates, inside the brackets.
 
@@ -72,5 +73,5 @@ def increasing_roots(
         estimate[active] = following
         step_before[active] = step
         converged[active[done]] = True
-        active = active[~done & np.isfinite(value)]
+        active = active[~done & ~np.isnan(value)]
     return Roots(estimate, converged)

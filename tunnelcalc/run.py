@@ -13,7 +13,8 @@ from tunnelcalc.outputs.manifest import write_manifest
 from tunnelcalc.outputs.run_folder import Target, copy_inputs, part_folder, sync_folder
 from tunnelcalc.outputs.tables import ChunkTables, write_sections
 from tunnelcalc.pipeline.chain import build_stages, kept_columns
-from tunnelcalc.pipeline.collect import Incidents, flag_counts, item_totals, zones
+from tunnelcalc.pipeline.collect import flag_counts, item_totals, zones
+from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.stage import check_chain, run_stages
 from tunnelcalc.pipeline.support_stages import check_lines, plan_classes
 from tunnelcalc.plugin.registry import Registry, describe
@@ -78,10 +79,10 @@ def compute(
     plan = plan_classes(project, registry)
     flags = registry.flags(project.plugins)
     flag_names = [flag.name for flag in flags]
-    stages = build_stages(project, registry, plan)
+    incidents = Incidents()
+    stages = build_stages(project, registry, plan, incidents)
     check_chain(stages, project.ground)
     checks = check_lines(plan)
-    incidents = Incidents()
     tables = ChunkTables(folder, project, checks)
     done = 0
 

@@ -3,8 +3,7 @@
 from __future__ import annotations
 
 import difflib
-import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 
 from tunnelcalc.errors import Problems, Where
 
@@ -30,15 +29,41 @@ def decoded(file: str, content: bytes, problems: Problems) -> str | None:
         return None
 
 
+LONGEST_QUOTE = 80
+
+
+def quoted(text: str) -> str:
+    """Text in quotes for a message."""
+    return f'"{shown(text)}"'
+
+
+def shown(text: str) -> str:
+    """Text for a message: one line, no control characters, not longer than a line."""
+    if len(text) > LONGEST_QUOTE:
+        text = text[: LONGEST_QUOTE - 3] + "..."
+    return "".join(c if c.isprintable() else ascii(c)[1:-1] for c in text)
+
+
+MOST_NAMES = 20
+
+
+def few(names: Sequence[str]) -> str:
+    """Names in a row; of very many, the first."""
+    more = len(names) - MOST_NAMES
+    return ", ".join(names[:MOST_NAMES]) + (f" and {more} more" if more > 0 else "")
+
+
 def as_number(text: str) -> float | None:
-    """A number as people write it; None for what is none. `1_000`, `nan`, `inf` are none."""
+    """A number as people write it; None for what is none. `1_000`, `nan`, `inf` are none.
+
+    A number too large for a double is infinite, and so outside every range.
+    """
     if not text.isascii() or "_" in text or not any(c.isdigit() for c in text):
         return None
     try:
-        value = float(text)
+        return float(text)
     except ValueError:
         return None
-    return value if math.isfinite(value) else None
 
 
 def number_fix(text: str) -> str:

@@ -212,6 +212,9 @@ def _of_results() -> tuple[Quantity, ...]:
         Quantity("supported_plastic_radius_m", "Rps", "m", "plastic radius with support"),
         Quantity("factor_of_safety", "FS", "", "least capacity over demand of the load checks"),
         Quantity("needed_pressure_mpa", "", "MPa", "pressure at which closure meets its limit"),
+        Quantity("length_m", "L", "m", "length of a zone"),
+        Quantity("governing_chainage_m", "", "m", "middle of the section that governs a zone"),
+        Quantity("least_factor_of_safety", "", "", "least factor of a zone's scheduled class"),
         Quantity("element_pressure_mpa", "", "MPa", "wall pressure carried by one element"),
         Quantity("element_capacity_mpa", "", "MPa", "wall pressure at the element's limit"),
     )
@@ -222,6 +225,27 @@ GROUND = {quantity.name: quantity for quantity in _of_ground()}
 
 QUANTITIES = GROUND | {quantity.name: quantity for quantity in _of_results()}
 """Every quantity by name."""
+
+WORDS = {
+    "ground_unit": "name of the ground unit",
+    "ground_units": "ground units of a zone, joined by a semicolon",
+    "support_class": "name of the class, or none_adequate",
+    "required_class": "first class that meets every criterion, or none_adequate",
+    "scheduled_class": "class after zoning, or none_adequate",
+    "adequate": "whether the class meets every criterion: yes or no",
+    "governing_check": "element:check that governs, or closure",
+    "element": "support element of the class",
+    "check": "check of the element",
+    "demand": "in the unit of its row",
+    "capacity": "in the unit of its row",
+    "unit": "unit of the row's numbers",
+    "outcome": "pass, fail or not_evaluated",
+    "reason": "why a check could not be evaluated",
+    "item": "item of the quantities",
+    "amount": "in the unit of its row",
+    "flags": "names of the raised flags, sorted, joined by a semicolon",
+}
+"""Columns of the outputs that hold words, or numbers whose unit stands in the row."""
 
 DEVIATION_SUFFIX = "_sd"
 """NAME_sd is the standard deviation of the ground column NAME."""

@@ -3,8 +3,12 @@
 from __future__ import annotations
 
 import argparse
+import io
+import signal
 import sys
-from collections.abc import Sequence
+import threading
+from collections.abc import Iterator, Sequence
+from contextlib import contextmanager
 from pathlib import Path
 
 import tunnelcalc
@@ -54,17 +58,20 @@ def build_parser() -> argparse.ArgumentParser:
 
 
 def _positive(text: str) -> int:
-    number = int(text)
-    if number < 1:
-        raise argparse.ArgumentTypeError("must be 1 or more")
-    return number
+    if not (text.isascii() and text.isdigit() and int(text) > 0):
+        raise argparse.ArgumentTypeError(f"{text!r} is no whole number above 0")
+    return int(text)
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run a command and return its exit code."""
+    for stream in (sys.stdout, sys.stderr):
+        if isinstance(stream, io.TextIOWrapper):
+            stream.reconfigure(errors="backslashreplace")  # a screen may lack a letter of a title
     options = build_parser().parse_args(arguments)
     try:
-        return int(_command(options))
+        with _terminated_as_interrupted():
+            return int(_command(options))
     except InputError as error:
         from tunnelcalc.cli.screen import print_problems
 
@@ -81,10 +88,24 @@ def main(arguments: Sequence[str] | None = None) -> int:
         sys.stderr.close()
         return ExitCode.INTERNAL
     except OSError as error:
-        place = f" {error.filename}" if error.filename else ""
-        print(f"tunnelcalc: the machine refused:{place}: {error.strerror}", file=sys.stderr)
+        place = f" {error.filename}:" if error.filename else ""
+        why = error.strerror or str(error)
+        print(f"tunnelcalc: the machine refused:{place} {why}", file=sys.stderr)
         print("  nothing was written; free the disk or correct the permission", file=sys.stderr)
         return ExitCode.INTERNAL
+
+
+@contextmanager
+def _terminated_as_interrupted() -> Iterator[None]:
+    """Let a polite request to end clean up as an interruption from the keyboard does."""
+    if threading.current_thread() is not threading.main_thread():
+        yield
+        return
+    before = signal.signal(signal.SIGTERM, signal.default_int_handler)
+    try:
+        yield
+    finally:
+        signal.signal(signal.SIGTERM, before)
 
 
 def _command(options: argparse.Namespace) -> ExitCode:

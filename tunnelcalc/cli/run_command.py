@@ -34,6 +34,7 @@ def run(project: Path, out: Path | None, strict: bool, chunk: int | None) -> Exi
         TimeRemainingColumn(),
         console=console(sys.stderr),
         transient=True,
+        disable=not sys.stderr.isatty(),
     )
     with bar:
         task = bar.add_task("sections", total=None)

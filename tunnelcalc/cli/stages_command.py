@@ -7,6 +7,7 @@ from pathlib import Path
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import read_project
 from tunnelcalc.pipeline.chain import build_stages
+from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.stage import check_chain
 from tunnelcalc.pipeline.support_stages import plan_classes
 from tunnelcalc.plugin.registry import load_plugins
@@ -16,7 +17,7 @@ def stages(path: Path) -> ExitCode:
     """Print each stage with what it needs and gives, after proving that the chain holds."""
     registry = load_plugins()
     project = read_project(path, registry)
-    chain = build_stages(project, registry, plan_classes(project, registry))
+    chain = build_stages(project, registry, plan_classes(project, registry), Incidents())
     check_chain(chain, project.ground)
     print(f"inputs give: {', '.join(project.ground)}")
     for number, stage in enumerate(chain, 1):

@@ -28,8 +28,9 @@ MOST_DECAY = 40.0
 """exp(-40) is below the rounding of a double: the integral ends there however deep the ring."""
 SHORT_DECAY = 12.0
 """Up to here 12 points suffice: (K + 1) ln(Rp / R), reached at Rp / R = 20 for psi = 30 deg."""
-LARGEST_EXPONENT = 690.0
-"""exp of more would leave the range of a double: such a closure cannot be computed."""
+LARGEST_EXPONENT = 600.0
+"""exp(600) is 1e260: what a larger closure is multiplied with, stresses, stiffness of support,
+could leave the range of a double. Such a closure cannot be computed."""
 
 _SHORT_RULE = np.polynomial.legendre.leggauss(12)
 _LONG_RULE = np.polynomial.legendre.leggauss(24)
@@ -193,11 +194,14 @@ class HoekBrownCurve:
         """
         p0, nu, dilation = self.in_situ_stress_mpa, self.poisson_ratio, self.dilation
         sci, mb = self.intact_strength_mpa, self.mb
-        yields = support_pressure_mpa < self.critical_pressure_mpa
+        # Asked this way round, a section with NaN does not pass for elastic.
+        yields = ~(support_pressure_mpa >= self.critical_pressure_mpa)
         wall = np.where(yields, support_pressure_mpa, self.critical_pressure_mpa)
         number = mb * wall / sci + self.s
         power = number ** (1 - self.a)
-        depth = np.where(yields, (self.critical_power - power) / ((1 - self.a) * mb), 0)
+        # Rounding may put the edge of a ring that has just begun to yield inside the wall.
+        depth = np.maximum((self.critical_power - power) / ((1 - self.a) * mb), 0)
+        depth = np.where(yields, depth, 0)
         exponent = (dilation + 1) * depth
         exponent = np.where(exponent <= LARGEST_EXPONENT, exponent, np.nan)
         growth = np.exp(exponent)
@@ -216,7 +220,8 @@ class HoekBrownCurve:
         forcing = forcing + (dilation * (1 - nu) - nu) * strength
         plastic_slope = (forcing / double_modulus - (dilation + 1) * closure) / strength
         slope = np.where(yields, plastic_slope, -1 / double_modulus)
-        return CurvePoint(np.exp(exponent / (dilation + 1)), closure, slope)
+        plastic_ratio = np.exp(np.where(depth <= LARGEST_EXPONENT, depth, np.nan))
+        return CurvePoint(plastic_ratio, closure, slope)
 
     def _ring_integral(self, exponent: Array, yields: Array) -> Array:
         """J / X^(K+1), by a fixed Gauss-Legendre rule of 12 or, in deep rings, 24 points. [MPa]"""

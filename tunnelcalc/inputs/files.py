@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import os
-from pathlib import Path
+import stat
+from pathlib import Path, PurePath
 
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.project import InputFile
+from tunnelcalc.text import quoted
 
 PROJECT_FILE = "project.yaml"
 LARGEST_FILE_BYTES = 512 * 1024 * 1024
@@ -37,46 +39,40 @@ class ProjectFolder:
         return self.files[relative]
 
     def _inside(self, path: str, named_at: Where, name: str) -> tuple[Path, str] | None:
-        fix = "copy the file into the project folder and name it by its path from there"
-        if not path.strip() or "\0" in path:
-            self.problems.add(named_at, f'holds "{path!r}", which is no path', name=name, fix=fix)
-            return None
-        try:
-            home = self.folder.resolve(strict=True)
-            target = (home / path).resolve()
-        except (OSError, RuntimeError) as error:
-            message = f'names "{path}", which cannot be followed ({_why(error)})'
-            self.problems.add(named_at, message, name=name, fix=fix)
-            return None
-        if not target.is_relative_to(home):
-            message = f'names "{path}", which leaves the project folder'
-            self.problems.add(
-                named_at, message, name=name, allowed="a path inside the project folder", fix=fix
-            )
-            return None
-        return target, target.relative_to(home).as_posix()
+        """The file, and its path as named: a copy under that path repeats the run elsewhere."""
+        relative = PurePath(os.path.normpath(path))
+        home = self.folder.resolve(strict=True)
+        target = Path(os.path.realpath(home / path))
+        leaves = relative.parts[:1] == (os.pardir,) or not target.is_relative_to(home)
+        if not leaves and not relative.is_absolute():
+            return target, relative.as_posix()
+        why = "which leaves the project folder" if leaves else "an absolute path"
+        self.problems.add(
+            named_at,
+            f"names {quoted(path)}, {why}",
+            name=name,
+            allowed="a path inside the project folder, relative to it",
+            fix="copy the file into the project folder and name it by its path from there",
+        )
+        return None
 
     def _content(self, target: Path, path: str, named_at: Where, name: str) -> bytes | None:
         try:
-            if target.is_dir():
-                raise IsADirectoryError(21, "it is a folder")
-            if not target.is_file():
-                raise FileNotFoundError(2, "there is no such file")
-            size = target.stat().st_size
-            if size > LARGEST_FILE_BYTES:
-                raise OSError(27, f"it has {size / 1e6:.0f} MB, more than can be read")
-            return target.read_bytes()
+            state = target.stat()
+            if not stat.S_ISREG(state.st_mode):
+                why = "it is a folder" if stat.S_ISDIR(state.st_mode) else "it is no plain file"
+            elif state.st_size > LARGEST_FILE_BYTES:
+                why = f"it has {state.st_size / 1e6:.0f} MB, more than can be read"
+            else:
+                return target.read_bytes()
+        except FileNotFoundError:
+            why = "there is no such file"
         except OSError as error:
-            self.problems.add(
-                named_at,
-                f'names "{path}", which cannot be read: {_why(error)}',
-                name=name,
-                fix="name a readable file inside the project folder",
-            )
-            return None
-
-
-def _why(error: BaseException) -> str:
-    if isinstance(error, OSError) and error.errno is not None:
-        return error.strerror or os.strerror(error.errno)
-    return str(error) or type(error).__name__
+            why = error.strerror or type(error).__name__
+        self.problems.add(
+            named_at,
+            f"names {quoted(path)}, which cannot be read: {why}",
+            name=name,
+            fix="name a readable file inside the project folder",
+        )
+        return None

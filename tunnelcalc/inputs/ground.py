@@ -11,18 +11,21 @@ from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs import alignment
 from tunnelcalc.inputs.files import ProjectFolder
-from tunnelcalc.inputs.typed_table import TypedTable, open_table, typed
+from tunnelcalc.inputs.ground_tables import CHAINAGE, TABLE, UNITS, other_columns, read_table
+from tunnelcalc.inputs.typed_table import TypedTable
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import Gap
 from tunnelcalc.sections import Sections
-from tunnelcalc.text import suggestion
+from tunnelcalc.text import few, quoted, suggestion
 from tunnelcalc.vocabulary import DEVIATION_SUFFIX, GROUND, Limits, Sort, ground_quantity
 
-CHAINAGE = Limits(-1e7, 1e7)
+SECTION_LENGTH = Limits(10 * SAME_PLACE_M, 1e6)
 REQUIRED = ("gsi", "mi", "disturbance", "poisson_ratio", "intact_strength_mpa")
 ASSUMED = {"stress_ratio": 1.0, "dilation_deg": 0.0}
 """The only two physical values that the program takes by itself, each with a flag."""
+STRESS = "the in-situ stress"
+STRESS_SOURCES = ("vertical_stress_mpa", "cover_m", "unit_weight_kn_m3")
 STRESS_RULE = "vertical_stress_mpa, or cover_m with unit_weight_kn_m3"
 
 
@@ -39,13 +42,15 @@ class Ground:
 def read_ground(reader: Reader, folder: ProjectFolder, registry: Registry) -> Ground | None:
     """Read the `ground` part of a project; None, with problems, where it cannot be used."""
     problems = reader.problems
-    longest = reader.number("section_length_m", Limits(0, 1e6, above=True), "m", required=False)
+    longest = reader.number("section_length_m", SECTION_LENGTH, "m", required=False)
     gaps = list(_gaps(reader))
-    others = [text for _, text in reader.texts_of("other_columns")]
-    table = _read_table(reader, folder, registry, "table", others)
-    units = _read_table(reader, folder, registry, "units", others)
+    others = list(other_columns(reader, registry))
+    table = read_table(reader, folder, registry, TABLE, others)
+    units = read_table(reader, folder, registry, UNITS, others)
     reader.finish()
-    if table is None or (units is None and reader.has("units")):
+    if table is None or (units is None and reader.has(UNITS)):
+        return None
+    if units is not None and not (units.rows and units.has("ground_unit")):
         return None
     return _Assembly(table, units, gaps, longest, problems).ground()
 
@@ -68,49 +73,6 @@ def _gaps(reader: Reader) -> list[tuple[Gap, Where]]:
             continue
         found.append((Gap(start, end, reason), entry.where))
     return found
-
-
-def _read_table(
-    reader: Reader,
-    folder: ProjectFolder,
-    registry: Registry,
-    key: str,
-    others: Sequence[str],
-) -> TypedTable | None:
-    is_units = key == "units"
-    path = reader.text(key, "the path of a table", required=not is_units)
-    if path is None:
-        return None
-    raw = open_table(folder, path, reader.place(key), reader.label(key), registry)
-    if raw is None:
-        return None
-    required = ("ground_unit",) if is_units else ("from_m", "to_m")
-    for name in required:
-        if name not in raw.header:
-            hint = suggestion(name, raw.header)
-            reader.problems.add(
-                Where(raw.file, raw.header_line),
-                "is missing",
-                name=f'column "{name}"',
-                allowed="the columns " + ", ".join(required),
-                fix=f'add it; the column "{hint}" may be meant' if hint else "add it",
-            )
-    if not raw.lines:
-        reader.problems.add(
-            Where(raw.file), "has a header and no rows", fix="write one row an interval or unit"
-        )
-
-    def context(row: int) -> str:
-        if is_units:
-            names = [raw.header.index("ground_unit")] if "ground_unit" in raw.header else []
-            return f"ground unit {raw.columns[names[0]][row]}" if names else ""
-        if "from_m" in raw.header and "to_m" in raw.header:
-            ends = (raw.columns[raw.header.index(name)][row] for name in ("from_m", "to_m"))
-            return f"interval {' to '.join(ends)} m"
-        return ""
-
-    numbers = {} if is_units else {"from_m": CHAINAGE, "to_m": CHAINAGE}
-    return typed(raw, reader.problems, numbers, ("ground_unit",), others, context)
 
 
 class _Assembly:
@@ -163,6 +125,11 @@ class _Assembly:
             absent = np.isnan(columns[name])
             columns[name.replace("_deg", "") + "_assumed"] = absent
             columns[name] = np.where(absent, value, columns[name])
+        for quantity in GROUND.values():
+            # A column that no table gives takes no memory, and whoever needs it finds NaN.
+            is_text = quantity.sort is Sort.CHOICE
+            nothing = np.array("", dtype=object) if is_text else np.array(np.nan)
+            columns.setdefault(quantity.name, np.broadcast_to(nothing, cut.from_m.shape))
         return Ground(
             Sections(columns),
             self._given(numbers, texts),
@@ -178,7 +145,7 @@ class _Assembly:
         rows: dict[str, int] = {}
         for row, name in enumerate(names):
             if name in rows or not name:
-                what = f'holds "{name}", which stands already' if name else "is empty"
+                what = f"holds {quoted(name)}, which stands already" if name else "is empty"
                 self.problems.add(
                     self.units.place(row, "ground_unit"),
                     what,
@@ -186,7 +153,8 @@ class _Assembly:
                     allowed="each ground unit once",
                     fix="give every ground unit one row and a name of its own",
                 )
-            rows.setdefault(name, row)
+            if name:
+                rows.setdefault(name, row)
         if "ground_unit" not in self.table.texts:
             self.problems.add(
                 Where(self.table.raw.file, self.table.raw.header_line),
@@ -200,11 +168,12 @@ class _Assembly:
             found[row] = rows.get(name, -1)
             if found[row] < 0:
                 hint = suggestion(name, rows)
+                what = f"holds {quoted(name)}, which {self.units.raw.file} does not name"
                 self.problems.add(
                     self.table.place(row, "ground_unit"),
-                    f'holds "{name}", which {self.units.raw.file} does not name',
+                    what if name else "is empty",
                     name='column "ground_unit"',
-                    allowed=", ".join(sorted(rows)),
+                    allowed=few(sorted(rows)),
                     fix=f'did you mean "{hint}"?' if hint else "add the unit to the units table",
                 )
         return found
@@ -295,14 +264,15 @@ class _Assembly:
 
     def _check_complete(self, numbers: dict[str, Array]) -> None:
         for name in REQUIRED:
-            self._tell_missing(name, name in numbers, numbers.get(name), self._told((name,)))
-        absent = np.isnan(numbers["vertical_stress_mpa"])
-        absent &= np.isnan(numbers["cover_m"]) | np.isnan(numbers["unit_weight_kn_m3"])
-        sources = ("vertical_stress_mpa", "cover_m", "unit_weight_kn_m3")
-        given = any(self.table.has(n) or (self.units and self.units.has(n)) for n in sources)
-        self._tell_missing(
-            STRESS_RULE, bool(given), np.where(absent, np.nan, 1.0), self._told(sources)
-        )
+            absent = np.isnan(numbers[name])
+            self._tell_missing(name, self._has(name), absent, self._told((name,)))
+        measured, *weight = STRESS_SOURCES
+        absent = np.isnan(numbers[measured]) & np.isnan(numbers[weight[0]] * numbers[weight[1]])
+        given = self._has(measured) or all(self._has(name) for name in weight)
+        self._tell_missing(STRESS, given, absent, self._told(STRESS_SOURCES))
+
+    def _has(self, name: str) -> bool:
+        return self.table.has(name) or (self.units is not None and self.units.has(name))
 
     def _told(self, names: Sequence[str]) -> Array:
         """Mask (i,) of the intervals about whose cells a problem is told already."""
@@ -313,11 +283,11 @@ class _Assembly:
                 told |= self.units.wrong_in(name)[self.unit_row] | (self.unit_row < 0)
         return told
 
-    def _tell_missing(self, name: str, given: bool, values: Array | None, told: Array) -> None:
+    def _tell_missing(self, name: str, given: bool, absent: Array, told: Array) -> None:
         files = self.table.raw.file + (f" nor {self.units.raw.file}" if self.units else "")
         quantity = GROUND.get(name)
-        allowed = quantity.allowed() if quantity else "one of the two"
-        if not given or values is None:
+        allowed = quantity.allowed() if quantity else STRESS_RULE
+        if not given:
             self.problems.add(
                 Where(self.table.raw.file, self.table.raw.header_line),
                 f"is missing: neither {files} gives it" if self.units else "is missing",
@@ -326,10 +296,10 @@ class _Assembly:
                 fix="add the column; there is no default",
             )
             return
-        for row in np.flatnonzero(np.isnan(values) & ~told).tolist():
+        for row in np.flatnonzero(absent & ~told).tolist():
             where = self._interval(row)
             unit = self.table.texts.get("ground_unit")
-            of_unit = f", ground unit {unit[row]}" if unit is not None and unit[row] else ""
+            of_unit = f", ground unit {quoted(unit[row])}" if unit is not None and unit[row] else ""
             self.problems.add(
                 self.table.place(row, name),
                 "has no value here" + (" and none for its ground unit" if self.units else ""),

@@ -14,7 +14,7 @@ from tunnelcalc.inputs.values import Reader
 from tunnelcalc.inputs.yaml_tree import Table, parse
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import DEFAULT_METHODS, Criteria, Project, ScheduleRules
-from tunnelcalc.text import decoded, suggestion
+from tunnelcalc.text import decoded, quoted, suggestion
 from tunnelcalc.vocabulary import QUANTITIES, Limits
 
 
@@ -47,9 +47,12 @@ def read_project(path: Path, registry: Registry) -> Project:
 def project_folder(path: Path) -> Path:
     """The folder of a project that is named by itself or by its project file."""
     folder = path.parent if path.name == PROJECT_FILE and path.is_file() else path
-    if folder.is_dir():
+    if (folder / PROJECT_FILE).is_file():
         return folder
-    what = "is not a folder" if folder.exists() else "does not exist"
+    if folder.is_dir():
+        what = f"holds no file {PROJECT_FILE}"
+    else:
+        what = "is not a folder" if folder.exists() else "does not exist"
     raise InputError((Problem(Where(str(path)), what, f"name a folder that holds {PROJECT_FILE}"),))
 
 
@@ -65,6 +68,9 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
     criteria = _criteria(reader)
     schedule = _schedule(reader)
     reader.finish()
+    # The project file before the tables that it names.
+    rank = {file: number for number, file in enumerate(folder.files)}
+    problems.found.sort(key=lambda problem: rank.get(problem.where.file, len(rank)))
     problems.raise_if_any()
     assert title is not None
     assert radius is not None
@@ -131,7 +137,7 @@ def _plugins(reader: Reader, registry: Registry) -> tuple[str, ...]:
         other = f'did you mean "{hint}"?' if hint else "install it, or remove the entry"
         reader.problems.add(
             where,
-            f'names "{text}", a plugin that is not there',
+            f"names {quoted(text)}, a plugin that is not there",
             name='key "plugins"',
             allowed=", ".join(known),
             fix=failed[0] if failed else other,

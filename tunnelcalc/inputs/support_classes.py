@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 from collections import Counter
+from types import MappingProxyType
 
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.contract import Parameter, SupportKind
-from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.project import Element, SupportClass
 from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
 from tunnelcalc.support.reaction import FORMS, SOLVED_FORMS
-from tunnelcalc.text import suggestion
+from tunnelcalc.text import quoted, suggestion
 from tunnelcalc.vocabulary import Limits
 
 INSTALLED_AT = Limits(0, 10000)
@@ -28,7 +29,7 @@ def read_support_classes(
         if name is not None and (name in names or name in RESERVED_NAMES):
             entry.complain(
                 "name",
-                f'holds "{name}", which is taken',
+                f"holds {quoted(name)}, which is taken",
                 allowed="a name that no other class has; not " + " or ".join(RESERVED_NAMES),
                 fix="give the class another name",
             )
@@ -48,12 +49,13 @@ def _elements(
     class_installed_m: float | None,
     smallest_radius_m: float | None,
 ) -> list[Element]:
+    class_states_it = entry.has("installed_at_m")  # rightly or wrongly: that is told already
     elements: list[Element] = []
     count: Counter[str] = Counter()
     for item in entry.tables_of("elements"):
         kind = _kind(item, registry)
         own = item.number("installed_at_m", INSTALLED_AT, "m", required=False)
-        if own is None and class_installed_m is None and not item.has("installed_at_m"):
+        if not class_states_it and not item.has("installed_at_m"):
             item.complain(
                 "installed_at_m",
                 "is missing here and in the class",
@@ -70,9 +72,13 @@ def _elements(
         installed = own if own is not None else class_installed_m
         if len(item.problems) > before or installed is None:
             continue
-        element = Element(kind.name, label, installed, values)
-        _fits(item, kind, element, smallest_radius_m)
-        _is_supported(item, kind, element, registry, plugins)
+        element = Element(kind.name, label, installed, MappingProxyType(values))
+        try:
+            _fits(item, kind, element, smallest_radius_m)
+            _is_supported(item, kind, element, registry, plugins)
+        except Exception as error:  # a stranger's plugin may raise anything
+            message = f"names {quoted(kind.name)}, whose plugin failed with {describe(error)}"
+            item.complain("kind", message, fix="report the fault to the maker of the plugin")
         elements.append(element)
     return elements
 
@@ -86,12 +92,13 @@ def _kind(item: Reader, registry: Registry) -> SupportKind | None:
         return registry.support_kind(name)
     claimants = registry.disputed.get(("support_kind", name))
     if claimants:
-        message = f'names "{name}", which the plugins {" and ".join(sorted(claimants))} both offer'
+        offered_by = " and ".join(sorted(claimants))
+        message = f"names {quoted(name)}, which the plugins {offered_by} both offer"
         fix = "uninstall one of them"
     else:
         hint = suggestion(name, known)
         failed = "".join(f"; {failure}" for failure in registry.failures)
-        message = f'names "{name}", a kind of support that no plugin handles'
+        message = f"names {quoted(name)}, a kind of support that no plugin handles"
         fix = f'did you mean "{hint}"?' if hint else f"install the plugin that offers it{failed}"
     allowed = " or ".join(known) or "none: no plugin offers a kind of support"
     item.complain("kind", message, allowed=allowed, fix=fix)

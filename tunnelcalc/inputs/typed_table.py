@@ -11,8 +11,8 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.errors import InputError, Problems, Where
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.plugin.raw_table import RawTable
-from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.text import as_number, number_fix, suggestion
+from tunnelcalc.plugin.registry import Registry, describe
+from tunnelcalc.text import as_number, number_fix, quoted, suggestion
 from tunnelcalc.vocabulary import GROUND, Limits, Quantity, Sort, ground_quantity
 
 
@@ -60,7 +60,7 @@ def open_table(
         known = sorted({s for o in registry.of_sort("ground_reader") for s in o.thing.suffixes})
         problems.add(
             named_at,
-            f'names "{path}", which no plugin can read',
+            f"names {quoted(path)}, which no plugin can read",
             name=key,
             allowed=f"a file ending in {' or '.join(known) or 'none: no reader is installed'}",
             fix="save the table in one of these formats",
@@ -73,7 +73,13 @@ def open_table(
         return reader.read(file.path, file.content)
     except InputError as error:
         problems.found.extend(error.problems)
-        return None
+    except Exception as error:  # a stranger's reader may raise anything
+        problems.add(
+            Where(file.path),
+            f"could not be read: the reader {reader.name} failed with {describe(error)}",
+            fix="save the table as CSV, and report the fault to the maker of the plugin",
+        )
+    return None
 
 
 def typed(
@@ -97,16 +103,14 @@ def typed(
     known = [*numbers, *texts, *GROUND]
     seen: dict[str, int] = {}
     for column, name in enumerate(raw.header):
-        cells = raw.columns[column]
         if name in seen:
-            _about_header(
-                table, column, "stands twice", f"keep one column of this name, not {seen[name] + 1}"
-            )
+            first = f"stands twice, first in column {seen[name] + 1}"
+            _about_header(table, column, first, "keep one of the two")
             continue
         seen[name] = column
         quantity = ground_quantity(name)
         if name in texts or (name in kept and quantity is None and name not in numbers):
-            table.texts[name] = np.array(cells, dtype=object)
+            table.texts[name] = _texts(table, column, context)
         elif name in numbers:
             table.numbers[name] = _numbers(table, column, numbers[name], "m", context)
         elif quantity is None:
@@ -127,9 +131,8 @@ def typed(
 
 
 def _about_header(table: TypedTable, column: int, message: str, fix: str) -> None:
-    table.problems.add(
-        table.raw.head(column), message, name=f'column "{table.raw.header[column]}"', fix=fix
-    )
+    name = f"column {quoted(table.raw.header[column])}"
+    table.problems.add(table.raw.head(column), message, name=name, fix=fix)
 
 
 def _numbers(
@@ -142,10 +145,11 @@ def _numbers(
     for row in wrong.tolist():
         text = cells[row]
         number = as_number(text)
+        what = "not a number" if number is None else "out of range"
         table.problems.add(
             table.raw.place(row, column),
-            f'holds "{text}", which is {"not a number" if number is None else "out of range"}',
-            name=f'column "{table.raw.header[column]}"',
+            f"holds {quoted(text)}, which is {what}",
+            name=f"column {quoted(table.raw.header[column])}",
             allowed=limits.describe(unit),
             context=context(row),
             fix=number_fix(text) if number is None else "correct the value, and check its unit",
@@ -164,6 +168,21 @@ def _float(cell: str) -> float:
     return value if "_" not in cell and cell.isascii() else np.nan
 
 
+def _texts(table: TypedTable, column: int, context: Callable[[int], str]) -> Array:
+    cells = np.array(table.raw.columns[column], dtype=object)
+    for row, text in enumerate(cells.tolist()):
+        if not text.isprintable():
+            table.problems.add(
+                table.raw.place(row, column),
+                f"holds {quoted(text)}, with control characters or line breaks",
+                name=f"column {quoted(table.raw.header[column])}",
+                allowed="printable text in one line",
+                context=context(row),
+                fix="write plain text",
+            )
+    return cells
+
+
 def _choices(
     table: TypedTable, column: int, quantity: Quantity, context: Callable[[int], str]
 ) -> Array:
@@ -173,7 +192,7 @@ def _choices(
         if text not in allowed:
             table.problems.add(
                 table.raw.place(row, column),
-                f'holds "{text}"',
+                f"holds {quoted(text)}",
                 name=f'column "{quantity.name}"',
                 allowed=quantity.allowed(),
                 context=context(row),

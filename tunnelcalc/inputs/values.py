@@ -8,7 +8,7 @@ import numpy as np
 
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs.yaml_tree import Listing, Scalar, Table, Tree
-from tunnelcalc.text import as_number, number_fix, suggestion
+from tunnelcalc.text import as_number, number_fix, quoted, suggestion
 from tunnelcalc.vocabulary import Limits
 
 
@@ -34,7 +34,7 @@ class Reader:
         return key in self.table.entries
 
     def label(self, key: str) -> str:
-        return f'key "{self.path}{key}"'
+        return f"key {quoted(self.path + key)}"
 
     def complain(self, key: str, message: str, *, fix: str, allowed: str = "") -> None:
         self.problems.add(self.place(key), message, name=self.label(key), allowed=allowed, fix=fix)
@@ -48,9 +48,10 @@ class Reader:
             self.complain(key, f"holds {_sort(value)}", allowed=allowed, fix="write a single value")
             return None
         if not value.text.strip():
-            self.complain(key, "is empty", allowed=allowed, fix="write a value, or remove the key")
+            fix = "write a value" if required else "write a value, or remove the key"
+            self.complain(key, "is empty", allowed=allowed, fix=fix)
             return None
-        if not value.text.isprintable():
+        if not value.text.strip().isprintable():
             self.complain(
                 key,
                 "holds control characters or line breaks",
@@ -72,7 +73,7 @@ class Reader:
         if value is None:
             self.complain(
                 key,
-                f'holds "{text}", which is not a number',
+                f"holds {quoted(text)}, which is not a number",
                 allowed=allowed,
                 fix=number_fix(text),
             )
@@ -80,7 +81,7 @@ class Reader:
         if not bool(limits.contain(np.array(value))):
             self.complain(
                 key,
-                f'holds "{text}", which is out of range',
+                f"holds {quoted(text)}, which is out of range",
                 allowed=allowed,
                 fix="correct the value, and check its unit",
             )
@@ -96,7 +97,7 @@ class Reader:
         hint = suggestion(text, choices)
         self.complain(
             key,
-            f'holds "{text}"',
+            f"holds {quoted(text)}",
             allowed=allowed,
             fix=f"write {hint}" if hint else "write one of the allowed words",
         )
@@ -141,7 +142,7 @@ class Reader:
     def texts_of(self, key: str) -> Iterator[tuple[Where, str]]:
         """The texts of an optional list."""
         for number, item in enumerate(self._items(key, False), 1):
-            if isinstance(item, Scalar) and item.text.strip() and item.text.isprintable():
+            if isinstance(item, Scalar) and item.text.strip() and item.text.strip().isprintable():
                 yield item.where, item.text.strip()
             else:
                 self.problems.add(
@@ -198,4 +199,4 @@ def _sort(value: Tree) -> str:
         return "keys with values"
     if isinstance(value, Listing):
         return "a list"
-    return f'"{value.text}"' if value.text else "nothing"
+    return quoted(value.text) if value.text else "nothing"

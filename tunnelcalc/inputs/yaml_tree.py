@@ -11,9 +11,11 @@ from dataclasses import dataclass
 import yaml
 
 from tunnelcalc.errors import Problems, Where
+from tunnelcalc.text import quoted
 
 MOST_NODES = 200_000
 DEEPEST = 40
+NESTING = f"at most {MOST_NODES} values, nested {DEEPEST} deep"
 NULL_TAG = "tag:yaml.org,2002:null"
 MERGE_KEY = "<<"
 
@@ -47,14 +49,7 @@ Tree = Scalar | Listing | Table
 
 def parse(file: str, text: str, problems: Problems) -> Tree | None:
     """The tree of a YAML document; None, with a problem, where it is not YAML."""
-    tab_line = next(
-        (
-            number
-            for number, line in enumerate(text.splitlines(), 1)
-            if "\t" in line[: len(line) - len(line.lstrip())] and line.strip()
-        ),
-        0,
-    )
+    tab_line = _tab_indented_line(text)
     if tab_line:
         problems.add(
             Where(file, tab_line, 1),
@@ -62,26 +57,49 @@ def parse(file: str, text: str, problems: Problems) -> Tree | None:
             fix="indent with spaces",
         )
         return None
+    node = _composed(file, text, problems)
+    if node is None:
+        return None
+    builder = _Builder(file, problems)
+    tree = builder.tree(node, 0)
+    return None if builder.full else tree
+
+
+def _tab_indented_line(text: str) -> int:
+    """Number of the first line that a tab indents; 0 if there is none."""
+    for number, line in enumerate(text.split("\n"), 1):
+        if "\t" in line[: len(line) - len(line.lstrip())] and line.strip():
+            return number
+    return 0
+
+
+def _composed(file: str, text: str, problems: Problems) -> yaml.Node | None:
+    """The document as PyYAML sees it; None, with a problem, where it sees none."""
     try:
         node = yaml.compose(text, Loader=yaml.SafeLoader)
     except yaml.MarkedYAMLError as error:
         mark = error.problem_mark or error.context_mark
         where = Where(file, mark.line + 1, mark.column + 1) if mark else Where(file)
         what = error.problem or error.context or "cannot be understood"
+        if what == "but found another document":
+            what = "a second document begins here"
         problems.add(where, f"is not YAML: {what}", fix=_syntax_fix(what))
         return None
-    except (yaml.YAMLError, RecursionError, ValueError) as error:
-        what = str(error).splitlines()[0] if str(error) else type(error).__name__
-        if isinstance(error, RecursionError):
-            what = "it is nested too deeply"
-        problems.add(
-            Where(file), f"is not YAML: {what}", fix="save it as plain text with plain nesting"
-        )
+    except yaml.reader.ReaderError as error:
+        where = Where(file, text.count("\n", 0, error.position) + 1)
+        what = f"it holds the control character {ascii(text[error.position])[1:-1]}"
+        problems.add(where, f"is not YAML: {what}", fix="remove it")
+        return None
+    except RecursionError:
+        problems.add(Where(file), "is nested too deeply", allowed=NESTING, fix="nest less deeply")
+        return None
+    except (yaml.YAMLError, ValueError, OverflowError):  # PyYAML lets chr() and int() fail
+        what = "is not YAML: an escape or a number in it has no meaning"
+        problems.add(Where(file), what, fix="remove backslashes from texts in double quotes")
         return None
     if node is None:
         problems.add(Where(file), "is empty", fix="write the project into it, title first")
-        return None
-    return _Builder(file, problems).tree(node, 0)
+    return node
 
 
 def _syntax_fix(what: str) -> str:
@@ -97,19 +115,22 @@ class _Builder:
         self.file = file
         self.problems = problems
         self.count = 0
+        self.full = False
 
     def tree(self, node: yaml.Node, depth: int) -> Tree | None:
         where = Where(self.file, node.start_mark.line + 1, node.start_mark.column + 1)
         self.count += 1
+        if self.full:
+            return None
         if self.count > MOST_NODES or depth > DEEPEST:
-            if self.count <= MOST_NODES + 1:
-                self.problems.add(
-                    where,
-                    "holds more values, or deeper nesting, than a project can have",
-                    allowed=f"at most {MOST_NODES} values, nested {DEEPEST} deep",
-                    fix="remove aliases that repeat one another",
-                )
-                self.count = MOST_NODES + 2
+            self.full = True
+            deep = depth > DEEPEST
+            self.problems.add(
+                where,
+                "is nested too deeply" if deep else "begins more values than a project can have",
+                allowed=NESTING,
+                fix="nest less deeply" if deep else "remove aliases that repeat one another",
+            )
             return None
         if isinstance(node, yaml.ScalarNode):
             return Scalar(where, "" if node.tag == NULL_TAG else node.value)
@@ -132,7 +153,7 @@ class _Builder:
                 self.problems.add(
                     at,
                     f"stands twice, first in line {entries[key][0].line}",
-                    name=f'key "{key}"',
+                    name=f"key {quoted(key)}",
                     fix="keep one of the two",
                 )
                 continue

@@ -70,7 +70,7 @@ def write_manifest(
 
 def _hashed(folder: Path) -> Iterable[dict[str, str]]:
     for path in sorted(folder.rglob("*")):
-        if path.is_file() and path.name != MANIFEST:
+        if path.is_file() and path != folder / MANIFEST:
             digest = hashlib.sha256()
             with path.open("rb") as stream:
                 while block := stream.read(HASH_BLOCK):

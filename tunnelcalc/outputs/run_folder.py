@@ -26,27 +26,32 @@ class Target:
     project_folder: Path
     out: Path | None
 
+    def __post_init__(self) -> None:
+        if self.out is not None:
+            self.out = self.out.resolve()  # what a link points at is filled, not the link
+
     @property
     def parent(self) -> Path:
-        return self.project_folder / RUNS if self.out is None else self.out.absolute().parent
+        return self.project_folder / RUNS if self.out is None else self.out.parent
 
     def check(self) -> None:
         """Raise InputError unless the named folder is absent or empty."""
+        what = ""
         if self.out is None:
             return
-        if self.out.exists() and (not self.out.is_dir() or any(self.out.iterdir())):
-            what = "is not empty" if self.out.is_dir() else "is not a folder"
-            raise InputError(
-                (
-                    Problem(
-                        Where(str(self.out)),
-                        what,
-                        "name another folder: a run never overwrites anything",
-                        name="--out",
-                        allowed="a folder that is absent or empty",
-                    ),
-                )
+        if self.out.is_dir():
+            what = "is not empty" if any(self.out.iterdir()) else ""
+        elif self.out.exists() or any(above.is_file() for above in self.out.parents):
+            what = "is not a folder"
+        if what:
+            problem = Problem(
+                Where(str(self.out)),
+                what,
+                "name another folder: a run never overwrites anything",
+                name="--out",
+                allowed="a folder that is absent or empty",
             )
+            raise InputError((problem,))
 
     def place(self, part: Path) -> Path:
         """Move a finished folder to its place, in one step, and say where that is."""

@@ -11,6 +11,7 @@ from tunnelcalc.pipeline.ground_stages import (
     intact_modulus_stage,
     strength_stage,
 )
+from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.schedule_stages import flags_stage, zoning_stage
 from tunnelcalc.pipeline.stage import Stage
 from tunnelcalc.pipeline.support_stages import (
@@ -33,9 +34,12 @@ ONLY_IN_TABLES = (
 
 
 def build_stages(
-    project: Project, registry: Registry, plan: Sequence[PlannedClass]
+    project: Project, registry: Registry, plan: Sequence[PlannedClass], incidents: Incidents
 ) -> tuple[Stage, ...]:
-    """Ground, support, schedule: the job from end to end, with the project's methods."""
+    """Ground, support, schedule: the job from end to end, with the project's methods.
+
+    What a stage over the whole alignment cannot evaluate is added to `incidents`.
+    """
     reaction = registry.ground_reaction(project.methods["ground_reaction"])
     return (
         in_situ_stress_stage(),
@@ -53,7 +57,7 @@ def build_stages(
         ),
         choice_stage(reaction, project.criteria),
         zoning_stage(project.schedule),
-        flags_stage(registry.flags(project.plugins)),
+        flags_stage(registry.flags(project.plugins), incidents),
     )
 
 

@@ -1,58 +1,22 @@
-"""From columns over the whole alignment to zones, quantities, counts and incidents."""
+"""From columns over the whole alignment to zones, quantities and counts."""
 
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
 
 import numpy as np
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.support_stages import PlannedClass
 from tunnelcalc.plugin.contract import ValidityFlag
 from tunnelcalc.plugin.isolation import contained_amounts
 from tunnelcalc.project import Project
-from tunnelcalc.results import CheckLine, FlagCount, Incident, ItemTotal, Zone, governing_labels
+from tunnelcalc.results import CheckLine, FlagCount, ItemTotal, Zone, governing_labels
 from tunnelcalc.schedule.quantities import excavation_m3_per_m, totals_by_class
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, NONE_ADEQUATE_NAME
 from tunnelcalc.schedule.zoning import stretches, zone_starts
 from tunnelcalc.sections import Sections
-from tunnelcalc.support.adequacy import Outcome
-
-
-@dataclass(slots=True)
-class Incidents:
-    """Counts what could not be evaluated, while chunks are finished."""
-
-    counts: dict[tuple[str, str], tuple[int, float]] = field(default_factory=dict)
-
-    def add(self, what: str, reason: str, chainage_m: Array) -> None:
-        """Count sections; the first to be told keeps its chainage."""
-        if len(chainage_m):
-            count, first = self.counts.get((what, reason), (0, float(chainage_m[0])))
-            self.counts[what, reason] = (count + len(chainage_m), first)
-
-    def add_chunk(self, chunk: Sections, checks: Sequence[CheckLine]) -> None:
-        """Sections of a chunk without a closure, and checks that a class misses."""
-        chainage = chunk["chainage_m"]
-        unknown = ~np.isfinite(chunk["closure_mm"])
-        self.add("ground reaction", "no closure that can be computed", chainage[unknown])
-        missed = (chunk["check_outcome"] == Outcome.NOT_EVALUATED) & chunk["check_counts"]
-        missed = missed.astype(bool) & ~unknown[:, None]
-        for position in np.flatnonzero(np.any(missed, axis=0)).tolist():
-            line = checks[position]
-            rows = np.flatnonzero(missed[:, position])
-            reasons = chunk["check_reason"][rows, position]
-            for reason in dict.fromkeys(reasons.tolist()):
-                self.add(
-                    f"{line.class_name} {line.label}", reason, chainage[rows[reasons == reason]]
-                )
-
-    def listed(self) -> tuple[Incident, ...]:
-        return tuple(
-            Incident(what, reason, count, first)
-            for (what, reason), (count, first) in sorted(self.counts.items())
-        )
 
 
 def zones(

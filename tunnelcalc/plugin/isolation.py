@@ -33,17 +33,15 @@ def contained(
 ) -> Contained:
     """Arrays of values not below 0 from a plugin, one for each of `names`.
 
-    Where the call raises, the sections are halved until the offending ones stand alone: the
-    outcome of a section never depends on the others that are computed with it.
+    Where the call raises or returns no such arrays, the sections are halved until the offending
+    ones stand alone: the outcome of a section never depends on the others that are computed
+    with it.
     """
     count = sections.count
     if count == 0:
         return Contained(np.empty((len(names), 0)), np.empty(0, dtype=object))
-    try:
-        returned = call(sections)
-    except (Exception, SystemExit) as error:
-        if count == 1:
-            return _refused(names, 1, describe(error))
+    values, fault = _called(call, sections, names)
+    if fault and count > 1:
         half = count // 2
         parts = [
             contained(call, sections.take(piece), names)
@@ -53,19 +51,30 @@ def contained(
             np.concatenate([part.values for part in parts], axis=1),
             np.concatenate([part.reason for part in parts]),
         )
-    if len(returned) != len(names):
-        return _refused(names, count, f"returned {len(returned)} arrays, not {len(names)}")
-    values = np.empty((len(names), count))
-    reason = np.full(count, NO_REASON, dtype=object)
-    for row, (name, array) in enumerate(zip(names, returned, strict=True)):
-        fault = _misshapen(name, array, count)
-        if fault:
-            return _refused(names, count, fault)
-        values[row] = array
-        reason[~np.isfinite(values[row])] = f"{name} is not finite"
-        reason[values[row] < 0] = f"{name} is below 0"
+    reason = np.full(count, fault, dtype=object)
+    if not fault:
+        for name, row in zip(names, values, strict=True):
+            reason[~np.isfinite(row)] = f"{name} is not finite"
+            reason[row < 0] = f"{name} is below 0"
     values[:, reason != NO_REASON] = np.nan
     return Contained(values, reason)
+
+
+def _called(
+    call: Callable[[Sections], Sequence[Array]], sections: Sections, names: Sequence[str]
+) -> tuple[Array, str]:
+    """What a call returned, (k, n), and what is wrong with it as a whole."""
+    values = np.full((len(names), sections.count), np.nan)
+    try:
+        returned = call(sections)
+    except (Exception, SystemExit) as error:
+        return values, describe(error)
+    for row, (name, array) in enumerate(zip(names, returned, strict=True)):
+        fault = _misshapen(name, array, sections.count)
+        if fault:
+            return values, fault
+        values[row] = array
+    return values, NO_REASON
 
 
 def contained_spring(kind: SupportKind, sections: Sections, element: Element) -> Contained:
@@ -95,7 +104,7 @@ def contained_evaluation(
             return (evaluation.demand, evaluation.capacity, np.zeros(part.count))
         left_out = np.asarray(evaluation.left_out, dtype=float)
         if np.any(left_out):
-            reasons.append(evaluation.left_out_reason or "left out by the check")
+            reasons.append(str(evaluation.left_out_reason or "left out by the check"))
         return (
             _zero_where(left_out, evaluation.demand),
             _zero_where(left_out, evaluation.capacity),
@@ -122,6 +131,8 @@ def contained_amounts(
             fault = _misshapen(amount.item, amount.per_metre, sections.count)
             if not fault and not np.all(np.isfinite(amount.per_metre)):
                 fault = f"{amount.item} is not finite"
+            if not fault and np.any(amount.per_metre < 0):
+                fault = f"{amount.item} is below 0"
             if fault:
                 return (), fault
     except (Exception, SystemExit) as error:
@@ -137,14 +148,11 @@ def _zero_where(left_out: Array, values: Array) -> Array:
 
 
 def _misshapen(name: str, array: Array, count: int) -> str:
-    if not isinstance(array, np.ndarray):
+    # A masked array would lose its mask: what is hidden under it would count as a number.
+    if not isinstance(array, np.ndarray) or isinstance(array, np.ma.MaskedArray):
         return f"{name} is a {type(array).__name__}, not an array"
     if array.shape != (count,):
         return f"{name} has a wrong shape, not one value a section"
     if array.dtype.kind not in "fiub":
         return f"{name} holds {array.dtype}, not numbers"
     return ""
-
-
-def _refused(names: Sequence[str], count: int, reason: str) -> Contained:
-    return Contained(np.full((len(names), count), np.nan), np.full(count, reason, dtype=object))

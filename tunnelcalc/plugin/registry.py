@@ -134,7 +134,9 @@ class Registry:
         return cast("ClosureProfileMethod", self.offers["closure_profile", name].thing)
 
     def ground_reader(self, suffix: str) -> GroundReader | None:
-        for offer in self.of_sort("ground_reader"):
+        """The reader of a file ending. What we read ourselves, no other plugin takes over."""
+        offers = self.of_sort("ground_reader")
+        for offer in sorted(offers, key=lambda o: o.source.distribution != OWN_DISTRIBUTION):
             if suffix.lower() in offer.thing.suffixes:
                 return cast("GroundReader", offer.thing)
         return None
@@ -174,13 +176,13 @@ def load_plugins(points: Iterable[EntryPoint] | None = None) -> Registry:
     manager = pluggy.PluginManager("tunnelcalc")
     manager.add_hookspecs(hooks)
     found = entry_points(group=hooks.ENTRY_POINT_GROUP) if points is None else points
-    for point in sorted(found, key=lambda p: (p.name, p.value)):
-        distribution = point.dist
-        source = PluginSource(
-            point.name,
-            distribution.name if distribution else "unknown",
-            distribution.version if distribution else "unknown",
-        )
+    sourced = sorted(((_source(point), point) for point in found), key=lambda pair: str(pair[0]))
+    for source, point in sourced:
+        claimants = [str(other) for other, _ in sourced if other.plugin == source.plugin]
+        if len(claimants) > 1:
+            cause = f"its name is claimed by {' and '.join(claimants)}"
+            registry.failures.append(LoadFailure(source, cause, "uninstall all but one of them"))
+            continue
         try:
             module = point.load()
         except (Exception, SystemExit) as error:  # a stranger's module may raise anything
@@ -189,6 +191,13 @@ def load_plugins(points: Iterable[EntryPoint] | None = None) -> Registry:
             continue
         register_plugin(registry, manager, module, source)
     return registry
+
+
+def _source(point: EntryPoint) -> PluginSource:
+    distribution = point.dist
+    if distribution is None:
+        return PluginSource(point.name, "unknown", "unknown")
+    return PluginSource(point.name, distribution.name, distribution.version)
 
 
 def register_plugin(
@@ -213,6 +222,8 @@ def register_plugin(
 
 def _registrar(registry: Registry, sort: str, source: PluginSource) -> Callable[[Any], None]:
     def register(thing: Any) -> None:
+        if not isinstance(thing.name, str) or not thing.name:
+            raise TypeError(f"a {sort} has the name {thing.name!r}, which is no text")
         registry.add(Offer(sort, thing.name, thing, source))
 
     return register
@@ -220,6 +231,6 @@ def _registrar(registry: Registry, sort: str, source: PluginSource) -> Callable[
 
 def describe(error: BaseException) -> str:
     """An exception in one short line, safe to print."""
-    first = next(iter(str(error).strip().splitlines()), "")
-    text = f"{type(error).__name__}: {first}" if first else type(error).__name__
+    message = " ".join(str(error).split())
+    text = f"{type(error).__name__}: {message}" if message else type(error).__name__
     return "".join(c if c.isprintable() else "?" for c in text)[:300]

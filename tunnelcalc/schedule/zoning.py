@@ -3,7 +3,8 @@
 Two rules, repeated until nothing changes. Carry: the heavier class is carried a stated length
 into lighter ground, on both sides. Minimum zone: a short zone joins a heavier neighbour, or
 takes sections from lighter ones. A rule only ever gives a class that is adequate on the
-section; sections without an adequate class, declared gaps and the ends stop it.
+section. Declared gaps and the ends stop every rule. A section without an adequate class keeps
+that answer: no zone grows over it, but a carried length that reaches beyond it counts there.
 """
 
 from __future__ import annotations

@@ -101,7 +101,8 @@ def class_outcome(
 
     Parameters
     ----------
-    factors, outcomes : of each check, (n,) each.
+    factors : of each check, (n,) factor of safety, NaN where there is none. [-]
+    outcomes : of each check, (n,) Outcome.
     loads : for each check, whether it carries load; the others are rules.
     counting : for each check, (n,) whether the class needs it to pass here.
     closure_pct : (n,) closure at rest with this class, in per cent of the radius; NaN where

@@ -10,9 +10,11 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.root_finding import increasing_roots
 
-LARGEST_RESIDUAL = 1e-8
-"""Of the pressure. Where closures of many thousand radii leave more, doubles cannot tell the
-pressure in the elements, and the section is given up instead of being given a number."""
+LARGEST_ERROR = 1e-8
+"""Of the pressure. Where doubles leave more, the section is given up instead of being given a
+number."""
+NEGLIGIBLE_PRESSURE = 1e-12
+"""Of the in-situ stress: an error that is never too large, for elements that hardly touch."""
 
 
 class Equilibrium(NamedTuple):
@@ -46,8 +48,9 @@ def equilibrium(
 
     Returns
     -------
-    Equilibrium, to a relative 1e-12 of the pressure. Sections that did not converge, or whose
-    unsupported closure cannot be computed, are NaN and marked.
+    Equilibrium, as near to a relative 1e-12 of the pressure as doubles can tell closures apart.
+    Sections that did not converge, or whose unsupported closure cannot be computed, are NaN and
+    marked.
 
     Limits
     ------
@@ -83,11 +86,25 @@ def equilibrium(
 
     roots = increasing_roots(surplus, np.zeros(loaded.size), upper, start[loaded])
     pressure[loaded] = np.where(roots.converged, roots.value, np.nan)
+    return _at_rest(curve, radius_m, pressure, stiffness_mpa_per_m, installed_m)
+
+
+def _at_rest(
+    curve: GroundCurve,
+    radius_m: Array,
+    pressure: Array,
+    stiffness_mpa_per_m: Array,
+    installed_m: Array,
+) -> Equilibrium:
+    """The state under the pressure found, NaN where it is not an equilibrium after all."""
     rest = curve.at(pressure)
     closure = rest.closure_ratio * radius_m
-    shares = _shares(closure, stiffness_mpa_per_m, installed_m)
-    residual = np.abs(pressure - _in_order(shares))
-    resolved = residual <= LARGEST_RESIDUAL * pressure
+    shares, held_at = _shared_out(pressure, stiffness_mpa_per_m, installed_m)
+    acting = _in_order(np.where(shares > 0, stiffness_mpa_per_m, 0))
+    give = np.divide(1, acting, out=np.zeros(acting.shape), where=acting > 0)
+    error = np.abs(closure - held_at) / (give - rest.slope * radius_m)
+    smallest = NEGLIGIBLE_PRESSURE * curve.in_situ_stress_mpa
+    resolved = (pressure == 0) | (error <= np.maximum(LARGEST_ERROR * pressure, smallest))
     return Equilibrium(
         np.where(resolved, pressure, np.nan),
         np.where(resolved, closure, np.nan),
@@ -118,8 +135,10 @@ def pressure_at_closure(curve: GroundCurve, radius_m: Array, closure_m: Array) -
     """
     free = curve.at(np.zeros(radius_m.size)).closure_ratio * radius_m
     pressure = np.where(free <= closure_m, 0.0, np.nan)
-    # A closure beyond the range of a double is certainly larger than the one wanted.
-    wanted = np.flatnonzero(~(free <= closure_m) & np.isfinite(curve.critical_pressure_mpa))
+    # A closure beyond the range of a double is certainly larger than the one wanted: what is
+    # not known at all is not known under the in-situ stress either.
+    known = np.isfinite(curve.at(curve.in_situ_stress_mpa).closure_ratio)
+    wanted = np.flatnonzero(~(free <= closure_m) & known)
 
     def shortfall(estimate: Array, index: Array) -> tuple[Array, Array]:
         chosen = wanted[index]
@@ -138,6 +157,29 @@ def pressure_at_closure(curve: GroundCurve, radius_m: Array, closure_m: Array) -
 def _shares(closure_m: Array, stiffness_mpa_per_m: Array, installed_m: Array) -> Array:
     """Pressure in each element (e, n). [MPa]"""
     return stiffness_mpa_per_m * np.maximum(closure_m - installed_m, 0)
+
+
+def _shared_out(
+    pressure_mpa: Array, stiffness_mpa_per_m: Array, installed_m: Array
+) -> tuple[Array, Array]:
+    """Pressure in each element (e, n) of springs that together carry a pressure (n,) [MPa], and
+    the closure (n,) at which they do [m].
+
+    The rounding of a closure, times a great stiffness, would be a great pressure: so this does
+    not start from the closure of the ground. Of all sets of springs, by order of installation,
+    the set that acts needs least movement to carry the pressure.
+    """
+    stiff = stiffness_mpa_per_m > 0
+    first = np.min(np.where(stiff, installed_m, np.inf), axis=0, initial=np.inf)
+    late = np.where(stiff, installed_m - first, 0)
+    moved = np.full(pressure_mpa.shape, np.inf)
+    for latest in late:
+        within = np.where(late <= latest, stiffness_mpa_per_m, 0)
+        together, carried = _in_order(within), pressure_mpa + _in_order(within * late)
+        needed = np.divide(carried, together, out=np.full_like(carried, np.inf), where=together > 0)
+        moved = np.minimum(moved, needed)
+    moved = np.where(np.isinf(moved), 0, moved)
+    return stiffness_mpa_per_m * np.maximum(moved - late, 0), first + moved
 
 
 def _in_order(shares: Array) -> Array:

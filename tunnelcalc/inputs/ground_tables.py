@@ -1,0 +1,97 @@
+"""Reads the tables that the `ground` part of a project names."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator, Sequence
+
+from tunnelcalc.errors import Where
+from tunnelcalc.inputs.files import ProjectFolder
+from tunnelcalc.inputs.typed_table import TypedTable, open_table, typed
+from tunnelcalc.inputs.values import Reader
+from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
+from tunnelcalc.plugin.raw_table import RawTable
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.text import quoted, shown, suggestion
+from tunnelcalc.vocabulary import QUANTITIES, Limits
+
+CHAINAGE = Limits(-1e7, 1e7)
+TABLE, UNITS = "table", "units"
+"""Keys under which a project names its tables."""
+
+OWN_COLUMNS = (
+    *QUANTITIES,
+    *CLASS_COLUMNS,
+    *CHECK_COLUMNS,
+    *("required_class", "scheduled_class", "flags", "flag_raised", "flag_not_assessed"),
+)
+"""Names that a free column cannot have, besides those of flags: the program fills them."""
+
+
+def other_columns(reader: Reader, registry: Registry) -> Iterator[str]:
+    """Names of the columns that the project wants to be carried along as they are."""
+    taken = {*OWN_COLUMNS, *registry.names("validity_flag")}
+    for where, name in reader.texts_of("other_columns"):
+        if name not in taken:
+            yield name
+            continue
+        reader.problems.add(
+            where,
+            f"names {quoted(name)}, a column of the program's own",
+            name=reader.label("other_columns"),
+            allowed="names that have no meaning to the program",
+            fix="remove the entry, or give the column another name",
+        )
+
+
+def read_table(
+    reader: Reader,
+    folder: ProjectFolder,
+    registry: Registry,
+    key: str,
+    others: Sequence[str],
+) -> TypedTable | None:
+    """The table that `key` names; None, with a problem unless it is optional, without one."""
+    is_units = key == UNITS
+    path = reader.text(key, "the path of a table", required=not is_units)
+    if path is None:
+        return None
+    raw = open_table(folder, path, reader.place(key), reader.label(key), registry)
+    if raw is None:
+        return None
+    ends = () if is_units else ("from_m", "to_m")
+    _check_frame(reader, raw, ends or ("ground_unit",))
+    numbers = dict.fromkeys(ends, CHAINAGE)
+    context = _of_unit(raw) if is_units else _of_interval(raw)
+    return typed(raw, reader.problems, numbers, ("ground_unit",), others, context)
+
+
+def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None:
+    """Tell missing columns, and a table without rows."""
+    for name in required:
+        if name not in raw.header:
+            hint = suggestion(name, raw.header)
+            reader.problems.add(
+                Where(raw.file, raw.header_line),
+                "is missing",
+                name=f'column "{name}"',
+                allowed="the columns " + ", ".join(required),
+                fix=f"add it; the column {quoted(hint)} may be meant" if hint else "add it",
+            )
+    if not raw.lines:
+        reader.problems.add(
+            Where(raw.file), "has a header and no rows", fix="write one row an interval or unit"
+        )
+
+
+def _of_interval(raw: RawTable) -> Callable[[int], str]:
+    if "from_m" not in raw.header or "to_m" not in raw.header:
+        return lambda row: ""
+    start, end = (raw.columns[raw.header.index(name)] for name in ("from_m", "to_m"))
+    return lambda row: f"interval {shown(start[row])} to {shown(end[row])} m"
+
+
+def _of_unit(raw: RawTable) -> Callable[[int], str]:
+    if "ground_unit" not in raw.header:
+        return lambda row: ""
+    names = raw.columns[raw.header.index("ground_unit")]
+    return lambda row: f"ground unit {quoted(names[row])}"
