@@ -50,7 +50,7 @@ MOST_NAMES = 20
 def few(names: Sequence[str]) -> str:
     """Names in a row; of very many, the first."""
     more = len(names) - MOST_NAMES
-    return ", ".join(names[:MOST_NAMES]) + (f" and {more} more" if more > 0 else "")
+    return ", ".join(map(shown, names[:MOST_NAMES])) + (f" and {more} more" if more > 0 else "")
 
 
 def as_number(text: str) -> float | None:

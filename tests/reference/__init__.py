@@ -7,9 +7,9 @@ as the other side of comparisons, and of benchmarks.
 `section_results` does a whole section: see `reference.sections`.
 """
 
+from reference.closure_profile import share_of_closure
 from reference.equilibrium import Spring, State, pressure_at_closure, state_at_rest
 from reference.ground_curve import GroundCurve
-from reference.closure_profile import share_of_closure
 from reference.sections import SectionResults, section_results
 
 __all__ = [

@@ -8,10 +8,10 @@ from collections.abc import Mapping, Sequence
 from typing import Any, NamedTuple
 
 from reference import rock_mass
+from reference.closure_profile import share_of_closure
 from reference.elements import REACTIONS, Check, checks
 from reference.equilibrium import Spring, State, pressure_at_closure, state_at_rest
 from reference.ground_curve import GroundCurve
-from reference.closure_profile import share_of_closure
 
 Row = Mapping[str, Any]
 DEFAULT_METHODS = {

@@ -174,7 +174,9 @@ class _Assembly:
                     what if name else "is empty",
                     name='column "ground_unit"',
                     allowed=few(sorted(rows)),
-                    fix=f'did you mean "{hint}"?' if hint else "add the unit to the units table",
+                    fix=f"did you mean {quoted(hint)}?"
+                    if hint
+                    else "add the unit to the units table",
                 )
         return found
 

@@ -62,8 +62,8 @@ def open_table(
             named_at,
             f"names {quoted(path)}, which no plugin can read",
             name=key,
-            allowed=f"a file ending in {' or '.join(known) or 'none: no reader is installed'}",
-            fix="save the table in one of these formats",
+            allowed="a file ending in " + " or ".join(known) if known else "",
+            fix="save the table so" if known else "install a plugin that reads tables",
         )
         return None
     file = folder.read(path, named_at, key)

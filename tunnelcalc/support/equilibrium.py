@@ -179,7 +179,15 @@ def _shared_out(
         needed = np.divide(carried, together, out=np.full_like(carried, np.inf), where=together > 0)
         moved = np.minimum(moved, needed)
     moved = np.where(np.isinf(moved), 0, moved)
-    return stiffness_mpa_per_m * np.maximum(moved - late, 0), first + moved
+    acting = np.where(late < moved, stiffness_mpa_per_m, 0)
+    together = _in_order(acting)
+    share = np.divide(acting, together, out=np.zeros_like(acting), where=together > 0)
+    shares = np.empty_like(acting)
+    for row, own in enumerate(late):
+        # What the acting springs would carry, had all been installed together with this one.
+        carried = pressure_mpa + _in_order(acting * (late - own))
+        shares[row] = share[row] * np.maximum(carried, 0)
+    return shares, first + moved
 
 
 def _in_order(shares: Array) -> Array:
