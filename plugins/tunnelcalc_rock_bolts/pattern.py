@@ -8,7 +8,7 @@ and maximum spacing [from memory]. "Spacing not more than half the length" is th
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -23,6 +23,9 @@ LARGEST_SPACING_M = 2.0
 SHORT_SPAN_M, SHORT_SPAN_SHARE = 6.0, 0.5
 LONG_SPAN_M, LONG_SPAN_SHARE = 18.0, 0.25
 LONGEST_SPAN_M = 30.0
+
+WRITTEN_DECIMALS = 9
+"""A nanometre: far finer than any length is written, far coarser than rounding."""
 
 NO_BLOCK_WIDTH = "block_width_m is not given"
 BEYOND_SPANS = f"the rule gives no length for spans above {LONGEST_SPAN_M:g} m"
@@ -43,7 +46,13 @@ class PatternRule:
         return element.choice("pattern_rules") == EM_1110_1_2907
 
     def evaluate(self, sections: Sections, element: Element) -> api.Evaluation:
-        return self.compare(sections, element)
+        found = self.compare(sections, element)
+        # Three times 0.4 m is not quite 1.2 m in doubles: lengths are compared as written.
+        return replace(
+            found,
+            demand=np.round(found.demand, WRITTEN_DECIMALS),
+            capacity=np.round(found.capacity, WRITTEN_DECIMALS),
+        )
 
 
 def least_length_by_span_m(span_m: Array) -> Array:

@@ -84,6 +84,14 @@ def test_a_command_that_is_not_understood_ends_with_2_and_the_usage(
     assert ended.stderr.startswith("usage: tunnelcalc")
 
 
+def test_what_a_screen_cannot_show_is_written_out(project: Path):
+    text = (project / "project.yaml").read_text()
+    (project / "project.yaml").write_text('"\\ud800\\e[31m": 1\n' + text)
+    ended = tunnelcalc("validate", ".", folder=project)
+    assert (ended.returncode, ended.stderr) == (2, "")
+    assert ended.stdout.startswith('project.yaml:1:1: key "\\ud800\\x1b[31m" is unknown\n')
+
+
 def test_names_are_printed_as_they_are_and_never_taken_for_markup(project: Path):
     for file, old in (("project.yaml", "name: light"), ("project.yaml", "title: Invented")):
         text = (project / file).read_text()

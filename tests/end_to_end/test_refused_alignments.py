@@ -6,7 +6,7 @@ from pathlib import Path
 
 import pytest
 from end_to_end.projects import Damage, all_of, replaced
-from end_to_end.refusals import Case, assert_refused
+from end_to_end.refusals import Case, assert_refused_here
 
 
 def declared_gap(gap: str) -> Damage:
@@ -150,5 +150,7 @@ CASES: dict[str, Case] = {
 
 
 @pytest.mark.parametrize("case", CASES.values(), ids=CASES.keys())
-def test_an_alignment_that_does_not_fit_together_is_refused(project: Path, case: Case):
-    assert_refused(project, case)
+def test_an_alignment_that_does_not_fit_together_is_refused(
+    project: Path, case: Case, capsys: pytest.CaptureFixture[str]
+):
+    assert_refused_here(project, case, capsys)

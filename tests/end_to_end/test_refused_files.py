@@ -188,13 +188,13 @@ CASES: dict[str, Case] = {
     ),
     "row-with-a-cell-too-many": (
         replaced("ground.csv", "45,70,siltstone,75", "45,70,siltstone,75,5"),
-        "ground.csv:3: has 6 cells where the header has 5",
+        "ground.csv:3: has 6 cells, the header has 5",
         "  allowed: 5 cells",
         "  fix: write decimal points, not commas, and put text with commas in quotes",
     ),
     "row-with-a-cell-too-few": (
         replaced("ground.csv", "120,150,gouge,200,", "120,150,gouge,200"),
-        "ground.csv:5: has 4 cells where the header has 5",
+        "ground.csv:5: has 4 cells, the header has 5",
         "  allowed: 5 cells",
         "  fix: write decimal points, not commas, and put text with commas in quotes",
     ),

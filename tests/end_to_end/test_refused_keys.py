@@ -6,7 +6,7 @@ from pathlib import Path
 
 import pytest
 from end_to_end.projects import PROJECT, all_of, replaced
-from end_to_end.refusals import Case, assert_refused
+from end_to_end.refusals import Case, assert_refused_here
 
 
 def without_classes(project: Path) -> None:
@@ -229,5 +229,7 @@ CASES: dict[str, Case] = {
 
 
 @pytest.mark.parametrize("case", CASES.values(), ids=CASES.keys())
-def test_a_project_file_with_a_wrong_key_or_value_is_refused(project: Path, case: Case):
-    assert_refused(project, case)
+def test_a_project_file_with_a_wrong_key_or_value_is_refused(
+    project: Path, case: Case, capsys: pytest.CaptureFixture[str]
+):
+    assert_refused_here(project, case, capsys)

@@ -17,6 +17,8 @@ from tunnelcalc.support.equilibrium import equilibrium, pressure_at_closure
 
 QUADRATURE = 3e-9
 """The error of a closure that the program's quadrature may leave. [-]"""
+ROUNDING = 1e-11
+"""What rounding may leave of a plastic radius in the weakest ground. [-]"""
 CHUNKS = [1, 3, 17, 1000]
 MOST_CHUNKS = 200
 
@@ -54,7 +56,7 @@ def test_closure_falls_and_the_ring_shrinks_as_the_pressure_rises(ground, one, o
     found = of_one(ground, np.sort([one * p0, other * p0]))
     assume(np.isfinite(found.closure_m).all())
     assert found.closure_m[1] <= found.closure_m[0] * (1 + QUADRATURE)
-    assert found.plastic_radius_m[1] <= found.plastic_radius_m[0]
+    assert found.plastic_radius_m[1] <= found.plastic_radius_m[0] * (1 + ROUNDING)
     assert np.all(found.closure_m >= 0)
 
 
@@ -70,7 +72,7 @@ def test_closure_is_never_less_than_that_of_elastic_ground(ground, share):
     p0, modulus = ground["in_situ_stress_mpa"][0], ground["deformation_modulus_mpa"][0]
     closure = of_one(ground, [share * p0]).closure_m[0]
     assume(np.isfinite(closure))
-    elastic = p0 * (1 - share) * (1 + ground["poisson_ratio"][0]) / modulus
+    elastic = (p0 - share * p0) * (1 + ground["poisson_ratio"][0]) / modulus
     assert closure >= elastic * (1 - QUADRATURE)
 
 
@@ -91,7 +93,7 @@ def test_closure_goes_with_one_over_the_modulus(ground, share, factor):
     np.testing.assert_array_equal(other.plastic_radius_m, one.plastic_radius_m)
 
 
-@given(grounds(), shares, st.floats(1e-3, 1e3))
+@given(grounds(), st.floats(0, 0.99), st.floats(1e-3, 1e3))
 def test_stresses_in_another_unit_change_nothing(ground, share, factor):
     """Closure and plastic radius follow from ratios of stresses, strengths and moduli."""
     p0 = ground["in_situ_stress_mpa"][0]
@@ -128,7 +130,7 @@ def test_ground_and_elements_at_rest_agree_on_the_closure(ground, radius, suppor
     assume(np.isfinite(free))
     pressure, p0 = rest.support_pressure_mpa[0], ground["in_situ_stress_mpa"][0]
     assert 0 <= pressure <= p0
-    assert rest.closure_m[0] <= free
+    assert rest.closure_m[0] <= free * (1 + QUADRATURE)
     parts = rest.element_pressure_mpa[:, 0]
     np.testing.assert_allclose(parts.sum(), pressure, rtol=1e-12)
     acting = parts > 0
@@ -147,11 +149,12 @@ def test_stiffer_support_never_raises_the_closure(ground, radius, support, facto
     stiffness, installed_shares = map(list, zip(*support, strict=True))
     rest, free, _ = at_rest(ground, radius, stiffness, installed_shares)
     assume(np.isfinite(free))
+    slack = QUADRATURE * ground["in_situ_stress_mpa"][0]
     stiffer, _, _ = at_rest(ground, radius, np.array(stiffness) * factor, installed_shares)
     more, _, _ = at_rest(ground, radius, [*stiffness, 50.0], [*installed_shares, 0.3])
     for other in (stiffer, more):
         assert other.closure_m[0] <= rest.closure_m[0] * (1 + QUADRATURE)
-        assert other.support_pressure_mpa[0] >= rest.support_pressure_mpa[0] * (1 - 1e-8) - 1e-12
+        assert other.support_pressure_mpa[0] >= rest.support_pressure_mpa[0] - slack
 
 
 @given(grounds(), st.floats(1e-4, 0.1))

@@ -98,7 +98,8 @@ def test_unsupported_ground(curve, slow, free):
 
 @pytest.mark.parametrize("stiffness", [0.0, 1.0, 1e4, 1e9], ids=lambda k: f"{k:g}-MPa-per-m")
 def test_support_at_rest(curve, slow, free, stiffness):
-    """One element, installed at three tenths of the movement. Achieved: 1e-13 p0, 6e-12 of the closure."""
+    """One element, installed at three tenths of the movement. Achieved: 1e-13 of the in-situ
+    stress, 6e-12 of the closure."""
     installed = np.where(np.isfinite(free), 0.3 * free * RADIUS, 0)
     found = equilibrium(curve, RADIUS, np.full((1, COUNT), stiffness), installed[None])
     known = np.isfinite(curve.at(np.zeros(COUNT)).closure_ratio)

@@ -43,7 +43,7 @@ class CsvReader:
             if len(row) != width:
                 problems.add(
                     api.Where(name, line),
-                    f"has {len(row)} cells where the header has {width}",
+                    f"has {len(row)} cell{'s' if len(row) > 1 else ''}, the header has {width}",
                     allowed=f"{width} cells",
                     fix="write decimal points, not commas, and put text with commas in quotes",
                 )

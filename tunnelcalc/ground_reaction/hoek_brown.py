@@ -22,18 +22,12 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import CurvePoint
+from tunnelcalc.ground_reaction.ring_integral import ring_integral_mpa
 from tunnelcalc.root_finding import increasing_roots
 
-MOST_DECAY = 40.0
-"""exp(-40) is below the rounding of a double: the integral ends there however deep the ring."""
-SHORT_DECAY = 12.0
-"""Up to here 12 points suffice: (K + 1) ln(Rp / R), reached at Rp / R = 20 for psi = 30 deg."""
 LARGEST_EXPONENT = 600.0
 """exp(600) is 1e260: what a larger closure is multiplied with, stresses, stiffness of support,
 could leave the range of a double. Such a closure cannot be computed."""
-
-_SHORT_RULE = np.polynomial.legendre.leggauss(12)
-_LONG_RULE = np.polynomial.legendre.leggauss(24)
 
 
 class GroundReaction(NamedTuple):
@@ -208,7 +202,10 @@ class HoekBrownCurve:
 
         driving = 2 * (1 - nu) * (p0 - self.critical_pressure_mpa)
         elastic_part = (1 - 2 * nu) * (p0 - support_pressure_mpa)
-        dilating = (dilation - 1) * (1 - nu) * self._ring_integral(exponent, yields)
+        integral = ring_integral_mpa(
+            exponent, yields, sci, mb, self.a, dilation, self.critical_power
+        )
+        dilating = (dilation - 1) * (1 - nu) * integral
         plastic_closure = growth * (driving - dilating) - elastic_part
         elastic_closure = p0 - support_pressure_mpa
         double_modulus = 2 * self.shear_modulus_mpa
@@ -222,38 +219,6 @@ class HoekBrownCurve:
         slope = np.where(yields, plastic_slope, -1 / double_modulus)
         plastic_ratio = np.exp(np.where(depth <= LARGEST_EXPONENT, depth, np.nan))
         return CurvePoint(plastic_ratio, closure, slope)
-
-    def _ring_integral(self, exponent: Array, yields: Array) -> Array:
-        """J / X^(K+1), by a fixed Gauss-Legendre rule of 12 or, in deep rings, 24 points. [MPa]"""
-        total = np.zeros(np.shape(exponent))
-        needed = yields & (self.dilation != 1)
-        for rule, chosen in (
-            (_SHORT_RULE, needed & (exponent <= SHORT_DECAY)),
-            (_LONG_RULE, needed & (exponent > SHORT_DECAY)),
-        ):
-            if not np.any(chosen):
-                continue
-            decay = np.minimum(exponent[chosen], MOST_DECAY)
-            a, mb, dilation, critical, sci = (
-                np.broadcast_to(values, total.shape)[chosen]
-                for values in (
-                    self.a,
-                    self.mb,
-                    self.dilation,
-                    self.critical_power,
-                    self.intact_strength_mpa,
-                )
-            )
-            rate = (1 - a) * mb / (dilation + 1)
-            strength_power = a / (1 - a)
-            integral = np.zeros(decay.shape)
-            # Points are summed one by one, in fixed order, so that the last bits do not depend
-            # on how many sections are computed together.
-            for node, weight in zip(*rule, strict=True):
-                z = decay * (0.5 * (1 + node))
-                integral += (0.5 * weight) * np.exp(-z) * (critical - rate * z) ** strength_power
-            total[chosen] = sci * decay * integral / (dilation + 1)
-        return total
 
 
 def ground_reaction(

@@ -67,9 +67,6 @@ BOUNDARIES = [
         1.2,
         1.2,
         id="three-block-widths-that-have-no-exact-double",
-        marks=pytest.mark.xfail(
-            strict=True, reason="3 x 0.4 is 1.2000000000000002: bolts of 1.2 m fail the rule"
-        ),
     ),
     pytest.param(
         "pattern_length_by_span", {"radius": 3.0, "length": 3.0}, 3.0, 3.0, id="span-of-6-m"

@@ -17,6 +17,7 @@ LOADS = [
     pytest.param(0.0, 0.0, NAN, PASS, id="unloaded-without-capacity"),
     pytest.param(1.0, 0.0, 0.0, FAIL, id="no-capacity"),
     pytest.param(1e-300, 1e300, NAN, PASS, id="vanishing-load-has-no-factor"),
+    pytest.param(-1.0, 1.0, NAN, FAIL, id="negative-demand-is-no-pass"),
     pytest.param(NAN, 1.0, NAN, UNKNOWN, id="unknown-demand"),
     pytest.param(1.0, NAN, NAN, UNKNOWN, id="unknown-capacity"),
     pytest.param(0.0, NAN, NAN, UNKNOWN, id="unloaded-with-unknown-capacity"),

@@ -125,6 +125,21 @@ def test_closure_beyond_a_double_is_marked_and_never_a_number():
         assert np.isnan(values[0])
 
 
+def test_largest_closures_that_are_computed_can_be_multiplied_with_the_stiffest_support():
+    """Dilation angles that raise the closure from 1e200 to beyond 1e300 radii: on the way there no
+    product leaves the range of a double, which would be a warning and so an error here."""
+    weak = {"in_situ_stress_mpa": 50.0, "intact_strength_mpa": 0.5, "mb": 1e-2, "s": 6.3e-8}
+    depth = np.log(curve(**weak).at(np.zeros(1)).plastic_ratio[0])
+    slope = np.linspace(460, 720, 400) / depth - 1
+    angle = np.degrees(np.arcsin((slope - 1) / (slope + 1)))
+    ground = curve(**weak, dilation_deg=angle, deformation_modulus_mpa=1.0)
+    free = ground.at(np.zeros(400)).closure_ratio
+    assert np.nanmax(free) > 1e250
+    assert np.isnan(free).any()
+    found = equilibrium(ground, np.full(400, 30.0), np.full((1, 400), 1e9), np.zeros((1, 400)))
+    np.testing.assert_array_equal(found.converged, np.isfinite(free))
+
+
 def test_section_that_cannot_be_computed_spoils_no_other():
     stress = np.array([4.0, np.nan, 4.0])
     three = equilibrium(
