@@ -6,6 +6,7 @@ what to do. Everything else that is raised is a defect of the program or of the 
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass, field
 from enum import IntEnum
@@ -34,15 +35,37 @@ class ExitCode(IntEnum):
 
 @dataclass(frozen=True, slots=True)
 class Where:
-    """A place in a file. `line` and `column` count from 1; 0 means the whole file."""
+    """A place in a file. `line` and `column` count from 1; 0 means the whole file.
+
+    `sheet` is the sheet of a workbook: lines and columns then count its rows and columns.
+    """
 
     file: str
     line: int = 0
     column: int = 0
+    sheet: str = ""
+
+    @property
+    def cell(self) -> str:
+        """The cell of a sheet as spreadsheets write it, B7; empty for what is no cell."""
+        if not (self.sheet and self.line and self.column):
+            return ""
+        letters, rest = "", self.column
+        while rest:
+            rest, letter = divmod(rest - 1, 26)
+            letters = chr(ord("A") + letter) + letters
+        return f"{letters}{self.line}"
 
     def __str__(self) -> str:
+        if self.sheet:
+            row = f" row {self.line}" if self.line else ""
+            return f"{self.file}:{self.sheet}{'!' + self.cell if self.cell else row}"
         parts = [self.file] + [str(number) for number in (self.line, self.column) if number]
         return ":".join(parts)
+
+
+_VALUE = re.compile(r'(?:holds|names) "(.*?)"(?=,|$)')
+"""How a message begins that says which value stands there."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -60,6 +83,29 @@ class Problem:
     allowed: str = ""
     context: str = ""
 
+    @property
+    def value(self) -> str | None:
+        """The value complained about, as the message shows it; None where it shows none."""
+        found = _VALUE.match(self.message)
+        return found[1] if found else None
+
+    def as_record(self) -> dict[str, str | int | None]:
+        """For other programs: always the same keys, None where there is nothing to tell."""
+        where = self.where
+        return {
+            "file": where.file,
+            "line": where.line or None,
+            "column": where.column or None,
+            "sheet": where.sheet or None,
+            "cell": where.cell or None,
+            "name": self.name or None,
+            "message": self.message,
+            "value": self.value,
+            "allowed": self.allowed or None,
+            "context": self.context or None,
+            "fix": self.fix,
+        }
+
     def __str__(self) -> str:
         head = f"{self.where}: {self.name + ' ' if self.name else ''}{self.message}"
         detail = "; ".join(
@@ -76,7 +122,10 @@ class InputError(Exception):
 
     def __init__(self, problems: tuple[Problem, ...]) -> None:
         self.problems = problems
-        super().__init__("\n".join(str(problem) for problem in problems))
+        super().__init__(problems)
+
+    def __str__(self) -> str:
+        return "\n".join(str(problem) for problem in self.problems)
 
 
 @dataclass(slots=True)
@@ -115,7 +164,8 @@ class Problems:
         for problem in self.found:
             order.setdefault(problem.where.file, len(order))
         ranked = sorted(
-            self.found, key=lambda p: (order[p.where.file], p.where.line, p.where.column)
+            self.found,
+            key=lambda p: (order[p.where.file], p.where.sheet, p.where.line, p.where.column),
         )
         raise InputError(tuple(dict.fromkeys(ranked)))
 

@@ -5,6 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
+from tunnelcalc.chainage import Notation
+from tunnelcalc.rock_mass.laboratory import IntactTests
 from tunnelcalc.sections import Sections
 
 DEFAULT_METHODS: Mapping[str, str] = {
@@ -77,6 +79,31 @@ class Gap:
 
 
 @dataclass(frozen=True, slots=True)
+class ValueOrigin:
+    """One ground value, the stretch on which it holds, where it came from and by which method."""
+
+    quantity: str
+    from_m: float
+    to_m: float
+    value: float
+    origin: str
+    method: str
+
+
+@dataclass(frozen=True, slots=True)
+class UnitTests:
+    """The laboratory tests of one ground unit and their result; outliers are kept."""
+
+    ground_unit: str
+    result: IntactTests
+    outliers: tuple[str, ...]
+
+    def value(self, quantity: str) -> float:
+        """`intact_strength_mpa` or `mi` by the regression."""
+        return float(getattr(self.result.regression, quantity))
+
+
+@dataclass(frozen=True, slots=True)
 class InputFile:
     """A file that the project was read from: path relative to the project, bytes as read."""
 
@@ -98,6 +125,9 @@ class Project:
     ground: Sections
     ground_columns: tuple[str, ...]
     """Columns of `ground` that came from tables, in the order in which they are written."""
+    origins: tuple[ValueOrigin, ...]
+    tests: tuple[UnitTests, ...]
+    notation: Notation
     warnings: tuple[str, ...]
     files: tuple[InputFile, ...]
 

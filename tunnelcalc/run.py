@@ -10,6 +10,7 @@ from pathlib import Path
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import project_folder, read_project
 from tunnelcalc.outputs.manifest import write_manifest
+from tunnelcalc.outputs.provenance import write_provenance
 from tunnelcalc.outputs.run_folder import Target, copy_inputs, part_folder, sync_folder
 from tunnelcalc.outputs.tables import ChunkTables, write_sections
 from tunnelcalc.pipeline.chain import build_stages, kept_columns
@@ -101,6 +102,7 @@ def compute(
     finally:
         tables.abandon()
     write_sections(folder, project, sections, flag_names)
+    write_provenance(folder, project)
     quantities = item_totals(project, plan, sections, incidents)
     return write_reports(
         RunResult(

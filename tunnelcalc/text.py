@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import difflib
+import re
 from collections.abc import Iterable, Sequence
 
 from tunnelcalc.errors import Problems, Where
@@ -66,8 +67,45 @@ def as_number(text: str) -> float | None:
         return None
 
 
+DECIMAL = re.compile(
+    r"(?:[^\d.,]{0,12}\d+\+)?[+-]?(?:\d+[.,]\d*|[.,]\d+)(?:[eE][+-]?\d+)?", re.ASCII
+)
+"""A number with one decimal sign, of either kind; a chainage such as km 12+345,60 is one."""
+
+_DATE = re.compile(
+    r"\d{4}-\d\d-\d\d|\d{1,2}[./]\d{1,2}[./]\d{2,4}$"
+    r"|\d{1,2}[-. ]*(jan|feb|mar|apr|may|jun|jul|aug|sep|oct|nov|dec)",
+    re.ASCII | re.IGNORECASE,
+)
+_GROUPS = re.compile(
+    r"([+-]?\d{1,3}(?:([., '\u00a0\u2009\u202f\u2019])\d{3})+)(?:([.,])(\d+))?", re.ASCII
+)
+
+
+def without_groups(text: str) -> str | None:
+    """A number that is written with thousands separators, plainly; None where it is not one.
+
+    One group alone, as in 1,234 or 1.234, may as well be decimals: that is None.
+    """
+    found = _GROUPS.fullmatch(text.strip())
+    if found is None:
+        return None
+    whole, separator, sign, rest = found.groups()
+    groups = whole.split(separator)
+    if any(len(group) != 3 for group in groups[1:]) or sign == separator:
+        return None
+    if separator in ".," and sign is None and len(groups) == 2:
+        return None
+    return "".join(groups) + (f".{rest}" if rest else "")
+
+
 def number_fix(text: str) -> str:
     """What to write in place of a text that should be a number."""
+    if _DATE.match(text.strip()):
+        return "format the cell as a number and write it again: it was taken for a date"
+    plain = without_groups(text)
+    if plain is not None:
+        return f"write {plain}, without thousands separators"
     whole, comma, rest = text.strip().partition(",")
     if comma and as_number(f"{whole}.{rest}") is not None:
         if len(rest) == 3 and rest.isdigit():

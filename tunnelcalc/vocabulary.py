@@ -84,6 +84,7 @@ class Quantity:
 
 _POSITIVE = Limits(0, above=True)
 _NOT_NEGATIVE = Limits(0)
+_COUNT = Limits(0, 1e6, whole=True)
 
 
 def _of_ground() -> tuple[Quantity, ...]:
@@ -140,14 +141,21 @@ def _of_ground() -> tuple[Quantity, ...]:
             used=False,
         ),
         Quantity("rmr89", "RMR89", "", "rock mass rating, actual water", rating, used=False),
-        Quantity("rmr89_dry", "RMR89'", "", "rock mass rating, dry", rating, used=False),
+        Quantity("rmr89_dry", "RMR89'", "", "rock mass rating, dry", rating),
         Quantity("q", "Q", "", "rock mass quality Q", _POSITIVE, used=False),
-        Quantity("q_prime", "Q'", "", "Q without water and stress", _POSITIVE, used=False),
-        Quantity("jcond89", "JCond89", "", "joint condition rating", Limits(0, 30), used=False),
-        Quantity("rqd_pct", "RQD", "%", "rock quality designation", rating, used=False),
-        Quantity("block_volume_cm3", "Vb", "cm3", "block volume", _POSITIVE, used=False),
-        Quantity("joint_condition", "Jc", "", "joint condition factor", _POSITIVE, used=False),
-        Quantity("point_load_mpa", "Is50", "MPa", "point load index", _POSITIVE, used=False),
+        Quantity("q_prime", "Q'", "", "Q without water and stress", _POSITIVE),
+        Quantity("jcond89", "JCond89", "", "joint condition rating", Limits(0, 30)),
+        Quantity("rqd_pct", "RQD", "%", "rock quality designation", rating),
+        Quantity("block_volume_cm3", "Vb", "cm3", "block volume", _POSITIVE),
+        Quantity("joint_condition", "Jc", "", "joint condition factor", _POSITIVE),
+        Quantity("point_load_mpa", "Is50", "MPa", "point load index", _POSITIVE),
+        Quantity(
+            "point_load_factor",
+            "k",
+            "",
+            "intact strength over point load index",
+            Limits(0, 100, above=True),
+        ),
         Quantity("water_head_m", "hw", "m", "water head above the axis", _NOT_NEGATIVE),
         Quantity("inflow_l_min_10m", "", "L/min/10m", "water inflow", _NOT_NEGATIVE, used=False),
         Quantity(
@@ -190,6 +198,9 @@ def _of_results() -> tuple[Quantity, ...]:
         Quantity("chainage_m", "", "m", "middle of the section"),
         Quantity("from_m", "", "m", "start of the interval or section"),
         Quantity("to_m", "", "m", "end of the interval or section"),
+        Quantity("span_m", "B", "m", "width of the opening"),
+        Quantity("confinement_mpa", "s3max", "MPa", "upper confinement of the equivalent line"),
+        Quantity("tested_confinement_mpa", "", "MPa", "greatest minor stress of triaxial tests"),
         Quantity("radius_m", "R", "m", "radius of the opening", Limits(0.5, 30)),
         Quantity("in_situ_stress_mpa", "p0", "MPa", "mean in-plane in-situ stress"),
         Quantity("mb", "mb", "", "Hoek-Brown constant of the rock mass"),
@@ -227,6 +238,17 @@ QUANTITIES = GROUND | {quantity.name: quantity for quantity in _of_results()}
 """Every quantity by name."""
 
 WORDS = {
+    "chainage": "middle of the section, as the project writes chainages",
+    "from_chainage": "start, as the project writes chainages",
+    "to_chainage": "end, as the project writes chainages",
+    "profile": "name of the opening's profile",
+    "quantity": "a ground quantity",
+    "value": "in the unit of its row",
+    "origin": "table, unit, estimated, levels or assumed",
+    "method": "by which method or rule, empty for a value as written",
+    "tests": "number of tests",
+    "r_squared": "coefficient of determination of the regression",
+    "outliers": "specimens that stand apart, joined by a semicolon; none is left out",
     "ground_unit": "name of the ground unit",
     "ground_units": "ground units of a zone, joined by a semicolon",
     "support_class": "name of the class, or none_adequate",
@@ -247,16 +269,28 @@ WORDS = {
 }
 """Columns of the outputs that hold words, or numbers whose unit stands in the row."""
 
+TESTS_SUFFIX = "_tests"
+UNIT_SUFFIXES = ("_mean", TESTS_SUFFIX, "_probable", "_cautious")
+"""What a units table may say of a quantity besides the value and its deviation."""
+
 DEVIATION_SUFFIX = "_sd"
 """NAME_sd is the standard deviation of the ground column NAME."""
 
 
 def ground_quantity(name: str) -> Quantity | None:
-    """The quantity of a ground column, its standard deviation included; None if unknown."""
+    """The quantity of a ground column, what is said of it included; None if unknown."""
     if name in GROUND:
         return GROUND[name]
-    base = GROUND.get(name.removesuffix(DEVIATION_SUFFIX))
-    if base is None or base.sort is not Sort.NUMBER or not name.endswith(DEVIATION_SUFFIX):
-        return None
-    meaning = f"standard deviation of {base.name}"
-    return Quantity(name, "", base.unit, meaning, _NOT_NEGATIVE, used=False)
+    for suffix in (DEVIATION_SUFFIX, *UNIT_SUFFIXES):
+        base = GROUND.get(name.removesuffix(suffix)) if name.endswith(suffix) else None
+        if base is None or base.sort is not Sort.NUMBER:
+            continue
+        if suffix == DEVIATION_SUFFIX:
+            return Quantity(
+                name, "", base.unit, f"standard deviation of {base.name}", _NOT_NEGATIVE, used=False
+            )
+        if suffix == TESTS_SUFFIX:
+            return Quantity(name, "", "", f"number of tests of {base.name}", _COUNT)
+        word = suffix.removeprefix("_")
+        return Quantity(name, "", base.unit, f"{word} value of {base.name}", base.limits)
+    return None

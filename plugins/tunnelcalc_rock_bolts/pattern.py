@@ -102,7 +102,7 @@ def _length_by_block(sections: Sections, element: Element) -> api.Evaluation:
 
 
 def _length_by_span(sections: Sections, element: Element) -> api.Evaluation:
-    needed = least_length_by_span_m(2 * sections["radius_m"])
+    needed = least_length_by_span_m(sections["span_m"])
     there = _same(sections, element.number("length_m"))
     return api.Evaluation(needed, there, np.isnan(needed), BEYOND_SPANS)
 

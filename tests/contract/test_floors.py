@@ -29,7 +29,7 @@ FLOORS = (
     ("project", "results"),
     ("plugin", "pipeline", "outputs"),
     ("inputs", "api"),
-    ("run", "builtin", *PLUGINS),
+    ("run", "schema", "starter", "builtin", *PLUGINS),
     ("cli", "__main__"),
 )
 FLOOR_OF = {room: floor for floor, rooms in enumerate(FLOORS) for room in rooms}

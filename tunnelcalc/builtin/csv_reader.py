@@ -1,4 +1,8 @@
-"""Reads ground and units tables from CSV as RFC 4180 has it: commas, a header row, UTF-8."""
+"""Reads ground and units tables from text in the dialects of common spreadsheets.
+
+UTF-8 with or without its mark, or UTF-16 with it; commas, semicolons or tabs between cells;
+decimal commas where a comma does not separate cells.
+"""
 
 from __future__ import annotations
 
@@ -7,70 +11,78 @@ import io
 from collections.abc import Callable
 
 from tunnelcalc import api
+from tunnelcalc.builtin.decimal_sign import with_decimal_points
+from tunnelcalc.builtin.table_shape import MOST_ROWS, shaped, tell_too_many_rows
+from tunnelcalc.builtin.table_text import announced_separator, separator_of, text_of
+
+LARGEST_BYTES = 64 * 1024 * 1024
+"""Some 800 000 intervals. Cells take some ten times their text in memory."""
+
+_WORDS = {",": "commas", ";": "semicolons", "\t": "tabs"}
+_COMMA_FIX = "write decimal points, not commas, and put text with commas in quotes"
 
 
 class CsvReader:
-    """Comma-separated text."""
+    """Text, with cells separated by commas, semicolons or tabs."""
 
     name = "csv"
-    suffixes = (".csv",)
+    suffixes = (".csv", ".tsv", ".txt")
 
     def read(self, name: str, content: bytes) -> api.RawTable:
         problems = api.Problems()
-        text = api.decoded(name, content, problems)
+        place = api.Where(name)
+        _check_size(place, content, problems)
+        text = text_of(name, content, problems)
         problems.raise_if_any()
         assert text is not None
-        rows, lines = _rows(name, text, problems)
-        if not rows:
-            problems.add(
-                api.Where(name),
-                "holds no table",
-                allowed="a header row and one row an interval or unit",
-                fix="write the column names into the first row",
-            )
+        separator = separator_of(text)
+        rows, lines = _rows(name, text, separator, problems)
+        if announced_separator(text):
+            rows, lines = rows[1:], lines[1:]
+        fix = _COMMA_FIX if separator == "," else _other_fix(_WORDS[separator])
+        table = shaped(place, rows, lines, fix, problems)
+        if separator != ",":
+            table = with_decimal_points(table, problems)
             problems.raise_if_any()
-        header, header_line = tuple(cell.strip() for cell in rows[0]), lines[0]
-        if len(header) == 1 and (";" in header[0] or "\t" in header[0]):
-            problems.add(
-                api.Where(name, header_line),
-                "is not separated by commas",
-                allowed="commas between cells",
-                fix="save the table as CSV with commas and decimal points",
-            )
-            problems.raise_if_any()
-        width = len(header)
-        for row, line in zip(rows[1:], lines[1:], strict=True):
-            if len(row) != width:
-                problems.add(
-                    api.Where(name, line),
-                    f"has {len(row)} cell{'s' if len(row) > 1 else ''}, the header has {width}",
-                    allowed=f"{width} cells",
-                    fix="write decimal points, not commas, and put text with commas in quotes",
-                )
+        return table
+
+
+def _other_fix(words: str) -> str:
+    return f"put {words} between all cells, and text with {words} in quotes"
+
+
+def _check_size(place: api.Where, content: bytes, problems: api.Problems) -> None:
+    if len(content) > LARGEST_BYTES:
+        problems.add(
+            place,
+            f"has {len(content) / 1e6:.0f} MB",
+            allowed=f"at most {LARGEST_BYTES / 1e6:.0f} MB",
+            fix="join neighbouring intervals of the same ground, or divide the project",
+        )
         problems.raise_if_any()
-        columns = tuple(
-            [cell.strip() for cell in column] for column in zip(*rows[1:], strict=True)
-        ) or tuple([] for _ in header)
-        return api.RawTable(name, header, header_line, columns, lines[1:])
 
 
-def _rows(name: str, text: str, problems: api.Problems) -> tuple[list[list[str]], list[int]]:
+def _rows(
+    name: str, text: str, separator: str, problems: api.Problems
+) -> tuple[list[list[str]], list[int]]:
     """Rows that are not blank, and the line on which each begins."""
     rows: list[list[str]] = []
     lines: list[int] = []
-    reader = csv.reader(io.StringIO(text, newline=""), strict=True)
+    reader = csv.reader(io.StringIO(text, newline=""), delimiter=separator, strict=True)
     line = 1
     try:
         for row in reader:
             if any(cell.strip() for cell in row):
                 rows.append(row)
                 lines.append(line)
+                if len(rows) > MOST_ROWS:
+                    tell_too_many_rows(api.Where(name), problems)
             line = reader.line_num + 1
     except csv.Error as error:
         problems.add(
             api.Where(name, reader.line_num),
             f"is not CSV: {error}",
-            fix="close the quotes, and save the table as CSV with commas",
+            fix=f"close the quotes, and save the table as CSV with {_WORDS[separator]}",
         )
         problems.raise_if_any()
     return rows, lines

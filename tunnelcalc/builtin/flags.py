@@ -49,6 +49,14 @@ def _spalling(sections: Sections) -> Array:
     return stress / sections["intact_strength_mpa"] > SPALLING_RATIO
 
 
+SPREADS = ("gsi_spread", "intact_strength_mpa_spread", "mi_spread")
+
+
+def _sources_differ(sections: Sections) -> Array:
+    differ = [sections[name] > 0 for name in SPREADS]
+    return differ[0] | differ[1] | differ[2]
+
+
 FLAGS = (
     Flag(
         "shallow_cover",
@@ -158,6 +166,33 @@ FLAGS = (
         "check effective stress, seepage and the water pressure on a watertight lining separately",
         ("water_head_m",),
         lambda sections: sections["water_head_m"] > 0,
+    ),
+    Flag(
+        "equivalent_radius",
+        "the opening is not a circle: a circle of the stated rule stands for it",
+        "profile given by span, height and area",
+        PRACTICE,
+        "check the lining and the ground at flat parts of the profile separately",
+        ("equivalent_radius",),
+        _is_set("equivalent_radius"),
+    ),
+    Flag(
+        "estimates_differ",
+        "sources of quality or strength give different values; the preferred one was taken",
+        "two sources of gsi, intact_strength_mpa or mi differ",
+        "assumption of this program",
+        "find out why they differ: the spread stands in sections.csv",
+        (),
+        _sources_differ,
+    ),
+    Flag(
+        "tests_below_confinement",
+        "the triaxial tests did not reach the confinement that matters at this depth",
+        "greatest minor stress tested below confinement_mpa",
+        "Hoek, Carranza-Torres & Corkum (2002), relation for tunnels",
+        "test at higher confinement, or take mi with care",
+        ("confinement_mpa",),
+        lambda sections: sections["tested_confinement_mpa"] < sections["confinement_mpa"],
     ),
     Flag(
         "rule_not_applied",

@@ -33,6 +33,7 @@ class HoekBrown2002:
         "rock_mass_strength_mpa",
         "tensile_strength_mpa",
         "global_strength_mpa",
+        "confinement_mpa",
         "friction_angle_deg",
         "cohesion_mpa",
     )
@@ -53,6 +54,7 @@ class HoekBrown2002:
             "rock_mass_strength_mpa": hoek_brown.rock_mass_strength_mpa(sci, s, a),
             "tensile_strength_mpa": hoek_brown.tensile_strength_mpa(sci, mb, s),
             "global_strength_mpa": whole,
+            "confinement_mpa": confinement,
             "friction_angle_deg": line.friction_angle_deg,
             "cohesion_mpa": line.cohesion_mpa,
         }

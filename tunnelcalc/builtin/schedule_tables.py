@@ -5,6 +5,8 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from pathlib import Path
 
+import numpy as np
+
 from tunnelcalc import api
 
 SCHEDULE_HEADER = (
@@ -28,9 +30,14 @@ class ScheduleTables:
     name = "schedule_tables"
 
     def write(self, result: api.RunResult, folder: Path) -> Iterable[str]:
-        api.write_table(
-            folder / "schedule.csv", SCHEDULE_HEADER, [_row(zone) for zone in result.zones]
-        )
+        notation = result.project.notation
+        rows = [_row(zone) for zone in result.zones]
+        header: tuple[str, ...] = SCHEDULE_HEADER
+        if not notation.is_plain:
+            header = (*header[:2], "from_chainage", "to_chainage", *header[2:])
+            ends = [notation.written(np.array([z.from_m, z.to_m])) for z in result.zones]
+            rows = [(*r[:2], *end, *r[2:]) for r, end in zip(rows, ends, strict=True)]
+        api.write_table(folder / "schedule.csv", header, rows)
         api.write_table(
             folder / "quantities.csv",
             QUANTITIES_HEADER,

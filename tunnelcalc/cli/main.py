@@ -9,10 +9,15 @@ import sys
 import threading
 from collections.abc import Iterator, Sequence
 from contextlib import contextmanager
+from dataclasses import replace
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 import tunnelcalc
 from tunnelcalc.errors import ExitCode, FolderHeldError, InputError
+
+if TYPE_CHECKING:
+    from tunnelcalc.cli.problem_report import Report
 
 EPILOG = (
     "An aid to, and no substitute for, licensed engineering judgement; local codes govern. "
@@ -49,12 +54,36 @@ def build_parser() -> argparse.ArgumentParser:
 
     validate = commands.add_parser("validate", help="check a project and list every problem")
     validate.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+    for command in (run, validate):
+        _add_report_options(command)
+
+    new = commands.add_parser("new", help="write a commented starter project that runs as it is")
+    new.add_argument("folder", type=Path, metavar="DIR", help="folder; must be absent or empty")
+
+    schema = commands.add_parser(
+        "schema", help="print the JSON Schema of project.yaml, by which an editor can check it"
+    )
+    schema.add_argument(
+        "--out", type=Path, metavar="FILE", help="write it there; an earlier one is replaced"
+    )
 
     commands.add_parser("plugins", help="list what plugins offer, with parameters and ranges")
 
     stages = commands.add_parser("stages", help="explain the chain of stages of a project")
     stages.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
     return parser
+
+
+def _add_report_options(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "--format",
+        choices=("text", "json"),
+        default="text",
+        help="json: one document for other programs on standard output",
+    )
+    command.add_argument(
+        "--problems", type=Path, metavar="FILE", help="write every problem into this file too"
+    )
 
 
 def _positive(text: str) -> int:
@@ -71,12 +100,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
     options = build_parser().parse_args(arguments)
     try:
         with _terminated_as_interrupted():
-            return int(_command(options))
-    except InputError as error:
-        from tunnelcalc.cli.screen import print_problems
-
-        print_problems(error.problems, sys.stderr)
-        return ExitCode.INPUT
+            return int(_reported(options))
     except FolderHeldError as error:
         print(f"tunnelcalc: {error}", file=sys.stderr)
         return ExitCode.HELD
@@ -108,15 +132,40 @@ def _terminated_as_interrupted() -> Iterator[None]:
         signal.signal(signal.SIGTERM, before)
 
 
-def _command(options: argparse.Namespace) -> ExitCode:
+def _reported(options: argparse.Namespace) -> ExitCode:
+    """Do the command, and tell the problems of its input in the form that was asked for."""
+    from tunnelcalc.cli.problem_report import Report, problem_file
+
+    report = Report(options.command, getattr(options, "format", "text") == "json")
+    named: Path | None = getattr(options, "problems", None)
+    try:
+        if named is not None:
+            file = problem_file(named)
+            file.check()
+            report = replace(report, file=file)
+        return _command(options, report)
+    except InputError as error:
+        report.refused(error.problems)
+        return ExitCode.INPUT
+
+
+def _command(options: argparse.Namespace, report: Report) -> ExitCode:
     if options.command == "run":
         from tunnelcalc.cli.run_command import run
 
-        return run(options.project, options.out, options.strict, options.chunk)
+        return run(options.project, options.out, options.strict, options.chunk, report)
     if options.command == "validate":
         from tunnelcalc.cli.validate_command import validate
 
-        return validate(options.project)
+        return validate(options.project, report)
+    if options.command == "new":
+        from tunnelcalc.cli.new_command import new
+
+        return new(options.folder)
+    if options.command == "schema":
+        from tunnelcalc.cli.schema_command import schema
+
+        return schema(options.out)
     if options.command == "stages":
         from tunnelcalc.cli.stages_command import stages
 

@@ -4,12 +4,14 @@ from __future__ import annotations
 
 import sys
 from pathlib import Path
+from typing import Any
 
 import numpy as np
 from rich.console import Console
 from rich.progress import BarColumn, MofNCompleteColumn, Progress, TextColumn, TimeRemainingColumn
 from rich.table import Table
 
+from tunnelcalc.cli.problem_report import Report
 from tunnelcalc.cli.screen import console, metres, rounded, row, table
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.limits_statement import LIMITS
@@ -24,7 +26,9 @@ WIDE_SCREEN = 100
 """Columns from which the schedule has room for the ground units."""
 
 
-def run(project: Path, out: Path | None, strict: bool, chunk: int | None) -> ExitCode:
+def run(
+    project: Path, out: Path | None, strict: bool, chunk: int | None, report: Report
+) -> ExitCode:
     """Run a project; the summary goes to standard output, progress to standard error."""
     registry = load_plugins()
     bar = Progress(
@@ -46,8 +50,26 @@ def run(project: Path, out: Path | None, strict: bool, chunk: int | None) -> Exi
             chunk_sections=chunk or CHUNK_SECTIONS,
             progress=lambda done, total: bar.update(task, completed=done, total=total),
         )
-    show(finished, console())
+    report.ended(finished.exit_code, outcome(finished))
+    if not report.as_json:
+        show(finished, console())
     return finished.exit_code
+
+
+def outcome(finished: Finished) -> dict[str, Any]:
+    """What another program wants to know of a run; everything else stands in its folder."""
+    result = finished.result
+    return {
+        "folder": str(finished.folder),
+        "sections": result.sections.count,
+        "zones": len(result.zones),
+        "sections_without_adequate_class": int(result.without_adequate_class),
+        "not_evaluated": [
+            {"what": i.what, "reason": i.reason, "sections": int(i.sections)}
+            for i in result.incidents
+        ],
+        "notes": list(result.warnings),
+    }
 
 
 def show(finished: Finished, screen: Console) -> None:

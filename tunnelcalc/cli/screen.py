@@ -10,8 +10,6 @@ from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
-from tunnelcalc.errors import Problem
-
 PAGE_WIDTH = 118
 """Width of what is written to a file or a pipe."""
 
@@ -22,14 +20,6 @@ def console(stream: TextIO | None = None) -> Console:
     if not screen.is_terminal:
         screen.width = PAGE_WIDTH
     return screen
-
-
-def print_problems(problems: Sequence[Problem], stream: TextIO) -> None:
-    """Every problem, and how many there are."""
-    for problem in problems:
-        print(problem, file=stream)
-    count = len(problems)
-    print(f"{count} problem{'s' if count != 1 else ''} found", file=stream)
 
 
 def table(title: str, *columns: str, right: Sequence[str] = (), wide: Sequence[str] = ()) -> Table:

@@ -2,22 +2,25 @@
 
 from __future__ import annotations
 
-import sys
 from pathlib import Path
 
-from tunnelcalc.cli.screen import print_problems
-from tunnelcalc.errors import ExitCode, InputError
+from tunnelcalc.cli.problem_report import Report
+from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import read_project
 from tunnelcalc.plugin.registry import load_plugins
 
 
-def validate(path: Path) -> ExitCode:
-    """Print the problems of a project, or what it holds."""
-    try:
-        project = read_project(path, load_plugins())
-    except InputError as error:
-        print_problems(error.problems, sys.stdout)
-        return ExitCode.INPUT
+def validate(path: Path, report: Report) -> ExitCode:
+    """Say what a project holds. Raises `InputError` with its problems."""
+    project = read_project(path, load_plugins())
+    outcome = {
+        "sections": project.ground.count,
+        "support_classes": list(project.class_names),
+        "notes": list(project.warnings),
+    }
+    report.ended(ExitCode.COMPLETE, outcome)
+    if report.as_json:
+        return ExitCode.COMPLETE
     for warning in project.warnings:
         print(f"note: {warning}")
     print(

@@ -5,16 +5,17 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator, Sequence
 
 from tunnelcalc.errors import Where
+from tunnelcalc.inputs.aliases import read_aliases
 from tunnelcalc.inputs.files import ProjectFolder
-from tunnelcalc.inputs.typed_table import TypedTable, open_table, typed
+from tunnelcalc.inputs.headers import understood
+from tunnelcalc.inputs.typed_table import CHAINAGE, TypedTable, open_table, typed
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.text import quoted, shown, suggestion
-from tunnelcalc.vocabulary import QUANTITIES, Limits
+from tunnelcalc.vocabulary import GROUND, QUANTITIES, UNIT_SUFFIXES
 
-CHAINAGE = Limits(-1e7, 1e7)
 TABLE, UNITS = "table", "units"
 """Keys under which a project names its tables."""
 
@@ -52,6 +53,7 @@ def read_table(
 ) -> TypedTable | None:
     """The table that `key` names; None, with a problem unless it is optional, without one."""
     is_units = key == UNITS
+    aliases = read_aliases(reader)
     path = reader.text(key, "the path of a table", required=not is_units)
     if path is None:
         return None
@@ -59,10 +61,28 @@ def read_table(
     if raw is None:
         return None
     ends = () if is_units else ("from_m", "to_m")
+    own_units = dict.fromkeys(ends, "m") | {"ground_unit": ""}
+    raw = understood(raw, aliases, own_units, others, reader.problems)
     _check_frame(reader, raw, ends or ("ground_unit",))
     numbers = dict.fromkeys(ends, CHAINAGE)
     context = _of_unit(raw) if is_units else _of_interval(raw)
-    return typed(raw, reader.problems, numbers, ("ground_unit",), others, context)
+    table = typed(raw, reader.problems, numbers, ("ground_unit",), others, context, reader.notation)
+    if not is_units:
+        _only_of_units(table)
+    return table
+
+
+def _only_of_units(table: TypedTable) -> None:
+    """Statistics belong to a ground unit, not to an interval."""
+    for column, name in enumerate(table.raw.header):
+        statistic = name not in GROUND and name.endswith(UNIT_SUFFIXES)
+        if statistic and table.numbers.pop(name, None) is not None:
+            table.problems.add(
+                table.raw.head(column),
+                "belongs into the units table",
+                name=f'column "{name}"',
+                fix="move it there, or state the interval's own value",
+            )
 
 
 def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None:

@@ -4,18 +4,19 @@ from __future__ import annotations
 
 from pathlib import Path
 
-import numpy as np
-
 from tunnelcalc.errors import InputError, Problem, Problems, Where
 from tunnelcalc.inputs.files import PROJECT_FILE, ProjectFolder
-from tunnelcalc.inputs.ground import Ground, read_ground
+from tunnelcalc.inputs.ground import Ground, Opening, read_ground
+from tunnelcalc.inputs.level_tables import read_tunnel_level
+from tunnelcalc.inputs.notation import read_notation
+from tunnelcalc.inputs.opening import read_profiles
 from tunnelcalc.inputs.support_classes import read_support_classes
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.inputs.yaml_tree import Table, parse
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import DEFAULT_METHODS, Criteria, Project, ScheduleRules
 from tunnelcalc.text import decoded, quoted, suggestion
-from tunnelcalc.vocabulary import QUANTITIES, Limits
+from tunnelcalc.vocabulary import Limits
 
 
 def read_project(path: Path, registry: Registry) -> Project:
@@ -59,9 +60,13 @@ def project_folder(path: Path) -> Path:
 def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
     problems = reader.problems
     title = reader.text("title")
-    radius = _radius(reader)
+    reader.notation = read_notation(reader)
+    opening = _opening(reader, folder, registry)
     ground_reader = reader.table_of("ground")
-    ground = read_ground(ground_reader, folder, registry) if ground_reader else None
+    ground = None
+    if ground_reader is not None and opening is not None:
+        ground = read_ground(ground_reader, opening, folder, registry)
+    radius = min((p.radius_m for p in opening.profiles), default=None) if opening else None
     methods = _methods(reader, registry)
     plugins = _plugins(reader, registry)
     classes = read_support_classes(reader, registry, plugins, radius)
@@ -73,11 +78,9 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
     problems.found.sort(key=lambda problem: rank.get(problem.where.file, len(rank)))
     problems.raise_if_any()
     assert title is not None
-    assert radius is not None
     assert ground is not None
     assert criteria is not None
     assert schedule is not None
-    sections = ground.sections
     return Project(
         title=title,
         methods=methods,
@@ -86,21 +89,28 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
         schedule=schedule,
         plugins=plugins,
         gaps=ground.gaps,
-        ground=sections.with_columns({"radius_m": np.full(sections.count, radius)}),
+        ground=ground.sections,
         ground_columns=ground.columns,
+        origins=ground.origins,
+        tests=ground.tests,
+        notation=reader.notation,
         warnings=_warnings(ground, registry),
         files=tuple(sorted(folder.files.values(), key=lambda file: file.path)),
     )
 
 
-def _radius(reader: Reader) -> float | None:
+def _opening(reader: Reader, folder: ProjectFolder, registry: Registry) -> Opening | None:
+    """One profile, or a list of profiles, here or under `profiles`; the tunnel's level."""
+    if reader.is_list("opening"):
+        return Opening(read_profiles(reader, "opening"), None, False, reader)
     opening = reader.table_of("opening")
     if opening is None:
         return None
-    quantity = QUANTITIES["radius_m"]
-    radius = opening.number("radius_m", quantity.limits, quantity.unit)
+    has_axis = opening.has("axis")
+    level = read_tunnel_level(opening, folder, registry)
+    profiles = read_profiles(opening, "profiles")
     opening.finish()
-    return radius
+    return Opening(profiles, level, has_axis, opening)
 
 
 def _methods(reader: Reader, registry: Registry) -> dict[str, str]:

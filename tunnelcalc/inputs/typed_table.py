@@ -2,18 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.chainage import FORMS, ChainageError, Notation
 from tunnelcalc.errors import InputError, Problems, Where
 from tunnelcalc.inputs.files import ProjectFolder
+from tunnelcalc.inputs.table_path import path_and_sheet, suffix_of
+from tunnelcalc.plugin.contract import SheetReader
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.text import as_number, number_fix, quoted, suggestion
 from tunnelcalc.vocabulary import GROUND, Limits, Quantity, Sort, ground_quantity
+
+CHAINAGE = Limits(-1e7, 1e7)
 
 
 @dataclass(slots=True)
@@ -45,17 +50,20 @@ class TypedTable:
     def place(self, row: int, name: str | None = None) -> Where:
         """Where a row, or its cell of one column, stands."""
         if name is None or name not in self.raw.header:
-            return Where(self.raw.file, self.raw.lines[row])
+            return self.raw.row(row)
         return self.raw.place(row, self.raw.header.index(name))
 
 
 def open_table(
     folder: ProjectFolder, path: str, named_at: Where, key: str, registry: Registry
 ) -> RawTable | None:
-    """The text cells of a table, by the reader that knows its file ending."""
+    """The text cells of a table, by the reader that knows its file ending.
+
+    Of a file that holds several tables, the path may name one: `geology.xlsx#Intervals`.
+    """
     problems = folder.problems
-    suffix = "." + path.rpartition(".")[2].lower() if "." in path else ""
-    reader = registry.ground_reader(suffix)
+    path, sheet = path_and_sheet(path, registry)
+    reader = registry.ground_reader(suffix_of(path))
     if reader is None:
         known = sorted({s for o in registry.of_sort("ground_reader") for s in o.thing.suffixes})
         problems.add(
@@ -70,6 +78,8 @@ def open_table(
     if file is None:
         return None
     try:
+        if sheet is not None and isinstance(reader, SheetReader):
+            return reader.read_sheet(file.path, file.content, sheet)
         return reader.read(file.path, file.content)
     except InputError as error:
         problems.found.extend(error.problems)
@@ -89,12 +99,14 @@ def typed(
     texts: Sequence[str],
     carried: Iterable[str],
     context: Callable[[int], str],
+    notation: Notation,
 ) -> TypedTable:
-    """Read every cell.
+    """Read every cell of a ground or units table.
 
     Parameters
     ----------
-    numbers, texts : columns that this table has besides the ground quantities.
+    numbers, texts : columns that this table has besides the ground quantities; the numbers are
+        chainages, written in `notation`.
     carried : columns that the project asks to be carried along as they are.
     context : words that help to find a row.
     """
@@ -112,7 +124,7 @@ def typed(
         if name in texts or (name in kept and quantity is None and name not in numbers):
             table.texts[name] = _texts(table, column, context)
         elif name in numbers:
-            table.numbers[name] = _numbers(table, column, numbers[name], "m", context)
+            table.numbers[name] = _chainages(table, column, notation, context)
         elif quantity is None:
             hint = suggestion(name, known)
             fix = (
@@ -128,6 +140,82 @@ def typed(
         else:
             table.numbers[name] = _numbers(table, column, quantity.limits, quantity.unit, context)
     return table
+
+
+def typed_columns(
+    raw: RawTable,
+    problems: Problems,
+    numbers: Mapping[str, Limits],
+    unit: str,
+    texts: Sequence[str],
+    *,
+    required: Sequence[str],
+    chainages: Sequence[str] = (),
+    notation: Notation | None = None,
+) -> TypedTable:
+    """Read every cell of a table that has these columns and no others.
+
+    `numbers` are in `unit`; `chainages` are written in `notation`.
+    """
+    table = TypedTable(raw, problems)
+    known = (*chainages, *numbers, *texts)
+    for column, name in enumerate(raw.header):
+        if table.has(name):
+            _about_header(table, column, "stands twice", "keep one of the two")
+        elif name in texts:
+            table.texts[name] = _texts(table, column, _nowhere)
+        elif name in chainages:
+            table.numbers[name] = _chainages(table, column, notation or Notation(), _nowhere)
+        elif name in numbers:
+            table.numbers[name] = _numbers(table, column, numbers[name], unit, _nowhere)
+        else:
+            hint = suggestion(name, known)
+            fix = f'did you mean "{hint}"?' if hint else "remove it"
+            _about_header(table, column, "is unknown", fix)
+    for name in required:
+        if not table.has(name):
+            problems.add(
+                raw.head(),
+                "is missing",
+                name=f'column "{name}"',
+                allowed="the columns " + ", ".join(known),
+                fix="add it",
+            )
+    if not table.rows:
+        problems.add(raw.whole(), "has a header and no rows", fix="write one row for each")
+    return table
+
+
+def _nowhere(row: int) -> str:
+    return ""
+
+
+def _chainages(
+    table: TypedTable, column: int, notation: Notation, context: Callable[[int], str]
+) -> Array:
+    """Axis metres; plain numbers in bulk, anything else one by one."""
+    cells = table.raw.columns[column]
+    if notation.is_plain and not any("+" in cell for cell in cells):
+        return _numbers(table, column, CHAINAGE, "m", context)
+    values = np.full(len(cells), np.nan)
+    wrong = np.zeros(len(cells), dtype=bool)
+    for row, cell in enumerate(cells):
+        if cell == "":
+            continue
+        try:
+            values[row] = notation.axis_m(cell)
+        except ChainageError as error:
+            wrong[row] = True
+            table.problems.add(
+                table.raw.place(row, column),
+                f"holds {quoted(table.raw.written(row, column))}, which {error}",
+                name=f"column {quoted(table.raw.header[column])}",
+                allowed=FORMS,
+                context=context(row),
+                fix="write a chainage of this alignment",
+            )
+    table.wrong[table.raw.header[column]] = wrong
+    return values
 
 
 def _about_header(table: TypedTable, column: int, message: str, fix: str) -> None:

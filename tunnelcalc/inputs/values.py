@@ -6,6 +6,7 @@ from collections.abc import Iterable, Iterator, Sequence
 
 import numpy as np
 
+from tunnelcalc.chainage import FORMS, ChainageError, Notation
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs.yaml_tree import Listing, Scalar, Table, Tree
 from tunnelcalc.text import as_number, number_fix, quoted, suggestion
@@ -15,10 +16,13 @@ from tunnelcalc.vocabulary import Limits
 class Reader:
     """Reads the keys of one mapping. `finish` then tells the keys that nobody asked for."""
 
-    def __init__(self, table: Table, problems: Problems, path: str = "") -> None:
+    def __init__(
+        self, table: Table, problems: Problems, path: str = "", notation: Notation | None = None
+    ) -> None:
         self.table = table
         self.problems = problems
         self.path = path
+        self.notation = notation or Notation()
         self.known: dict[str, None] = {}
 
     @property
@@ -32,6 +36,10 @@ class Reader:
 
     def has(self, key: str) -> bool:
         return key in self.table.entries
+
+    def is_list(self, key: str) -> bool:
+        entry = self.table.entries.get(key)
+        return entry is not None and isinstance(entry[1], Listing)
 
     def label(self, key: str) -> str:
         return f"key {quoted(self.path + key)}"
@@ -88,6 +96,22 @@ class Reader:
             return None
         return value
 
+    def chainage(self, key: str, required: bool = True) -> float | None:
+        """A chainage as it is written, in metres along the axis."""
+        text = self.text(key, FORMS, required)
+        if text is None:
+            return None
+        try:
+            return self.notation.axis_m(text)
+        except ChainageError as error:
+            self.complain(
+                key,
+                f"holds {quoted(text)}, which {error}",
+                allowed=FORMS,
+                fix="write a chainage of this alignment",
+            )
+            return None
+
     def choice(self, key: str, choices: Sequence[str], required: bool = True) -> str | None:
         """One of several words."""
         allowed = " or ".join(choices)
@@ -116,7 +140,7 @@ class Reader:
                 fix="write its keys on the lines below, indented",
             )
             return None
-        return Reader(value, self.problems, f"{self.path}{key}.")
+        return Reader(value, self.problems, f"{self.path}{key}.", self.notation)
 
     def tables_of(
         self, key: str, required: bool = True, may_be_empty: bool = True
@@ -129,7 +153,7 @@ class Reader:
         for number, item in enumerate(items, 1):
             path = f"{self.path}{key}[{number}]"
             if isinstance(item, Table):
-                yield Reader(item, self.problems, f"{path}.")
+                yield Reader(item, self.problems, f"{path}.", self.notation)
             else:
                 self.problems.add(
                     item.where,

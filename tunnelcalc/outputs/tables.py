@@ -66,6 +66,10 @@ CHECK_HEADER = (
 OUTCOME_WORDS = tuple(outcome.name.lower() for outcome in Outcome)
 """By the number of the outcome: pass, fail, not_evaluated."""
 
+CHAINAGE = "chainage_m"
+WRITTEN_CHAINAGE = "chainage"
+WRITTEN_ENDS = {"chainage": "chainage_m", "from_chainage": "from_m", "to_chainage": "to_m"}
+"""Columns with chainages as the project writes them, and the metres that they stand beside."""
 ROWS_AT_ONCE = 20_000
 
 
@@ -75,12 +79,13 @@ class ChunkTables:
     def __init__(self, folder: Path, project: Project, checks: Sequence[CheckLine]) -> None:
         self.project = project
         self.checks = checks
-        self._classes = _opened(folder / "classes.csv", CLASS_HEADER)
-        self._checks = _opened(folder / "checks.csv", CHECK_HEADER)
+        written = () if project.notation.is_plain else (WRITTEN_CHAINAGE,)
+        self._classes = _opened(folder / "classes.csv", (CHAINAGE, *written, *CLASS_HEADER[1:]))
+        self._checks = _opened(folder / "checks.csv", (CHAINAGE, *written, *CHECK_HEADER[1:]))
 
     def write(self, chunk: Sections) -> None:
         """Append the rows of a chunk: by section, then class, then element and check."""
-        chainage = number_texts(chunk["chainage_m"])
+        chainage = _places(chunk, self.project)
         by_class = [
             self._class_lines(chunk, chainage, number)
             for number in range(len(self.project.support_classes))
@@ -147,19 +152,40 @@ def write_sections(
     folder: Path, project: Project, sections: Sections, flag_names: Sequence[str]
 ) -> None:
     """Write `sections.csv`."""
-    names = [*("chainage_m", "from_m", "to_m"), *project.ground_columns, *SECTION_COLUMNS]
-    header = (*names, "required_class", "scheduled_class", "flags")
+    ends = (CHAINAGE, "from_m", "to_m")
+    names = [*ends, *_profile_columns(sections), *project.ground_columns, *SECTION_COLUMNS]
+    written = {} if project.notation.is_plain else WRITTEN_ENDS
+    header = (*names[:3], *written, *names[3:], "required_class", "scheduled_class", "flags")
     stream = _opened(folder / "sections.csv", [text_cell(name) for name in header])
     class_cells = [text_cell(name) for name in (*project.class_names, NONE_ADEQUATE_NAME)]
     for start in range(0, sections.count, ROWS_AT_ONCE):
         part = sections.take(slice(start, start + ROWS_AT_ONCE))
         columns = [_cells(part[name]) for name in names]
+        columns[3:3] = [
+            [text_cell(text) for text in project.notation.written(part[name])]
+            for name in written.values()
+        ]
         for name in ("required_class", "scheduled_class"):
             # NONE_ADEQUATE is -1: the last of the cells.
             columns.append([class_cells[number] for number in part[name].tolist()])
         columns.append(flag_texts(part["flag_raised"], flag_names))
         stream.writelines(",".join(row) + "\n" for row in zip(*columns, strict=True))
     _finish(stream)
+
+
+def _profile_columns(sections: Sections) -> tuple[str, ...]:
+    """Profiles are written where they have names."""
+    named = np.any(sections["profile"] != "") or np.any(sections["equivalent_radius"])
+    return ("profile", "span_m") if named else ()
+
+
+def _places(chunk: Sections, project: Project) -> list[str]:
+    """Metres along the axis, and beside them the chainage as the project writes it."""
+    metres = number_texts(chunk[CHAINAGE])
+    if project.notation.is_plain:
+        return metres
+    written = project.notation.written(chunk[CHAINAGE])
+    return [f"{m},{text_cell(text)}" for m, text in zip(metres, written, strict=True)]
 
 
 def flag_texts(raised: Array, flag_names: Sequence[str]) -> list[str]:

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from pathlib import Path
-from typing import Protocol
+from typing import Protocol, runtime_checkable
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
@@ -234,6 +234,14 @@ class GroundReader(Protocol):
 
     def read(self, name: str, content: bytes) -> RawTable:
         """Raises `InputError` where the content is not of this format."""
+
+
+@runtime_checkable
+class SheetReader(GroundReader, Protocol):
+    """Reads a format whose files hold several tables: a project names one as FILE#SHEET."""
+
+    def read_sheet(self, name: str, content: bytes, sheet: str) -> RawTable:
+        """The table of that name. Raises `InputError` where there is none."""
 
 
 class ReportWriter(Protocol):

@@ -36,15 +36,27 @@ def test_a_number_too_large_for_a_double_is_infinite():
         pytest.param("4,5", "write 4.5, with a decimal point", id="decimal-comma"),
         pytest.param("-0,25", "write -0.25, with a decimal point", id="negative"),
         pytest.param("1,250", "write 1250 or 1.250, whichever is meant", id="either"),
-        pytest.param(
-            "1.250,5",
-            "write a plain number with a decimal point, without unit or thousands separator",
-            id="both",
+        pytest.param("1.250,5", "write 1250.5, without thousands separators", id="both"),
+        pytest.param("1,250.5", "write 1250.5, without thousands separators", id="both-ways"),
+        pytest.param("1,250,000", "write 1250000, without thousands separators", id="millions"),
+        pytest.param("1 250,5", "write 1250.5, without thousands separators", id="space"),
+        pytest.param("1\u202f250", "write 1250, without thousands separators", id="thin-space"),
+        pytest.param("1'250.5", "write 1250.5, without thousands separators", id="apostrophe"),
+        *(
+            pytest.param(
+                text,
+                "format the cell as a number and write it again: it was taken for a date",
+                id=text,
+            )
+            for text in ("2024-05-03", "3.5.24", "03/05/2024", "3-May", "3. Jan")
         ),
-        pytest.param(
-            "1,250,000",
-            "write a plain number with a decimal point, without unit or thousands separator",
-            id="millions",
+        *(
+            pytest.param(
+                text,
+                "write a plain number with a decimal point, without unit or thousands separator",
+                id=text,
+            )
+            for text in ("12 MPa", "1.250.5", "1,25,000.5", "1 250 00", "a")
         ),
     ],
 )

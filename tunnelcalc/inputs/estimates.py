@@ -1,0 +1,217 @@
+"""Quality and strength from observations and tests, where they were not stated directly.
+
+A quantity may be known from several sources. Where more than one is there for an interval, the
+project states the order of preference, or is refused; how far the sources lie apart is kept.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.inputs.intervals import Intervals
+from tunnelcalc.inputs.merging import Merged, Origin
+from tunnelcalc.inputs.values import Reader
+from tunnelcalc.project import UnitTests
+from tunnelcalc.rock_mass import observations
+from tunnelcalc.rock_mass.observations import RMR89_DRY_RANGE
+from tunnelcalc.vocabulary import GROUND
+
+MEASURED = "measured"
+"""The quantity itself, as a table states it."""
+LABORATORY = "laboratory"
+
+
+@dataclass(frozen=True, slots=True)
+class Estimator:
+    """A published relation from observations to a quantity."""
+
+    name: str
+    quantity: str
+    needs: tuple[str, ...]
+    source: str
+    allowed: str
+    estimate: Callable[..., Array]
+
+
+ESTIMATORS = (
+    Estimator(
+        "jcond89_rqd",
+        "gsi",
+        ("jcond89", "rqd_pct"),
+        "Hoek, Carter & Diederichs (2013), ARMA 13-672",
+        "jcond89 0 to 30, rqd_pct 0 to 100",
+        observations.gsi_from_jcond89_and_rqd,
+    ),
+    Estimator(
+        "rmr89_dry",
+        "gsi",
+        ("rmr89_dry",),
+        "Hoek, Kaiser & Bawden (1995)",
+        f"rmr89_dry {RMR89_DRY_RANGE.minimum:g} to {RMR89_DRY_RANGE.maximum:g}",
+        observations.gsi_from_rmr89_dry,
+    ),
+    Estimator(
+        "q_prime",
+        "gsi",
+        ("q_prime",),
+        "Hoek, Kaiser & Bawden (1995)",
+        "q_prime such that 9 ln(q_prime) + 44 lies between 0 and 100",
+        observations.gsi_from_q_prime,
+    ),
+    Estimator(
+        "block_volume",
+        "gsi",
+        ("block_volume_cm3", "joint_condition"),
+        "Cai & Kaiser (2006), Geotech. Geol. Eng. 24, 1089-1102",
+        "block volume and joint condition that give an index between 0 and 100",
+        observations.gsi_from_block_volume,
+    ),
+    Estimator(
+        "point_load",
+        "intact_strength_mpa",
+        ("point_load_mpa", "point_load_factor"),
+        "factor of the project times point load index",
+        "a product within the range of intact_strength_mpa",
+        observations.intact_strength_from_point_load_mpa,
+    ),
+)
+ESTIMATED = ("gsi", "intact_strength_mpa", "mi")
+FROM_TESTS = ("intact_strength_mpa", "mi")
+
+
+def source_names(quantity: str) -> tuple[str, ...]:
+    """What a project may name as sources of a quantity."""
+    relations = tuple(e.name for e in ESTIMATORS if e.quantity == quantity)
+    tests = (LABORATORY,) if quantity in FROM_TESTS else ()
+    return (MEASURED, *relations, *tests)
+
+
+def read_preferences(reader: Reader) -> dict[str, tuple[str, ...]]:
+    """The order of preference of each quantity's sources, empty where none is stated."""
+    table = reader.table_of("estimates", required=False)
+    preferences: dict[str, tuple[str, ...]] = dict.fromkeys(ESTIMATED, ())
+    if table is None:
+        return preferences
+    for quantity in ESTIMATED:
+        allowed = source_names(quantity)
+        names = []
+        for where, name in table.texts_of(quantity):
+            if name in allowed and name not in names:
+                names.append(name)
+                continue
+            table.problems.add(
+                where,
+                f'holds "{name}"' + (", which stands already" if name in names else ""),
+                name=table.label(quantity),
+                allowed=", ".join(allowed),
+                fix="name each source once, the preferred one first",
+            )
+        preferences[quantity] = tuple(names)
+    table.finish()
+    return preferences
+
+
+def estimate(
+    found: Merged,
+    intervals: Intervals,
+    tests: Mapping[str, UnitTests],
+    preferences: Mapping[str, Sequence[str]],
+) -> None:
+    """Fill in estimated values, their origin, and the spread between sources."""
+    for quantity in ESTIMATED:
+        sources = _sources(found, intervals, tests, quantity)
+        _choose(found, intervals, quantity, sources, preferences[quantity])
+
+
+def _sources(
+    found: Merged, intervals: Intervals, tests: Mapping[str, UnitTests], quantity: str
+) -> dict[str, tuple[Array, str]]:
+    """Values (i,) by source, NaN where it has none, and what the source is called."""
+    sources: dict[str, tuple[Array, str]] = {}
+    if quantity in found.numbers:
+        sources[MEASURED] = (found.numbers[quantity].copy(), "")
+    for estimator in ESTIMATORS:
+        wanted = estimator.quantity == quantity
+        if wanted and all(name in found.numbers for name in estimator.needs):
+            needed = [found.numbers[name] for name in estimator.needs]
+            values = estimator.estimate(*needed)
+            _tell_out_of_range(intervals, estimator, needed, values)
+            sources[estimator.name] = (values, f"{estimator.name}: {estimator.source}")
+    if quantity in FROM_TESTS and tests:
+        units = found.texts["ground_unit"].tolist()
+        values = np.array([tests[u].value(quantity) if u in tests else np.nan for u in units])
+        sources[LABORATORY] = (values, "laboratory: regression of Hoek & Brown (1980)")
+    return sources
+
+
+def _tell_out_of_range(
+    intervals: Intervals, estimator: Estimator, needed: Sequence[Array], values: Array
+) -> None:
+    given = np.all(~np.isnan(np.array(needed)), axis=0)
+    for row in np.flatnonzero(given & np.isnan(values)).tolist():
+        observed = ", ".join(
+            f"{name} {column[row]:g}" for name, column in zip(estimator.needs, needed, strict=True)
+        )
+        intervals.problems.add(
+            intervals.table.place(row, estimator.needs[0]),
+            f"gives no {estimator.quantity}: {observed} is outside the range of its relation",
+            name=f'column "{estimator.needs[0]}"',
+            allowed=f"{estimator.allowed} ({estimator.source})",
+            context=intervals.context(row),
+            fix=f"correct the observation, or state {estimator.quantity} itself",
+        )
+
+
+def _choose(
+    found: Merged,
+    intervals: Intervals,
+    quantity: str,
+    sources: Mapping[str, tuple[Array, str]],
+    preference: Sequence[str],
+) -> None:
+    there = {name: ~np.isnan(values) for name, (values, _) in sources.items()}
+    count = np.sum(list(there.values()), axis=0) if there else np.zeros(found.count)
+    if not preference:
+        _tell_undecided(intervals, quantity, there, count)
+    if quantity not in found.numbers:
+        found.add(quantity)
+    open_rows = np.ones(found.count, dtype=bool)
+    for name in preference or sources:
+        if name not in sources:
+            continue
+        values, method = sources[name]
+        chosen = open_rows & there[name]
+        if name != MEASURED:
+            found.put(quantity, chosen, values, Origin.ESTIMATED, method)
+        open_rows &= ~chosen
+    # A stated value that the preference does not name is not used.
+    found.put(quantity, open_rows, np.full(found.count, np.nan), Origin.NOWHERE)
+    if np.any(count > 1):
+        stacked = np.array([values for values, _ in sources.values()])
+        lowest = np.min(np.where(np.isnan(stacked), np.inf, stacked), axis=0)
+        highest = np.max(np.where(np.isnan(stacked), -np.inf, stacked), axis=0)
+        spread = np.subtract(highest, lowest, out=np.full(found.count, np.nan), where=count > 1)
+        found.add(f"{quantity}_spread", spread)
+
+
+def _tell_undecided(
+    intervals: Intervals, quantity: str, there: Mapping[str, Array], count: Array
+) -> None:
+    rows = np.flatnonzero(count > 1)
+    if not rows.size:
+        return
+    row = int(rows[0])
+    names = [name for name, mask in there.items() if mask[row]]
+    more = f" and {rows.size - 1} more intervals" if rows.size > 1 else ""
+    intervals.problems.add(
+        intervals.table.place(row),
+        f"has {quantity} from {' and '.join(names)}, and the project does not say which to take",
+        name=f'column "{quantity}"',
+        allowed=GROUND[quantity].allowed(),
+        context=intervals.context(row) + more,
+        fix=f"state the order of preference under ground: estimates: {quantity}",
+    )

@@ -1,0 +1,83 @@
+"""project.yaml as a whole."""
+
+from __future__ import annotations
+
+import json
+
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import DEFAULT_METHODS
+from tunnelcalc.schema.alignment import chainage_notation, opening
+from tunnelcalc.schema.ground import ground
+from tunnelcalc.schema.parts import Schema, choice, listing, number, table, text
+from tunnelcalc.schema.support import support_classes
+from tunnelcalc.vocabulary import Limits
+
+DIALECT = "https://json-schema.org/draft/2020-12/schema"
+SCHEMA_ID = "urn:tunnelcalc:project"
+REQUIRED = ("title", "opening", "ground", "support_classes", "criteria", "schedule")
+METHOD_MEANINGS = {
+    "strength": "strength of the rock mass",
+    "deformation_modulus": "deformation modulus of the rock mass",
+    "ground_reaction": "law of the ground around the opening",
+    "closure_profile": "closure along the drive, near the face",
+}
+
+
+def project_schema(registry: Registry) -> Schema:
+    """The schema, for the plugins that are installed."""
+    keys = {
+        "title": text("title of the project"),
+        "opening": opening(),
+        "chainage": chainage_notation(),
+        "ground": ground(),
+        "methods": _methods(registry),
+        "plugins": _plugins(registry),
+        "support_classes": support_classes(registry),
+        "criteria": _criteria(),
+        "schedule": _schedule(),
+    }
+    head = {"$schema": DIALECT, "$id": SCHEMA_ID, "title": "project.yaml of tunnelcalc"}
+    return {**head, **table("a project of tunnelcalc", keys, REQUIRED)}
+
+
+def schema_text(registry: Registry) -> str:
+    """The schema as the text of a file."""
+    return json.dumps(project_schema(registry), indent=2) + "\n"
+
+
+def _methods(registry: Registry) -> Schema:
+    keys = {}
+    for step, default in DEFAULT_METHODS.items():
+        meaning = METHOD_MEANINGS.get(step, step)
+        keys[step] = choice(f"{meaning}; without it {default}", registry.names(step))
+    return table("methods by name", keys)
+
+
+def _plugins(registry: Registry) -> Schema:
+    names = sorted(source.plugin for source in registry.sources)
+    meaning = "further installed plugins whose checks, flags and reports take part"
+    return listing(meaning, choice("an installed plugin", names))
+
+
+def _criteria() -> Schema:
+    keys = {
+        "factor_of_safety": number("least factor of safety of any load check", Limits(1, 10)),
+        "closure_pct": number(
+            "largest supported closure, per cent of the radius", Limits(0, 100, above=True), "%"
+        ),
+    }
+    return table("what makes a class adequate", keys, list(keys))
+
+
+def _schedule() -> Schema:
+    length = Limits(0, 1e5)
+    keys = {
+        "minimum_zone_m": number("shortest zone; 0 switches the rule off", length, "m"),
+        "carry_m": number(
+            "length by which a heavier class is carried into lighter ground, both sides; 0 "
+            "switches the rule off",
+            length,
+            "m",
+        ),
+    }
+    return table("how sections become zones", keys, list(keys))
