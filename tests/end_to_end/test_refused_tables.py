@@ -179,6 +179,28 @@ CASES: dict[str, Case] = {
         'units.csv:1:1: column "unit" is unknown',
         "  fix: remove it, or list it under ground: other_columns to carry it along",
     ),
+    "carried-column-that-no-table-has": (
+        replaced(
+            "project.yaml",
+            "  units: units.csv\n",
+            "  units: units.csv\n  other_columns: [borehole]\n",
+        ),
+        'project.yaml:8:3: key "ground.other_columns" names "borehole", a column that no table has',
+        "  allowed: from_m, to_m, ground_unit, cover_m, block_width_m, unit_weight_kn_m3, "
+        "stress_ratio, intact_strength_mpa, mi, gsi, disturbance, poisson_ratio, dilation_deg, "
+        "modulus_ratio",
+        "  fix: remove the entry",
+    ),
+    "unit-with-a-semicolon": (
+        replaced("units.csv", "\nsiltstone", "\nsilt;stone"),
+        'ground.csv:3:3: column "ground_unit" holds "siltstone", which units.csv does not name',
+        "  allowed: gouge, sandstone, silt;stone",
+        '  fix: did you mean "silt;stone"?',
+        'units.csv:3:1: column "ground_unit" holds "silt;stone", with a semicolon',
+        '  ground unit "silt;stone"; allowed: text without a semicolon, which joins units in the '
+        "schedule",
+        "  fix: give the unit a name without it",
+    ),
     "column-of-the-programs-own": (
         replaced(
             "project.yaml",

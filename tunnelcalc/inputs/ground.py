@@ -11,7 +11,14 @@ from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs import alignment
 from tunnelcalc.inputs.files import ProjectFolder
-from tunnelcalc.inputs.ground_tables import CHAINAGE, TABLE, UNITS, other_columns, read_table
+from tunnelcalc.inputs.ground_tables import (
+    CHAINAGE,
+    TABLE,
+    UNITS,
+    check_carried,
+    other_columns,
+    read_table,
+)
 from tunnelcalc.inputs.typed_table import TypedTable
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.registry import Registry
@@ -47,6 +54,7 @@ def read_ground(reader: Reader, folder: ProjectFolder, registry: Registry) -> Gr
     others = list(other_columns(reader, registry))
     table = read_table(reader, folder, registry, TABLE, others)
     units = read_table(reader, folder, registry, UNITS, others)
+    check_carried(reader, others, (table, units))
     reader.finish()
     if table is None or (units is None and reader.has(UNITS)):
         return None

@@ -15,6 +15,10 @@ from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.text import as_number, number_fix, quoted, suggestion
 from tunnelcalc.vocabulary import GROUND, Limits, Quantity, Sort, ground_quantity
 
+GROUND_UNIT = "ground_unit"
+JOINT = ";"
+"""Joins names in a cell of an output table."""
+
 
 @dataclass(slots=True)
 class TypedTable:
@@ -170,7 +174,17 @@ def _float(cell: str) -> float:
 
 def _texts(table: TypedTable, column: int, context: Callable[[int], str]) -> Array:
     cells = np.array(table.raw.columns[column], dtype=object)
+    of_unit = table.raw.header[column] == GROUND_UNIT
     for row, text in enumerate(cells.tolist()):
+        if of_unit and JOINT in text:
+            table.problems.add(
+                table.raw.place(row, column),
+                f"holds {quoted(text)}, with a semicolon",
+                name=f'column "{GROUND_UNIT}"',
+                allowed="text without a semicolon, which joins units in the schedule",
+                context=context(row),
+                fix="give the unit a name without it",
+            )
         if not text.isprintable():
             table.problems.add(
                 table.raw.place(row, column),
