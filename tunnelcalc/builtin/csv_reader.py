@@ -47,11 +47,13 @@ class CsvReader:
                     allowed=f"{width} cells",
                     fix="write decimal points, not commas, and put text with commas in quotes",
                 )
-        problems.raise_if_any()
+        whole = [number for number, row in enumerate(rows) if len(row) == width and number]
         columns = tuple(
-            [cell.strip() for cell in column] for column in zip(*rows[1:], strict=True)
+            [cell.strip() for cell in column]
+            for column in zip(*(rows[number] for number in whole), strict=True)
         ) or tuple([] for _ in header)
-        return api.RawTable(name, header, header_line, columns, lines[1:])
+        kept = [lines[number] for number in whole]
+        return api.RawTable(name, header, header_line, columns, kept, tuple(problems))
 
 
 def _rows(name: str, text: str, problems: api.Problems) -> tuple[list[list[str]], list[int]]:

@@ -190,7 +190,7 @@ class _Assembly:
 
     def _check_intervals(self, from_m: Array, to_m: Array) -> None:
         pieces = alignment.gap_pieces(self.gaps)
-        complete = True
+        complete = not self.table.raw.problems
         for row, (start, end) in enumerate(zip(from_m.tolist(), to_m.tolist(), strict=True)):
             for name, value in (("from_m", start), ("to_m", end)):
                 if np.isnan(value) and not self.table.wrong_in(name)[row]:

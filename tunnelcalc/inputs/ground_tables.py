@@ -94,7 +94,7 @@ def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None
                 allowed="the columns " + ", ".join(required),
                 fix=f"add it; the column {quoted(hint)} may be meant" if hint else "add it",
             )
-    if not raw.lines:
+    if not raw.lines and not raw.problems:
         reader.problems.add(
             Where(raw.file), "has a header and no rows", fix="write one row an interval or unit"
         )

@@ -74,7 +74,9 @@ def open_table(
     if file is None:
         return None
     try:
-        return reader.read(file.path, file.content)
+        raw = reader.read(file.path, file.content)
+        problems.found.extend(raw.problems)
+        return raw
     except InputError as error:
         problems.found.extend(error.problems)
     except Exception as error:  # a stranger's reader may raise anything

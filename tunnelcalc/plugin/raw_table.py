@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from tunnelcalc.errors import Where
+from tunnelcalc.errors import Problem, Where
 
 
 @dataclass(frozen=True, slots=True)
@@ -21,6 +21,8 @@ class RawTable:
     header_line: int
     columns: tuple[Sequence[str], ...]
     lines: Sequence[int]
+    problems: tuple[Problem, ...] = ()
+    """What is wrong with rows that were left out; the others are read on."""
 
     def place(self, row: int, column: int) -> Where:
         """Where a cell stands; columns are counted from 1, as a spreadsheet does."""
