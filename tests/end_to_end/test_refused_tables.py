@@ -179,6 +179,43 @@ CASES: dict[str, Case] = {
         'units.csv:1:1: column "unit" is unknown',
         "  fix: remove it, or list it under ground: other_columns to carry it along",
     ),
+    "row-with-a-cell-too-many-beside-other-faults": (
+        all_of(
+            replaced("ground.csv", "0,45,sandstone,60,1.1", "0,45,sandstone,60,1,1"),
+            replaced("ground.csv", "70,120,sandstone,90,", "70,120,sandston,90x,"),
+        ),
+        "ground.csv:2: has 6 cells, the header has 5",
+        "  allowed: 5 cells",
+        "  fix: write decimal points, not commas, and put text with commas in quotes",
+        'ground.csv:4:3: column "ground_unit" holds "sandston", which units.csv does not name',
+        "  allowed: gouge, sandstone, siltstone",
+        '  fix: did you mean "sandstone"?',
+        'ground.csv:4:4: column "cover_m" holds "90x", which is not a number',
+        "  interval 70 to 120 m; allowed: a number at least 0, at most 10000, in m",
+        "  fix: write a plain number with a decimal point, without unit or thousands separator",
+    ),
+    "carried-column-that-no-table-has": (
+        replaced(
+            "project.yaml",
+            "  units: units.csv\n",
+            "  units: units.csv\n  other_columns: [borehole]\n",
+        ),
+        'project.yaml:8:3: key "ground.other_columns" names "borehole", a column that no table has',
+        "  allowed: from_m, to_m, ground_unit, cover_m, block_width_m, unit_weight_kn_m3, "
+        "stress_ratio, intact_strength_mpa, mi, gsi, disturbance, poisson_ratio, dilation_deg, "
+        "modulus_ratio",
+        "  fix: remove the entry",
+    ),
+    "unit-with-a-semicolon": (
+        replaced("units.csv", "\nsiltstone", "\nsilt;stone"),
+        'ground.csv:3:3: column "ground_unit" holds "siltstone", which units.csv does not name',
+        "  allowed: gouge, sandstone, silt;stone",
+        '  fix: did you mean "silt;stone"?',
+        'units.csv:3:1: column "ground_unit" holds "silt;stone", with a semicolon',
+        '  ground unit "silt;stone"; allowed: text without a semicolon, which joins units in the '
+        "schedule",
+        "  fix: give the unit a name without it",
+    ),
     "column-of-the-programs-own": (
         replaced(
             "project.yaml",

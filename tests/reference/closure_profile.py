@@ -10,5 +10,6 @@ def share_of_closure(distance: float, radius: float, plastic_radius: float) -> f
     at_face = math.exp(-0.15 * plastic_radius / radius) / 3
     if distance < 0:
         return at_face * math.exp(distance / radius)
-    # x / R over Rp / R
-    return 1 - (1 - at_face) * math.exp(-1.5 * distance / plastic_radius)
+    # 1 - (1 - u0) exp(-z), with z = 1.5 x / Rp, in a form that keeps the digits of a small share.
+    z = 1.5 * distance / plastic_radius
+    return at_face * math.exp(-z) - math.expm1(-z)

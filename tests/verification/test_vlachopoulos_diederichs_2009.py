@@ -3,6 +3,8 @@
 The equations are from memory; the table is an independent calculation from them, not published.
 """
 
+import math
+
 import numpy as np
 import pytest
 
@@ -24,3 +26,16 @@ def test_share_of_the_final_closure(plastic_ratio, expected, radius):
         DISTANCE_IN_RADII * radius, np.full(6, radius), np.full(6, plastic_ratio * radius)
     )
     np.testing.assert_array_equal(np.round(found, 4), expected)
+
+
+@pytest.mark.parametrize("plastic_ratio", [1e2, 1e8, 1e14, 1e16, 1e25, 1e100])
+def test_a_small_share_beside_a_deep_plastic_zone_keeps_its_digits(plastic_ratio):
+    """Far behind 1 / plastic_ratio the share is z = 1.5 X / R* plus u0: both exact to doubles."""
+    found = vlachopoulos_diederichs_2009(
+        np.array([1.0]), np.array([5.0]), np.array([5.0 * plastic_ratio])
+    )
+    z = 1.5 * 0.2 / plastic_ratio
+    at_face = math.exp(-0.15 * plastic_ratio) / 3
+    series = z - z**2 / 2 + z**3 / 6 - z**4 / 24  # 1 - exp(-z) for small z
+    np.testing.assert_allclose(found, at_face * math.exp(-z) + series, rtol=1e-12)
+    assert found[0] > 0

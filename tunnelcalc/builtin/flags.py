@@ -79,7 +79,8 @@ FLAGS = (
     ),
     Flag(
         "spalling",
-        "massive rock may spall or burst, which this strength criterion does not describe",
+        "the stress at the wall is high for the intact strength: massive rock may spall or burst, "
+        "which this strength criterion does not describe",
         f"(3 s1 - s3) / intact_strength_mpa above {SPALLING_RATIO}",
         "Martin, Kaiser & McCreath (1999), Can. Geotech. J. 36, 136-151",
         "judge brittle failure separately; retain loose rock instead of relying on a ring",
@@ -160,7 +161,7 @@ FLAGS = (
     ),
     Flag(
         "water_pressure_left_out",
-        "a water head is declared, but stresses and strength are total and the lining is drained",
+        "water pressure is left out: stresses and strength are total, the lining is drained",
         "water_head_m above 0",
         "assumption of this program",
         "check effective stress, seepage and the water pressure on a watertight lining separately",

@@ -39,8 +39,12 @@ def shaped(
         widths_fix,
         problems,
     )
-    if len(problems) > before:
+    told = tuple(problems)[before:]
+    if told and told[0].where.line == lines[0]:
         problems.raise_if_any()
+    # Rows of a wrong width are told and left out; the others are read on.
+    sound = [k for k, row in enumerate(rows) if named <= len(row) <= len(header)]
+    rows, lines = [rows[k] for k in sound], [lines[k] for k in sound]
     for row in rows:
         row.extend([""] * (len(header) - len(row)))
     columns = [[cell.strip() for cell in column] for column in zip(*rows[1:], strict=True)]
@@ -56,6 +60,7 @@ def shaped(
         lines=lines[1:],
         sheet=place.sheet,
         column_numbers=tuple(number + 1 for number in kept),
+        problems=told,
     )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sys
 from pathlib import Path
 from typing import Any
@@ -11,12 +12,13 @@ from rich.console import Console
 from rich.progress import BarColumn, MofNCompleteColumn, Progress, TextColumn, TimeRemainingColumn
 from rich.table import Table
 
+from tunnelcalc.arrays import SAME_PLACE_M
 from tunnelcalc.cli.problem_report import Report
 from tunnelcalc.cli.screen import console, metres, rounded, row, table
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.limits_statement import LIMITS
 from tunnelcalc.plugin.registry import load_plugins
-from tunnelcalc.results import RunResult
+from tunnelcalc.results import RunResult, Zone
 from tunnelcalc.run import CHUNK_SECTIONS, Finished, run_project
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, NONE_ADEQUATE_NAME
 
@@ -50,9 +52,22 @@ def run(
             chunk_sections=chunk or CHUNK_SECTIONS,
             progress=lambda done, total: bar.update(task, completed=done, total=total),
         )
-    report.ended(finished.exit_code, outcome(finished))
-    if not report.as_json:
-        show(finished, console())
+    try:
+        report.ended(finished.exit_code, outcome(finished))
+        if not report.as_json:
+            show(finished, console())
+        sys.stdout.flush()
+    except BrokenPipeError:
+        # Whoever reads our output has seen enough. What Python flushes at its end goes nowhere.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+    except OSError as error:
+        print(
+            f"tunnelcalc: the run is complete in {finished.folder}, but its summary could not be "
+            f"shown: {error.strerror}",
+            file=sys.stderr,
+        )
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return ExitCode.INTERNAL
     return finished.exit_code
 
 
@@ -113,20 +128,37 @@ def schedule_table(result: RunResult, with_units: bool) -> Table:
         wide=("governed by", "ground units"),
     )
     for zone in result.zones[:MOST_ZONES]:
-        needed = zone.needed_pressure_mpa
+        _add_gap_before(made, zone, result, with_units)
         cells = [
             metres(zone.from_m),
             metres(zone.to_m),
             metres(zone.length_m),
             zone.support_class,
             rounded(zone.least_factor_of_safety),
-            f"needs {rounded(needed)} MPa" if needed == needed else zone.governing_check,
+            _governed_by(zone),
             metres(zone.governing_chainage_m),
         ]
         made.add_row(*row(*cells, *([", ".join(zone.ground_units)] if with_units else [])))
     if len(result.zones) > MOST_ZONES:
         made.caption = f"{len(result.zones) - MOST_ZONES} more zones stand in schedule.csv"
     return made
+
+
+def _governed_by(zone: Zone) -> str:
+    """What governs a zone; where no class is adequate, what its closure would need."""
+    needed = zone.needed_pressure_mpa
+    if needed != needed:
+        return zone.governing_check
+    return f"needs {rounded(needed)} MPa" if needed > 0 else "checks of every class fail"
+
+
+def _add_gap_before(made: Table, zone: Zone, result: RunResult, with_units: bool) -> None:
+    """A declared gap that ends where a zone begins, as a line of its own."""
+    for gap in result.project.gaps:
+        if abs(gap.to_m - zone.from_m) <= SAME_PLACE_M:
+            length = metres(gap.to_m - gap.from_m)
+            cells = [metres(gap.from_m), metres(gap.to_m), length, "gap", "", gap.reason, ""]
+            made.add_row(*row(*cells, *([""] if with_units else [])))
 
 
 def length_table(result: RunResult) -> Table:
@@ -157,7 +189,8 @@ def length_table(result: RunResult) -> Table:
 
 
 def worst_table(result: RunResult) -> Table:
-    """The governing sections of the zones with the least factors."""
+    """The governing sections of zones without an adequate class, with the closure of the ground
+    alone, then of those with the least factors."""
     numeric = ("at m", "FS", "closure %", "limit %", "cover m")
     made = table(
         "Worst sections",
@@ -171,16 +204,21 @@ def worst_table(result: RunResult) -> Table:
         right=numeric,
     )
     sections = result.sections
+    without = [zone for zone in result.zones if zone.support_class == NONE_ADEQUATE_NAME]
+    without.sort(key=lambda z: -z.needed_pressure_mpa)
     loaded = [zone for zone in result.zones if zone.least_factor_of_safety > 0]
-    for zone in sorted(loaded, key=lambda z: z.least_factor_of_safety)[:MOST_WORST]:
+    loaded.sort(key=lambda z: z.least_factor_of_safety)
+    for zone in [*without, *loaded][:MOST_WORST]:
         at = int(np.searchsorted(sections["chainage_m"], zone.governing_chainage_m))
         number = int(sections["scheduled_class"][at])
+        unsupported = sections["closure_pct"][at]
+        closure = sections["class_closure_pct"][at, number] if number >= 0 else unsupported
         made.add_row(
             *row(
                 metres(zone.governing_chainage_m),
                 zone.support_class,
                 rounded(zone.least_factor_of_safety),
-                rounded(float(sections["class_closure_pct"][at, number])),
+                rounded(float(closure)),
                 rounded(result.project.criteria.closure_pct),
                 str(sections["ground_unit"][at]),
                 rounded(float(sections["cover_m"][at])),

@@ -10,13 +10,23 @@ from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
+LEAST_WIDTHS = {"governed by": 16}
+MOST_WIDTHS = {"class": 20, "ground unit": 24}
+"""Long names wrap, so that they never squeeze the numbers."""
 PAGE_WIDTH = 118
 """Width of what is written to a file or a pipe."""
 
 
+class Screen(Console):
+    """A console that leaves it to the command what a reader who left means for it."""
+
+    def on_broken_pipe(self) -> None:
+        raise BrokenPipeError
+
+
 def console(stream: TextIO | None = None) -> Console:
     """A console that prints names as they are: no markup, no highlighting."""
-    screen = Console(file=stream, markup=False, highlight=False, emoji=False, soft_wrap=False)
+    screen = Screen(file=stream, markup=False, highlight=False, emoji=False, soft_wrap=False)
     if not screen.is_terminal:
         screen.width = PAGE_WIDTH
     return screen
@@ -30,8 +40,10 @@ def table(title: str, *columns: str, right: Sequence[str] = (), wide: Sequence[s
     for name in columns:
         made.add_column(
             name,
+            min_width=LEAST_WIDTHS.get(name),
+            max_width=MOST_WIDTHS.get(name),
             justify="right" if name in right else "left",
-            no_wrap=name not in wide,
+            no_wrap=name not in wide and name not in MOST_WIDTHS,
             overflow="fold",
         )
     return made

@@ -41,5 +41,8 @@ def vlachopoulos_diederichs_2009(
     plastic_ratio = plastic_radius_m / radius_m
     at_face = np.exp(-0.15 * plastic_ratio) / 3
     ahead = at_face * np.exp(np.minimum(distance_ratio, 0))
-    behind = 1 - (1 - at_face) * np.exp(-1.5 * np.maximum(distance_ratio, 0) / plastic_ratio)
+    # 1 - (1 - u0) exp(-z), written so that a small share keeps its digits: beside a deep plastic
+    # zone z is tiny, and a share lost to rounding would install support in still ground.
+    decay = -1.5 * np.maximum(distance_ratio, 0) / plastic_ratio
+    behind = at_face * np.exp(decay) - np.expm1(decay)
     return np.where(distance_ratio < 0, ahead, behind)

@@ -13,7 +13,7 @@ from tunnelcalc.inputs import alignment
 from tunnelcalc.inputs.completeness import check_complete
 from tunnelcalc.inputs.estimates import estimate, read_preferences
 from tunnelcalc.inputs.files import ProjectFolder
-from tunnelcalc.inputs.ground_tables import TABLE, UNITS, other_columns, read_table
+from tunnelcalc.inputs.ground_tables import TABLE, UNITS, check_carried, other_columns, read_table
 from tunnelcalc.inputs.intervals import Intervals
 from tunnelcalc.inputs.laboratory_tests import read_tests
 from tunnelcalc.inputs.level_tables import (
@@ -96,6 +96,7 @@ def read_ground(
     tests = read_tests(reader, folder, registry)
     weights = _unit_weights(units, values)
     levels = read_levels(reader, opening.level, opening.has_axis, weights, folder, registry)
+    check_carried(reader, others, (table, units))
     reader.finish()
     if table is None or (values is None and reader.has(UNITS)):
         return None

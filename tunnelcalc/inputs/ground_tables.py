@@ -13,7 +13,7 @@ from tunnelcalc.inputs.values import Reader
 from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.text import quoted, shown, suggestion
+from tunnelcalc.text import few, quoted, shown, suggestion
 from tunnelcalc.vocabulary import GROUND, QUANTITIES, UNIT_SUFFIXES
 
 TABLE, UNITS = "table", "units"
@@ -42,6 +42,23 @@ def other_columns(reader: Reader, registry: Registry) -> Iterator[str]:
             allowed="names that have no meaning to the program",
             fix="remove the entry, or give the column another name",
         )
+
+
+def check_carried(
+    reader: Reader, others: Sequence[str], tables: Sequence[TypedTable | None]
+) -> None:
+    """Tell columns that the project wants carried along and no table has."""
+    found = [table.raw.header for table in tables if table is not None]
+    headers = list(dict.fromkeys(name for header in found for name in header))
+    for name in others:
+        if headers and name not in headers:
+            hint = suggestion(name, headers)
+            reader.complain(
+                "other_columns",
+                f"names {quoted(name)}, a column that no table has",
+                allowed=few(headers),
+                fix=f"did you mean {quoted(hint)}?" if hint else "remove the entry",
+            )
 
 
 def read_table(
@@ -97,7 +114,7 @@ def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None
                 allowed="the columns " + ", ".join(required),
                 fix=f"add it; the column {quoted(hint)} may be meant" if hint else "add it",
             )
-    if not raw.lines:
+    if not raw.lines and not raw.problems:
         reader.problems.add(
             Where(raw.file), "has a header and no rows", fix="write one row an interval or unit"
         )

@@ -75,6 +75,7 @@ class Intervals:
         """Tell empty and reversed ends, overlaps, and gaps that nobody declared."""
         pieces = [alignment.Piece(gap.from_m, gap.to_m, where, True) for gap, where in gaps]
         complete = self.table.has("from_m") and self.table.has("to_m")
+        complete = complete and not self.table.raw.problems
         ends = zip(self.from_m.tolist(), self.to_m.tolist(), strict=True)
         for row, (start, end) in enumerate(ends):
             if self._has_ends(row, start, end):

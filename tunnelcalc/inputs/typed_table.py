@@ -19,6 +19,9 @@ from tunnelcalc.text import as_number, number_fix, quoted, suggestion
 from tunnelcalc.vocabulary import GROUND, Limits, Quantity, Sort, ground_quantity
 
 CHAINAGE = Limits(-1e7, 1e7)
+GROUND_UNIT = "ground_unit"
+JOINT = ";"
+"""Joins names in a cell of an output table."""
 
 
 @dataclass(slots=True)
@@ -79,8 +82,11 @@ def open_table(
         return None
     try:
         if sheet is not None and isinstance(reader, SheetReader):
-            return reader.read_sheet(file.path, file.content, sheet)
-        return reader.read(file.path, file.content)
+            raw = reader.read_sheet(file.path, file.content, sheet)
+        else:
+            raw = reader.read(file.path, file.content)
+        problems.found.extend(raw.problems)
+        return raw
     except InputError as error:
         problems.found.extend(error.problems)
     except Exception as error:  # a stranger's reader may raise anything
@@ -258,7 +264,17 @@ def _float(cell: str) -> float:
 
 def _texts(table: TypedTable, column: int, context: Callable[[int], str]) -> Array:
     cells = np.array(table.raw.columns[column], dtype=object)
+    of_unit = table.raw.header[column] == GROUND_UNIT
     for row, text in enumerate(cells.tolist()):
+        if of_unit and JOINT in text:
+            table.problems.add(
+                table.raw.place(row, column),
+                f"holds {quoted(text)}, with a semicolon",
+                name=f'column "{GROUND_UNIT}"',
+                allowed="text without a semicolon, which joins units in the schedule",
+                context=context(row),
+                fix="give the unit a name without it",
+            )
         if not text.isprintable():
             table.problems.add(
                 table.raw.place(row, column),

@@ -19,6 +19,7 @@ from tunnelcalc.sections import Sections
 from tunnelcalc.support.reaction import LinearSpring
 
 NO_REASON = ""
+FEW_SECTIONS = 8
 
 
 class Contained(NamedTuple):
@@ -35,12 +36,15 @@ def contained(
 
     Where the call raises or returns no such arrays, the sections are halved until the offending
     ones stand alone: the outcome of a section never depends on the others that are computed
-    with it.
+    with it. Few sections are called once more with one of them repeated, since an array of a
+    fixed length may happen to fit them.
     """
     count = sections.count
     if count == 0:
         return Contained(np.empty((len(names), 0)), np.empty(0, dtype=object))
     values, fault = _called(call, sections, names)
+    if not fault and count <= FEW_SECTIONS:
+        _, fault = _called(call, sections.take(np.arange(-1, count) % count), names)
     if fault and count > 1:
         half = count // 2
         parts = [

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from tunnelcalc.errors import Where
+from tunnelcalc.errors import Problem, Where
 from tunnelcalc.text import DECIMAL
 
 
@@ -31,6 +31,8 @@ class RawTable:
     """The decimal sign of the file: `written` gives it back to a number."""
     notes: tuple[str, ...] = ()
     """What a user should know about the table: what was left out, what was averaged."""
+    problems: tuple[Problem, ...] = ()
+    """What is wrong with rows that were left out; the others are read on."""
 
     @property
     def name(self) -> str:

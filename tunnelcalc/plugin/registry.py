@@ -231,6 +231,9 @@ def _registrar(registry: Registry, sort: str, source: PluginSource) -> Callable[
 
 def describe(error: BaseException) -> str:
     """An exception in one short line, safe to print."""
-    message = " ".join(str(error).split())
+    try:
+        message = " ".join(str(error).split())
+    except Exception:  # a stranger's exception need not be able to speak
+        message = ""
     text = f"{type(error).__name__}: {message}" if message else type(error).__name__
     return "".join(c if c.isprintable() else "?" for c in text)[:300]

@@ -143,15 +143,28 @@ def test_only_the_section_at_fault_is_lost_whatever_the_chunks(fault, chunk):
     assert [text != "" for text in reasons] == (~kept).tolist()
 
 
-def test_an_array_of_one_value_stands_for_one_section_alone_whatever_the_chunks():
-    """One value for many sections has a wrong shape; asked for one section it is sound."""
+@pytest.mark.parametrize("chunk", [1, 2, 3, 5, COUNT])
+@pytest.mark.parametrize("length", [1, 2, 3])
+def test_an_array_of_fixed_length_is_a_wrong_shape_whatever_the_chunks(length, chunk):
+    """It may happen to fit a chunk of just that many sections."""
 
     def evaluate(part):
-        return api.Evaluation(part["chainage_m"][:1], part["radius_m"][:1])
+        return api.Evaluation(np.ones(length), np.ones(length))
 
-    many, _ = evaluated(evaluate)
-    singly = [evaluated(evaluate, part=sections().take(slice(i, i + 1)))[0] for i in range(COUNT)]
-    assert many.values.tolist() == np.concatenate([f.values for f in singly], axis=1).tolist()
+    for start in range(0, COUNT, chunk):
+        part = sections().take(slice(start, start + chunk))
+        found, _ = evaluated(evaluate, part=part)
+        assert np.all(np.isnan(found.values))
+        assert all("wrong shape" in text for text in found.reason)
+
+
+def test_an_error_that_cannot_speak_is_contained():
+    class MuteError(Exception):
+        def __str__(self):
+            raise RuntimeError("no words")
+
+    found, _ = evaluated(raises(MuteError()))
+    assert set(found.reason) == {"MuteError"}
 
 
 def test_no_sections_are_no_fault():

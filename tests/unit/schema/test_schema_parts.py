@@ -37,11 +37,9 @@ def test_a_whole_number_has_no_decimals():
     assert not meets(3.5, schema)
 
 
-@given(st.text("0123456789.eE+-_ ,x", max_size=8) | st.floats(allow_nan=False).map(repr))
+@given(st.text("0123456789.eE+-_ ,x", max_size=8) | st.floats().map(repr))
 def test_a_text_is_a_number_where_the_program_reads_one(written):
-    value = as_number(written)
-    reads = value is not None
-    assert meets(written, number("", Limits())) == (reads and "inf" not in written)
+    assert meets(written, number("", Limits())) == (as_number(written) is not None)
 
 
 @pytest.mark.parametrize("value", [None, [], {}, [1], True, "", " "])
