@@ -12,4 +12,4 @@ def share_of_closure(distance: float, radius: float, plastic_radius: float) -> f
         return at_face * math.exp(distance / radius)
     # 1 - (1 - u0) exp(-z), with z = 1.5 x / Rp, in a form that keeps the digits of a small share.
     z = 1.5 * distance / plastic_radius
-    return at_face * math.exp(-z) - math.expm1(-z)
+    return at_face - (1 - at_face) * math.expm1(-z)

@@ -44,5 +44,5 @@ def vlachopoulos_diederichs_2009(
     # 1 - (1 - u0) exp(-z), written so that a small share keeps its digits: beside a deep plastic
     # zone z is tiny, and a share lost to rounding would install support in still ground.
     decay = -1.5 * np.maximum(distance_ratio, 0) / plastic_ratio
-    behind = at_face * np.exp(decay) - np.expm1(decay)
+    behind = at_face - (1 - at_face) * np.expm1(decay)
     return np.where(distance_ratio < 0, ahead, behind)
