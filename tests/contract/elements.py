@@ -51,7 +51,11 @@ def _fitting(kind: SupportKind, choices: dict[str, str]) -> Element:
 def sections_for_checks(element_pressure_mpa: float, element_capacity_mpa: float) -> Sections:
     """One section a radius, with ground in the middle of its range and a wall at rest."""
     count = RADII_M.size
-    columns = {"radius_m": RADII_M, "chainage_m": np.arange(count, dtype=float)}
+    columns = {
+        "radius_m": RADII_M,
+        "span_m": 2 * RADII_M,
+        "chainage_m": np.arange(count, dtype=float),
+    }
     for name, quantity in GROUND.items():
         if quantity.sort is Sort.NUMBER:
             columns[name] = np.full(count, 1.0)

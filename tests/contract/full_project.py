@@ -61,7 +61,6 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
                     "intact_strength_mpa": ["laboratory", "point_load", "measured"],
                     "mi": ["measured", "laboratory"],
                 },
-                "point_load_factor": 24,
                 "values": "cautious",
                 "cautious_rule": "mean_95",
             },

@@ -17,6 +17,7 @@ FLOORS = (
         "tunnelcalc",
         "errors",
         "arrays",
+        "chainage",
         "text",
         "vocabulary",
         "root_finding",
@@ -117,6 +118,6 @@ def test_a_plugin_imports_of_ours_the_api_and_its_own_package_alone(module):
 
 
 def test_the_program_needs_no_library_beyond_those_it_declares():
-    declared = {"numpy", "pluggy", "rich", "scipy", "yaml"}
+    declared = {"numpy", "openpyxl", "pluggy", "python_ags4", "rich", "scipy", "yaml"}
     needed = set().union(*(outside(module) for module in IMPORTS))
     assert needed - sys.stdlib_module_names == declared

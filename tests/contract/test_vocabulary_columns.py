@@ -56,6 +56,7 @@ GROUND_COLUMNS = {
     "block_volume_cm3",
     "joint_condition",
     "point_load_mpa",
+    "point_load_factor",
     "water_head_m",
     "inflow_l_min_10m",
     "joint_set_count",

@@ -5,7 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 
 import pytest
-from end_to_end.projects import GROUND, PROJECT, UNITS, content, replaced
+from end_to_end.projects import GROUND, PROJECT, UNITS, all_of, content, replaced
 from end_to_end.refusals import Case, assert_refused
 
 ALIAS_BOMB = "\n".join(
@@ -90,9 +90,9 @@ CASES: dict[str, Case] = {
         "  fix: name a readable file inside the project folder",
     ),
     "ending-that-nobody-reads": (
-        replaced("project.yaml", "table: ground.csv", "table: ground.xlsx"),
-        'project.yaml:6:3: key "ground.table" names "ground.xlsx", which no plugin can read',
-        "  allowed: a file ending in .csv",
+        replaced("project.yaml", "table: ground.csv", "table: ground.ods"),
+        'project.yaml:6:3: key "ground.table" names "ground.ods", which no plugin can read',
+        "  allowed: a file ending in .ags or .csv or .tsv or .txt or .xlsm or .xlsx",
         "  fix: save the table so",
     ),
     "yaml-tab": (
@@ -144,20 +144,44 @@ CASES: dict[str, Case] = {
         "project.yaml: is not a text file: it holds null bytes",
         "  fix: save it as plain text in UTF-8",
     ),
-    "table-in-utf-16": (
-        content("ground.csv", GROUND.encode("utf-16")),
+    "table-in-utf-16-without-mark": (
+        content("ground.csv", GROUND.encode("utf-16-le")),
         "ground.csv: is not a text file: it holds null bytes",
-        "  fix: save it as plain text in UTF-8",
+        "  allowed: UTF-8, or UTF-16 with its byte order mark",
+        '  fix: save the table as "CSV UTF-8"',
     ),
     "table-in-latin-1": (
         content("ground.csv", GROUND.replace("gouge", "Störung").encode("latin-1")),
         "ground.csv:5: is not UTF-8 text: byte 0xf6 cannot be read",
-        "  fix: save it as plain text in UTF-8",
+        "  allowed: UTF-8, or UTF-16 with its byte order mark",
+        '  fix: save the table as "CSV UTF-8"; plain CSV may be Windows-1252, which is not guessed',
     ),
     "table-binary": (
         content("ground.csv", bytes(range(256))),
         "ground.csv: is not a text file: it holds null bytes",
-        "  fix: save it as plain text in UTF-8",
+        "  allowed: UTF-8, or UTF-16 with its byte order mark",
+        '  fix: save the table as "CSV UTF-8"',
+    ),
+    "workbook-named-csv": (
+        content("ground.csv", b"PK\x03\x04 and what follows"),
+        "ground.csv: is a workbook or another packed file, not text",
+        "  allowed: UTF-8, or UTF-16 with its byte order mark",
+        "  fix: give a workbook the ending .xlsx, or save the table as CSV",
+    ),
+    "workbook-damaged": (
+        all_of(
+            replaced("project.yaml", "table: ground.csv", "table: ground.xlsx"),
+            content("ground.xlsx", b"PK\x03\x04 and what follows"),
+        ),
+        "ground.xlsx: is not a workbook, or a damaged one",
+        "  allowed: a workbook (.xlsx)",
+        "  fix: save it again as .xlsx",
+    ),
+    "table-too-large": (
+        content("ground.csv", bytes(200_000_000)),
+        "ground.csv: has 200 MB",
+        "  allowed: at most 67 MB",
+        "  fix: join neighbouring intervals of the same ground, or divide the project",
     ),
     "table-empty": (
         content("ground.csv", b""),
@@ -175,11 +199,23 @@ CASES: dict[str, Case] = {
         "units.csv: has a header and no rows",
         "  fix: write one row an interval or unit",
     ),
-    "table-with-semicolons": (
-        content("ground.csv", GROUND.replace(",", ";").encode()),
-        "ground.csv:1: is not separated by commas",
-        "  allowed: commas between cells",
-        "  fix: save the table as CSV with commas and decimal points",
+    "table-with-both-decimal-signs": (
+        content(
+            "ground.csv",
+            GROUND.replace(",", ";").replace("75;0.4", "75;0,4").encode(),
+        ),
+        (
+            'ground.csv:3:5: column "block_width_m" holds "0,4", with a decimal comma; the '
+            'table also has a decimal point, in "1.1"'
+        ),
+        "  allowed: one decimal sign in the whole table",
+        '  fix: write "0.4", if it is a number; write names that look like numbers otherwise',
+    ),
+    "table-with-thousands-separators": (
+        content("ground.csv", GROUND.replace(",", ";").replace(";60;", ";1'060.5;").encode()),
+        'ground.csv:2:4: column "cover_m" holds "1\'060.5", which is not a number',
+        "  interval 0 to 45 m; allowed: a number at least 0, at most 10000, in m",
+        "  fix: write 1060.5, without thousands separators",
     ),
     "table-with-an-open-quote": (
         replaced("ground.csv", "45,70,siltstone", '45,70,"siltstone'),

@@ -54,7 +54,8 @@ def test_a_project_without_the_removed_kind_runs_as_before(project: Path, tmp_pa
 def test_a_table_that_no_plugin_reads_is_told(project: Path):
     assert problems_without("csv_reader", project) == [
         f'project.yaml:{line}:3: key "ground.{key}" names "{file}", which no plugin can read\n'
-        "  fix: install a plugin that reads tables"
+        "  allowed: a file ending in .ags or .xlsm or .xlsx\n"
+        "  fix: save the table so"
         for line, key, file in ((6, "table", "ground.csv"), (7, "units", "units.csv"))
     ]
 

@@ -138,6 +138,6 @@ def breaches(file: str, text: str) -> list[str]:
     for rule, places in sorted(found.items()):
         if not rule.startswith("AGS Format Rule"):
             continue
-        lines = [str(place["line"]) for place in places]
-        told.append(f"{file} breaks {rule} in {len(places)} places, lines {few(lines)}")
+        lines = dict.fromkeys(str(p["line"]) for p in places if isinstance(p["line"], int))
+        told.append(f"{file}: breaks {rule}{', lines ' if lines else ''}{few(list(lines))}")
     return told

@@ -114,13 +114,13 @@ class _Observed:
         source = self.source
         count = sum(map(len, self.values.values()))
         notes = [
-            f"{name}: {source.column} from {count} {source.what} ({source.group}), each "
-            "counted once whatever its length"
+            f"{name}: {source.column} from {count} {source.what} ({source.group})"
+            + (", each counted once whatever its length" if source.base else "")
         ]
         if self.outside:
             notes.append(
-                f"{name}: {self.outside} {source.what} left out: they lie in no single "
-                "stratum with a geology code"
+                f"{name}: {self.outside} of {count + self.outside} {source.what} left out, in no "
+                "single stratum with a geology code"
             )
         return notes
 

@@ -42,8 +42,10 @@ class CsvReader:
         fix = _COMMA_FIX if separator == "," else _other_fix(_WORDS[separator])
         table = shaped(place, rows, lines, fix, problems)
         if separator != ",":
+            told = len(problems)
             table = with_decimal_points(table, problems)
-            problems.raise_if_any()
+            if len(problems) > told:
+                problems.raise_if_any()
         return table
 
 

@@ -59,7 +59,7 @@ def _pointed(column: Sequence[str], cells: set[str]) -> list[str]:
 def _tell_mixed(table: RawTable, found: dict[str, Found], problems: Problems) -> None:
     """One problem for each column that has the rarer sign, at its first cell."""
     sizes = {sign: sum(map(len, of_sign.values())) for sign, of_sign in found.items()}
-    rare, usual = sorted(_WORDS, key=lambda sign: (sizes[sign], sign == "."))
+    rare, usual = sorted(_WORDS, key=lambda sign: (sizes[sign], sign == ","))
     number, cells = next(iter(found[usual].items()))
     example = next(cell for cell in table.columns[number] if cell in cells)
     for column, cells in found[rare].items():

@@ -49,14 +49,6 @@ def _spalling(sections: Sections) -> Array:
     return stress / sections["intact_strength_mpa"] > SPALLING_RATIO
 
 
-SPREADS = ("gsi_spread", "intact_strength_mpa_spread", "mi_spread")
-
-
-def _sources_differ(sections: Sections) -> Array:
-    differ = [sections[name] > 0 for name in SPREADS]
-    return differ[0] | differ[1] | differ[2]
-
-
 FLAGS = (
     Flag(
         "shallow_cover",
@@ -183,8 +175,8 @@ FLAGS = (
         "two sources of gsi, intact_strength_mpa or mi differ",
         "assumption of this program",
         "find out why they differ: the spread stands in sections.csv",
-        (),
-        _sources_differ,
+        ("estimates_differ",),
+        _is_set("estimates_differ"),
     ),
     Flag(
         "tests_below_confinement",
@@ -192,7 +184,7 @@ FLAGS = (
         "greatest minor stress tested below confinement_mpa",
         "Hoek, Carranza-Torres & Corkum (2002), relation for tunnels",
         "test at higher confinement, or take mi with care",
-        ("confinement_mpa",),
+        ("tested_confinement_mpa", "confinement_mpa"),
         lambda sections: sections["tested_confinement_mpa"] < sections["confinement_mpa"],
     ),
     Flag(

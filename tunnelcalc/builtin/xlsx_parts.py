@@ -17,6 +17,9 @@ LARGEST_OTHER_PART_BYTES = 32 * 1024 * 1024
 """Parts other than sheets and texts: styles and the like are held in memory as a whole."""
 MOST_CELLS_IN_A_ROW = 16384
 """More columns than that no spreadsheet has."""
+_HEAD_BYTES = 4096
+_DOCUMENT_TYPE = ("declares a document type", "save the table again as .xlsx")
+"""With it, a few bytes may stand for any number: no spreadsheet writes one."""
 _OLD_OR_LOCKED = b"\xd0\xcf\x11\xe0"
 
 
@@ -32,23 +35,31 @@ def check_package(content: bytes) -> None:
             "save it as .xlsx without a password",
         )
     try:
-        parts = zipfile.ZipFile(io.BytesIO(content)).infolist()
+        archive = zipfile.ZipFile(io.BytesIO(content))
     except (zipfile.BadZipFile, ValueError, NotImplementedError, OSError):
         raise WorkbookError(
             "is not a workbook, or a damaged one", "save it again as .xlsx"
         ) from None
+    parts = archive.infolist()
     size = sum(part.file_size for part in parts)
     if size > LARGEST_UNPACKED_BYTES or any(map(_is_swollen, parts)):
         raise WorkbookError(
             f"unpacks to {size / 1e6:.0f} MB, more than can be read",
             "save the table alone, values only, in a new workbook or as CSV",
         )
+    for part in filter(_is_parsed, parts):
+        with archive.open(part) as stream:
+            if b"<!DOCTYPE" in stream.read(_HEAD_BYTES):
+                raise WorkbookError(*_DOCUMENT_TYPE)
+
+
+def _is_parsed(part: zipfile.ZipInfo) -> bool:
+    return part.filename.endswith((".xml", ".rels"))
 
 
 def _is_swollen(part: zipfile.ZipInfo) -> bool:
     streamed = "/worksheets/" in part.filename or "sharedStrings" in part.filename
-    read = part.filename.endswith((".xml", ".rels"))
-    return read and not streamed and part.file_size > LARGEST_OTHER_PART_BYTES
+    return _is_parsed(part) and not streamed and part.file_size > LARGEST_OTHER_PART_BYTES
 
 
 @dataclass(slots=True)
@@ -110,7 +121,7 @@ class _Scan:
             self.marks.without_result.append((self.row, self.column))
 
     def doctype(self, *_: object) -> None:
-        raise WorkbookError("declares a document type", "save the table again as .xlsx")
+        raise WorkbookError(*_DOCUMENT_TYPE)
 
 
 def _column(reference: str) -> int:

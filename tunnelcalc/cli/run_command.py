@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import os
 import sys
+from contextlib import nullcontext
 from pathlib import Path
 from typing import Any
 
@@ -42,7 +43,8 @@ def run(
         transient=True,
         disable=not sys.stderr.isatty(),
     )
-    with bar:
+    # A bar that is disabled still prints an empty line at its end, in rich 13.
+    with bar if sys.stderr.isatty() else nullcontext():
         task = bar.add_task("sections", total=None)
         finished = run_project(
             project,

@@ -6,7 +6,7 @@ project states the order of preference, or is refused; how far the sources lie a
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Container, Mapping, Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -88,6 +88,13 @@ def source_names(quantity: str) -> tuple[str, ...]:
     relations = tuple(e.name for e in ESTIMATORS if e.quantity == quantity)
     tests = (LABORATORY,) if quantity in FROM_TESTS else ()
     return (MEASURED, *relations, *tests)
+
+
+def idle_observations(names: Container[str]) -> set[str]:
+    """Observations that no relation uses, because another one that it needs is not given."""
+    needs = {need for estimator in ESTIMATORS for need in estimator.needs}
+    complete = [e for e in ESTIMATORS if all(need in names for need in e.needs)]
+    return {n for n in needs if n in names} - {need for e in complete for need in e.needs}
 
 
 def read_preferences(reader: Reader) -> dict[str, tuple[str, ...]]:

@@ -11,7 +11,12 @@ from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.errors import Where
 from tunnelcalc.inputs import alignment
 from tunnelcalc.inputs.completeness import check_complete
-from tunnelcalc.inputs.estimates import estimate, read_preferences
+from tunnelcalc.inputs.estimates import (
+    ESTIMATED,
+    estimate,
+    idle_observations,
+    read_preferences,
+)
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.inputs.ground_tables import TABLE, UNITS, check_carried, other_columns, read_table
 from tunnelcalc.inputs.intervals import Intervals
@@ -193,9 +198,10 @@ def _ground(
     reached = {unit: t.result.greatest_confinement_mpa for unit, t in tests.items()}
     used = origins["mi"] == Origin.ESTIMATED
     confinement = [reached.get(unit, np.nan) for unit in columns["ground_unit"].tolist()]
-    columns["tested_confinement_mpa"] = np.where(used, np.array(confinement), np.nan)
-    for name in ("gsi_spread", "intact_strength_mpa_spread", "mi_spread"):
-        columns.setdefault(name, np.full(middle.shape, np.nan))
+    # Without tests nothing was missed: no confinement is beyond what they reached.
+    columns["tested_confinement_mpa"] = np.where(used, np.array(confinement), np.inf)
+    spreads = [columns[name + "_spread"] > 0 for name in ESTIMATED if name + "_spread" in columns]
+    columns["estimates_differ"] = np.any([np.zeros(middle.shape, bool), *spreads], axis=0)
     for quantity in GROUND.values():
         # A column that no table gives takes no memory, and whoever needs it finds NaN.
         is_text = quantity.sort is Sort.CHOICE
@@ -310,7 +316,9 @@ def _warnings(
         quantity = ground_quantity(name)
         return quantity is not None and not quantity.used
 
-    idle = sorted(name for name in (*found.numbers, *found.texts) if unused(name))
+    unused_names = {name for name in (*found.numbers, *found.texts) if unused(name)}
+    given = {name for name, values in found.numbers.items() if not np.all(np.isnan(values))}
+    idle = sorted(unused_names | idle_observations(given))
     warnings = []
     if idle:
         warnings.append(

@@ -14,7 +14,7 @@ from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.text import few, quoted, shown, suggestion
-from tunnelcalc.vocabulary import GROUND, QUANTITIES, UNIT_SUFFIXES
+from tunnelcalc.vocabulary import GROUND, QUANTITIES, UNIT_SUFFIXES, WORDS
 
 TABLE, UNITS = "table", "units"
 """Keys under which a project names its tables."""
@@ -23,7 +23,9 @@ OWN_COLUMNS = (
     *QUANTITIES,
     *CLASS_COLUMNS,
     *CHECK_COLUMNS,
-    *("required_class", "scheduled_class", "flags", "flag_raised", "flag_not_assessed"),
+    *WORDS,
+    *("flag_raised", "flag_not_assessed"),
+    *(f"{name}_spread" for name in GROUND),
 )
 """Names that a free column cannot have, besides those of flags: the program fills them."""
 

@@ -18,12 +18,10 @@ from tunnelcalc.schema.parts import (
     table,
     text,
 )
-from tunnelcalc.vocabulary import GROUND
 
 
 def ground() -> Schema:
     """The keys under `ground`."""
-    factor = GROUND["point_load_factor"]
     keys = {
         "table": path("the ground table, one row an interval; of a workbook FILE#SHEET"),
         "units": path("properties by ground unit; a cell of the ground table overrides"),
@@ -41,7 +39,6 @@ def ground() -> Schema:
         "layers": path("ground units above the opening"),
         "tests": path("triaxial and uniaxial tests by ground unit"),
         "estimates": _estimates(),
-        "point_load_factor": number(factor.meaning, factor.limits, factor.unit),
         "values": choice("which values of the ground units are used", VALUE_SETS),
         "cautious_rule": choice("how a cautious value follows from statistics", RULES),
     }

@@ -30,6 +30,11 @@ def told(content: str | bytes) -> list[str]:
     return "\n".join(str(problem) for problem in caught.value.problems).splitlines()
 
 
+def of_rows(text: str) -> list[str]:
+    """What is told of rows that were left out."""
+    return "\n".join(str(problem) for problem in read(text).problems).splitlines()
+
+
 DIALECTS = {
     "utf-8": PLAIN.encode(),
     "utf-8-with-mark": codecs.BOM_UTF8 + PLAIN.encode(),
@@ -162,10 +167,15 @@ def test_a_title_above_the_header_is_told_once():
 
 def test_a_row_that_may_have_lost_or_gained_a_cell_is_refused():
     """A blank cell too many may come from a decimal comma, `75,5,` under `cover,width`."""
-    assert told("a,b\n75,5,\n75,5\n")[0] == "g.csv:2: has 3 cells, the header has 2"
-    assert told("a,b,,\n1\n1,2\n")[:2] == [
+    assert of_rows("a,b\n75,5,\n75,5\n") == [
+        "g.csv:2: has 3 cells, the header has 2",
+        "  allowed: 2 cells",
+        "  fix: write decimal points, not commas, and put text with commas in quotes",
+    ]
+    assert of_rows("a;b;;\n1\n1;2\n") == [
         "g.csv:2: has 1 cell, the header has 4",
         "  allowed: 2 to 4 cells",
+        "  fix: put semicolons between all cells, and text with semicolons in quotes",
     ]
 
 
@@ -188,4 +198,15 @@ def test_a_table_of_200_mb_is_refused_before_it_is_read():
         "g.csv: has 200 MB",
         "  allowed: at most 67 MB",
         "  fix: join neighbouring intervals of the same ground, or divide the project",
+    ]
+
+
+def test_a_row_of_a_wrong_width_does_not_hide_the_others():
+    table = read("a;b\n1,5\n2,5;3\n")
+    assert of_rows("a;b\n1,5\n2,5;3\n")[0] == "g.csv:2: has 1 cell, the header has 2"
+    assert [list(column) for column in table.columns] == [["2.5"], ["3"]]
+    assert told("a;b\n1,5\n2,5;3.5\n")[::3] == [
+        "g.csv:2: has 1 cell, the header has 2",
+        'g.csv:3:2: column "b" holds "3.5", with a decimal point; the table also has a decimal '
+        'comma, in "2,5"',
     ]

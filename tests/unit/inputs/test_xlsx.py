@@ -58,11 +58,9 @@ def read(*changes: Change) -> RawTable:
 
 def problems_of(content: bytes, sheet: str | None = None) -> list[str]:
     reader = XlsxReader()
+    named = () if sheet is None else (sheet,)
     with pytest.raises(InputError) as caught:
-        if sheet is None:
-            reader.read("geo.xlsx", content)
-        else:
-            reader.read_sheet("geo.xlsx", content, sheet)
+        (reader.read_sheet if named else reader.read)("geo.xlsx", content, *named)
     return "\n".join(str(problem) for problem in caught.value.problems).splitlines()
 
 

@@ -8,6 +8,7 @@ from pathlib import Path
 import numpy as np
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.chainage import Notation
 from tunnelcalc.project import (
     DEFAULT_METHODS,
     Criteria,
@@ -66,6 +67,9 @@ def project(
         gaps=(),
         ground=ground,
         ground_columns=("ground_unit",),
+        origins=(),
+        tests=(),
+        notation=Notation(),
         warnings=(),
         files=(),
     )
@@ -116,6 +120,11 @@ def random_ground(count: int, seed: int) -> Sections:
         "water_head_m": absent,
         "block_width_m": np.where(half, draw.uniform(0.1, 2, count), np.nan),
         "radius_m": np.full(count, 5.2),
+        "span_m": np.full(count, 10.4),
+        "profile": np.array([""] * count, dtype=object),
+        "equivalent_radius": np.zeros(count, dtype=bool),
+        "estimates_differ": np.zeros(count, dtype=bool),
+        "tested_confinement_mpa": np.full(count, np.inf),
     }
     columns["gsi"][-1], columns["intact_strength_mpa"][-1] = 1.0, 1e-5
     columns["vertical_stress_mpa"][-1] = 100.0

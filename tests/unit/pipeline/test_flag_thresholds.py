@@ -45,6 +45,13 @@ CASES = [
     ("stress_ratio_assumed", {"stress_ratio_assumed": False}, False),
     ("dilation_assumed", {"dilation_assumed": True}, True),
     ("dilation_assumed", {"dilation_assumed": False}, False),
+    ("equivalent_radius", {"equivalent_radius": True}, True),
+    ("equivalent_radius", {"equivalent_radius": False}, False),
+    ("estimates_differ", {"estimates_differ": True}, True),
+    ("estimates_differ", {"estimates_differ": False}, False),
+    ("tests_below_confinement", {"tested_confinement_mpa": 2.0, "confinement_mpa": 2.0}, False),
+    ("tests_below_confinement", {"tested_confinement_mpa": 2.0, "confinement_mpa": 2.1}, True),
+    ("tests_below_confinement", {"tested_confinement_mpa": np.inf, "confinement_mpa": 9.0}, False),
     ("rule_not_applied", {"rule_not_applied": True}, True),
     ("rule_not_applied", {"rule_not_applied": False}, False),
 ]

@@ -45,7 +45,9 @@ def evaluated(rule, *, length=4.0, around=1.5, along=1.5, block_width=0.4, radiu
         "spacing_along_m": along,
         "pattern_rules": "em_1110_1_2907",
     }
-    sections = Sections({"radius_m": np.array([radius]), "block_width_m": np.array([block_width])})
+    sections = Sections(
+        {"span_m": np.array([2 * radius]), "block_width_m": np.array([block_width])}
+    )
     return RULES[rule].evaluate(sections, Element("rock_bolts", "rock_bolts", 1.0, values))
 
 
