@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
+from tunnelcalc.arrays import Array
 from tunnelcalc.chainage import Notation
 from tunnelcalc.rock_mass.laboratory import IntactTests
 from tunnelcalc.sections import Sections
@@ -79,15 +80,18 @@ class Gap:
 
 
 @dataclass(frozen=True, slots=True)
-class ValueOrigin:
-    """One ground value, the stretch on which it holds, where it came from and by which method."""
+class ValueOrigins:
+    """Where one ground quantity came from: stretches (k,) on which value and origin hold.
+
+    `value` is NaN where it changes with every section; `origin` and `method` are text.
+    """
 
     quantity: str
-    from_m: float
-    to_m: float
-    value: float
-    origin: str
-    method: str
+    from_m: Array
+    to_m: Array
+    value: Array
+    origin: Array
+    method: Array
 
 
 @dataclass(frozen=True, slots=True)
@@ -125,7 +129,7 @@ class Project:
     ground: Sections
     ground_columns: tuple[str, ...]
     """Columns of `ground` that came from tables, in the order in which they are written."""
-    origins: tuple[ValueOrigin, ...]
+    origins: tuple[ValueOrigins, ...]
     tests: tuple[UnitTests, ...]
     notation: Notation
     warnings: tuple[str, ...]

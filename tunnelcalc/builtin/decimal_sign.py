@@ -58,7 +58,10 @@ def _pointed(column: Sequence[str], cells: set[str]) -> list[str]:
 
 def _tell_mixed(table: RawTable, found: dict[str, Found], problems: Problems) -> None:
     """One problem for each column that has the rarer sign, at its first cell."""
-    sizes = {sign: sum(map(len, of_sign.values())) for sign, of_sign in found.items()}
+    sizes = {
+        sign: sum(cell in cells for n, cells in of_sign.items() for cell in table.columns[n])
+        for sign, of_sign in found.items()
+    }
     rare, usual = sorted(_WORDS, key=lambda sign: (sizes[sign], sign == ","))
     number, cells = next(iter(found[usual].items()))
     example = next(cell for cell in table.columns[number] if cell in cells)

@@ -87,8 +87,9 @@ def _rows(
     """Rows of text that are not blank, filled up to one width, and their numbers."""
     rows: list[list[str]] = []
     lines: list[int] = []
+    percent: dict[int, bool] = {}
     for line, row in _numbered(place, sheet, problems):
-        texts = [_text(place, cell, problems) for cell in row]
+        texts = [_text(place, cell, percent, problems) for cell in row]
         while texts and not texts[-1]:
             texts.pop()
         if texts:
@@ -112,8 +113,11 @@ def _numbered(
         yield line, row
 
 
-def _text(place: api.Where, cell: Any, problems: api.Problems) -> str:
-    """The value of a cell as text: of a number the shortest that reads back as the same."""
+def _text(place: api.Where, cell: Any, percent: dict[int, bool], problems: api.Problems) -> str:
+    """The value of a cell as text: of a number the shortest that reads back as the same.
+
+    `percent` keeps, by style, whether it shows percentages: to ask for the format is slow.
+    """
     value = cell.value
     if value is None:
         return ""
@@ -124,7 +128,10 @@ def _text(place: api.Where, cell: Any, problems: api.Problems) -> str:
     if isinstance(value, bool):
         return str(value).upper()
     if isinstance(value, (int, float)):
-        if "%" in str(cell.number_format):
+        style = cell._style_id
+        if style not in percent:
+            percent[style] = "%" in str(cell.number_format)
+        if percent[style]:
             what = f"holds {value!r}, which the sheet shows as {value * 100:g} %"
             fix = "format the cell as a number, and write the value in the unit of its column"
             _tell(place, cell, what, "numbers not formatted as percentages", fix, problems)

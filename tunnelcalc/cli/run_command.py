@@ -121,19 +121,19 @@ def show(finished: Finished, screen: Console) -> None:
 
 def schedule_table(result: RunResult, with_units: bool) -> Table:
     """The zones, or the first of very many."""
-    columns = ("from m", "to m", "length m", "class", "FS", "governed by", "at m")
+    ends = _ends_header(result, with_units)
+    columns = (*ends, "length m", "class", "FS", "governed by", "at m")
     made = table(
         "Support schedule",
         *columns,
         *(("ground units",) if with_units else ()),
-        right=("from m", "to m", "length m", "FS", "at m"),
+        right=("from", "to", "from m", "to m", "length m", "FS", "at m"),
         wide=("governed by", "ground units"),
     )
     for zone in result.zones[:MOST_ZONES]:
         _add_gap_before(made, zone, result, with_units)
         cells = [
-            metres(zone.from_m),
-            metres(zone.to_m),
+            *_ends(zone.from_m, zone.to_m, result, with_units),
             metres(zone.length_m),
             zone.support_class,
             rounded(zone.least_factor_of_safety),
@@ -144,6 +144,21 @@ def schedule_table(result: RunResult, with_units: bool) -> Table:
     if len(result.zones) > MOST_ZONES:
         made.caption = f"{len(result.zones) - MOST_ZONES} more zones stand in schedule.csv"
     return made
+
+
+def _ends_header(result: RunResult, wide: bool) -> tuple[str, ...]:
+    """Chainages as the project writes them, and metres along the axis where there is room."""
+    if result.project.notation.is_plain:
+        return ("from m", "to m")
+    return ("from", "to", "from m", "to m") if wide else ("from", "to")
+
+
+def _ends(from_m: float, to_m: float, result: RunResult, wide: bool) -> list[str]:
+    along = [metres(from_m), metres(to_m)]
+    notation = result.project.notation
+    if notation.is_plain:
+        return along
+    return notation.written(np.array([from_m, to_m])) + (along if wide else [])
 
 
 def _governed_by(zone: Zone) -> str:
@@ -159,7 +174,8 @@ def _add_gap_before(made: Table, zone: Zone, result: RunResult, with_units: bool
     for gap in result.project.gaps:
         if abs(gap.to_m - zone.from_m) <= SAME_PLACE_M:
             length = metres(gap.to_m - gap.from_m)
-            cells = [metres(gap.from_m), metres(gap.to_m), length, "gap", "", gap.reason, ""]
+            ends = _ends(gap.from_m, gap.to_m, result, with_units)
+            cells = [*ends, length, "gap", "", gap.reason, ""]
             made.add_row(*row(*cells, *([""] if with_units else [])))
 
 

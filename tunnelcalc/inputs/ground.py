@@ -14,7 +14,6 @@ from tunnelcalc.inputs.completeness import check_complete
 from tunnelcalc.inputs.estimates import (
     ESTIMATED,
     estimate,
-    idle_observations,
     read_preferences,
 )
 from tunnelcalc.inputs.files import ProjectFolder
@@ -31,6 +30,7 @@ from tunnelcalc.inputs.level_tables import (
 )
 from tunnelcalc.inputs.merging import Merged, Origin, merged
 from tunnelcalc.inputs.opening import Profile, check_profiles, limits_inside, profile_of
+from tunnelcalc.inputs.provenance import ground_warnings, value_origins, written_columns
 from tunnelcalc.inputs.typed_table import TypedTable
 from tunnelcalc.inputs.unit_values import (
     CAUTIOUS,
@@ -43,22 +43,18 @@ from tunnelcalc.inputs.unit_values import (
 )
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Gap, UnitTests, ValueOrigin
+from tunnelcalc.project import Gap, UnitTests, ValueOrigins
 from tunnelcalc.sections import Sections
 from tunnelcalc.vocabulary import (
-    DEVIATION_SUFFIX,
     GROUND,
-    UNIT_SUFFIXES,
     Limits,
     Sort,
-    ground_quantity,
 )
 
 SECTION_LENGTH = Limits(10 * SAME_PLACE_M, 1e6)
 ASSUMED = {"stress_ratio": 1.0, "dilation_deg": 0.0}
 """The only two physical values that the program takes by itself, each with a flag."""
 FROM_LEVELS = ("cover_m", "water_head_m", "vertical_stress_mpa")
-ALWAYS_WRITTEN = (*ASSUMED, "vertical_stress_mpa")
 
 
 @dataclass(frozen=True, slots=True)
@@ -67,7 +63,7 @@ class Ground:
 
     sections: Sections
     columns: tuple[str, ...]
-    origins: tuple[ValueOrigin, ...]
+    origins: tuple[ValueOrigins, ...]
     tests: tuple[UnitTests, ...]
     gaps: tuple[Gap, ...]
     warnings: tuple[str, ...]
@@ -207,14 +203,14 @@ def _ground(
         is_text = quantity.sort is Sort.CHOICE
         nothing = np.array("", dtype=object) if is_text else np.array(np.nan)
         columns.setdefault(quantity.name, np.broadcast_to(nothing, middle.shape))
-    written = _written(found, origins)
+    written = written_columns(found, origins)
     return Ground(
         Sections(columns),
         written,
-        tuple(_origins(written, columns, origins, found.methods, rows)),
+        tuple(value_origins(written, columns, origins, found.methods, rows)),
         tuple(tests.values()),
         tuple(sorted((gap for gap, _ in gaps), key=lambda gap: gap.from_m)),
-        _warnings(found, columns, levels, values),
+        ground_warnings(found, columns, levels, values),
     )
 
 
@@ -255,82 +251,3 @@ def _check_cover(
             allowed="terrain at or above the crown",
             fix="correct the levels, or end the alignment at the portal",
         )
-
-
-def _written(found: Merged, origins: Mapping[str, Array]) -> tuple[str, ...]:
-    """Columns of the ground in `sections.csv`, in the order of the vocabulary, free ones last."""
-    there = {name for name, codes in origins.items() if np.any(codes != Origin.NOWHERE)} | set(
-        found.texts
-    )
-    ordered = ["ground_unit"]
-    for name in GROUND:
-        for column in (name, name + DEVIATION_SUFFIX):
-            if column in there or column in ALWAYS_WRITTEN:
-                ordered.append(column)
-    quantities = {name + suffix for name in GROUND for suffix in UNIT_SUFFIXES}
-    spreads = {name for name in found.numbers if name.endswith("_spread")}
-    free = [name for name in (*found.texts, *found.numbers) if name in there | spreads]
-    return tuple(dict.fromkeys([*ordered, *(n for n in free if n not in quantities)]))
-
-
-def _origins(
-    written: Sequence[str],
-    columns: Mapping[str, Array],
-    origins: Mapping[str, Array],
-    methods: Mapping[str, Array],
-    rows: Array,
-) -> Iterator[ValueOrigin]:
-    """Each value over the stretch on which it and its origin stay the same.
-
-    What follows from levels changes with every section: only its origin is told.
-    """
-    for name in written:
-        if name not in GROUND or name not in origins:
-            continue
-        codes = origins[name]
-        values = np.where(codes == Origin.LEVELS, np.nan, columns[name])
-        method = methods[name][rows] if name in methods else np.full(rows.size, "", dtype=object)
-        new = np.ones(rows.size, dtype=bool)
-        new[1:] = (codes[1:] != codes[:-1]) | (method[1:] != method[:-1])
-        new[1:] |= (values[1:] != values[:-1]) & ~(np.isnan(values[1:]) & np.isnan(values[:-1]))
-        new[1:] |= columns["from_m"][1:] - columns["to_m"][:-1] > SAME_PLACE_M
-        starts = np.flatnonzero(new)
-        lasts = np.append(starts[1:], rows.size) - 1
-        for first, last in zip(starts.tolist(), lasts.tolist(), strict=True):
-            if codes[first] == Origin.NOWHERE:
-                continue
-            yield ValueOrigin(
-                name,
-                float(columns["from_m"][first]),
-                float(columns["to_m"][last]),
-                float(values[first]),
-                Origin(int(codes[first])).name.lower(),
-                str(method[first]) if codes[first] in (Origin.UNIT, Origin.ESTIMATED) else "",
-            )
-
-
-def _warnings(
-    found: Merged, columns: Mapping[str, Array], levels: Levels, values: UnitValues | None
-) -> tuple[str, ...]:
-    def unused(name: str) -> bool:
-        quantity = ground_quantity(name)
-        return quantity is not None and not quantity.used
-
-    unused_names = {name for name in (*found.numbers, *found.texts) if unused(name)}
-    given = {name for name, values in found.numbers.items() if not np.all(np.isnan(values))}
-    idle = sorted(unused_names | idle_observations(given))
-    warnings = []
-    if idle:
-        warnings.append(
-            "read, checked and carried along, but not computed with: " + ", ".join(idle)
-        )
-    if np.all(np.isnan(columns["water_head_m"])):
-        warnings.append("no water_head_m is given: stresses and strength are total")
-    elif levels.water is not None:
-        warnings.append("water heads follow from the water table, but stresses are total")
-    if values is not None and values.without_cautious:
-        warnings.append(
-            "no cautious value follows for some units, the stated one is used: "
-            + ", ".join(values.without_cautious)
-        )
-    return tuple(warnings)

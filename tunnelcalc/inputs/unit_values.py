@@ -43,6 +43,7 @@ class UnitValues:
     numbers: dict[str, Array] = field(default_factory=dict)
     rules: dict[str, Array] = field(default_factory=dict)
     without_cautious: list[str] = field(default_factory=list)
+    uses_deviations: bool = False
 
 
 def unit_values(units: TypedTable, chosen: str, rule: str) -> UnitValues:
@@ -52,7 +53,7 @@ def unit_values(units: TypedTable, chosen: str, rule: str) -> UnitValues:
     set for a quantity, the stated one is used; quantities of which some unit has statistics but
     no cautious value come back in `without_cautious`.
     """
-    found = UnitValues()
+    found = UnitValues(uses_deviations=chosen == CAUTIOUS and rule != NOMINAL)
     plain = [name for name in units.numbers if name not in GROUND]
     for name in plain:
         found.numbers[name] = units.numbers[name]
@@ -68,13 +69,13 @@ def unit_values(units: TypedTable, chosen: str, rule: str) -> UnitValues:
         for row in np.flatnonzero(there & ~quantity.limits.contain(better)).tolist():
             units.problems.add(
                 units.place(row, f"{name}_mean"),
-                f"gives the value {better[row]:.6g} ({how}), which is out of range",
+                f"gives the value {better[row]:.6g} ({how[row]}), which is out of range",
                 name=f'column "{name}_mean"',
                 allowed=quantity.allowed(),
                 fix="correct mean, deviation and number of tests, or enter a cautious value",
             )
         values[there] = better[there]
-        rules[there] = how
+        rules[there] = how[there]
         found.numbers[name], found.rules[name] = values, rules
         uncertain = ~np.isnan(_column(units, name + "_sd"))
         if chosen == CAUTIOUS and np.any(uncertain & ~there):
@@ -91,20 +92,24 @@ def _column(units: TypedTable, name: str) -> Array:
     return units.numbers.get(name, np.full(units.rows, np.nan))
 
 
-def _of_set(units: TypedTable, name: str, chosen: str, rule: str) -> tuple[Array, str]:
-    """Values (u,) of the chosen set, NaN where there is none, and what they are called."""
+def _of_set(units: TypedTable, name: str, chosen: str, rule: str) -> tuple[Array, Array]:
+    """Values (u,) of the chosen set, NaN where there is none, and what they are called (u,)."""
     nothing = np.full(units.rows, np.nan)
+    words = np.full(units.rows, "", dtype=object)
     if chosen == STATED:
-        return nothing, ""
+        return nothing, words
     if chosen == PROBABLE:
         probable = _column(units, name + "_probable")
         mean = _column(units, name + "_mean")
-        return np.where(np.isnan(probable), mean, probable), "most probable"
+        words[:] = "most probable"
+        return np.where(np.isnan(probable), mean, probable), words
     entered = _column(units, name + "_cautious")
+    words[:] = f"cautious, {NOMINAL}"
     if rule == NOMINAL:
-        return entered, "cautious, nominal"
+        return entered, words
     by_rule = _by_rule(units, name, rule)
-    return np.where(np.isnan(by_rule), entered, by_rule), f"cautious, {rule}"
+    words[~np.isnan(by_rule)] = f"cautious, {rule}"
+    return np.where(np.isnan(by_rule), entered, by_rule), words
 
 
 def _by_rule(units: TypedTable, name: str, rule: str) -> Array:

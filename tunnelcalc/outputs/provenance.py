@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+from itertools import chain
 from pathlib import Path
 
-from tunnelcalc.outputs.cells import number_text, write_table
-from tunnelcalc.project import Project, UnitTests
+from tunnelcalc.outputs.cells import number_text, number_texts, write_table
+from tunnelcalc.project import Project, UnitTests, ValueOrigins
 from tunnelcalc.rock_mass.laboratory import IntactFit
 from tunnelcalc.vocabulary import GROUND
 
@@ -29,25 +31,25 @@ LABORATORY_HEADER = (
 
 def write_provenance(folder: Path, project: Project) -> None:
     """Write `ground_values.csv`, and `laboratory.csv` where there are tests."""
-    write_table(
-        folder / "ground_values.csv",
-        VALUES_HEADER,
-        [
-            (
-                origin.quantity,
-                number_text(origin.from_m),
-                number_text(origin.to_m),
-                number_text(origin.value),
-                GROUND[origin.quantity].unit,
-                origin.origin,
-                origin.method,
-            )
-            for origin in project.origins
-        ],
-    )
+    rows = chain.from_iterable(_value_rows(origins) for origins in project.origins)
+    write_table(folder / "ground_values.csv", VALUES_HEADER, rows)
     if project.tests:
-        rows = [row for tests in project.tests for row in _laboratory_rows(tests)]
-        write_table(folder / "laboratory.csv", LABORATORY_HEADER, rows)
+        results = [row for tests in project.tests for row in _laboratory_rows(tests)]
+        write_table(folder / "laboratory.csv", LABORATORY_HEADER, results)
+
+
+def _value_rows(origins: ValueOrigins) -> Iterator[tuple[str, ...]]:
+    count = len(origins.value)
+    return zip(
+        [origins.quantity] * count,
+        number_texts(origins.from_m),
+        number_texts(origins.to_m),
+        number_texts(origins.value),
+        [GROUND[origins.quantity].unit] * count,
+        origins.origin.tolist(),
+        origins.method.tolist(),
+        strict=True,
+    )
 
 
 def _laboratory_rows(tests: UnitTests) -> list[tuple[str, ...]]:
