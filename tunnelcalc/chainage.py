@@ -17,8 +17,12 @@ KM_PLUS_M = "km+m"
 METRES = "m"
 M_PER_KM = 1000.0
 DECIMALS = 2
+ROUNDED_M = 0.5 * 10**-DECIMALS + SAME_PLACE_M
+"""A chainage rounded to its decimals still belongs to the stretch that ends this near. [m]"""
+FURTHEST_M = 1e7
+"""No chainage is larger, neither as written nor along the axis. [m]"""
 
-_KM_PLUS_M = re.compile(r"([+-]?\d+)\+(\d{3}(?:\.\d*)?)")
+_KM_PLUS_M = re.compile(r"([+-]?\d+)\+(\d{3}(?:\.\d*)?)", re.ASCII)
 FORMS = "12345.6 or 12+345.60"
 
 
@@ -66,7 +70,9 @@ class Notation:
         """Metres along the axis of a written chainage. Raises `ChainageError`."""
         plain, at_sign, stretch = text.strip().partition("@")
         written = self._number(plain.strip())
-        places = self._places(written)
+        places = self._places(written, ROUNDED_M)
+        if abs(written) > FURTHEST_M or any(abs(x) > FURTHEST_M for x in places.values()):
+            raise ChainageError(f"is beyond {FURTHEST_M / M_PER_KM:g} km")
         if at_sign:
             chosen = as_number(stretch)
             places = {k: x for k, x in places.items() if k + 1 == chosen}
@@ -75,21 +81,21 @@ class Notation:
         if max(places.values()) - min(places.values()) > SAME_PLACE_M:
             numbers = " or ".join(f"{text}@{k + 1}" for k in places)
             raise ChainageError(f"occurs twice: write {numbers}")
-        return next(iter(places.values()))
+        return min(places.values())
 
     def written(self, axis_m: Array) -> list[str]:
         """The chainage of places along the axis (n,), as it is written on this alignment."""
         return [self._text(x) for x in axis_m.tolist()]
 
-    def _places(self, written: float) -> dict[int, float]:
+    def _places(self, written: float, tolerance: float) -> dict[int, float]:
         """Axis metre of a number on each stretch on which it lies."""
         starts = self.starts()
         places = {}
         for stretch, (begin, first) in enumerate(starts):
             x = begin + self.direction * (written - first)
-            after = x >= begin - SAME_PLACE_M or stretch == 0
+            after = x >= begin - tolerance or stretch == 0
             end = starts[stretch + 1][0] if stretch + 1 < len(starts) else x
-            if after and x <= end + SAME_PLACE_M:
+            if after and x <= end + tolerance:
                 places[stretch] = x
         return places
 
@@ -109,9 +115,10 @@ class Notation:
         starts = self.starts()
         stretch = sum(x >= begin - SAME_PLACE_M for begin, _ in starts[1:])
         begin, first = starts[stretch]
-        number = first + self.direction * (x - begin)
+        # Rounded here, so that it is told apart as it will be read. Adding 0 drops the sign of -0.
+        number = round(first + self.direction * (x - begin), DECIMALS) + 0.0
         text = f"{self.prefix}{self._form(number)}"
-        return f"{text}@{stretch + 1}" if len(self._places(number)) > 1 else text
+        return f"{text}@{stretch + 1}" if len(self._places(number, ROUNDED_M)) > 1 else text
 
     def _form(self, number: float) -> str:
         if self.form == METRES:

@@ -21,13 +21,13 @@ CASES: dict[str, Case] = {
         "  allowed: a number at least 0.5, at most 30, in m",
         "  fix: add it",
         'project.yaml:4:3: key "opening.raduis_m" is unknown',
-        "  allowed: radius_m",
+        "  allowed: axis, profiles, radius_m, span_m, height_m, area_m2, equivalent_radius",
         '  fix: did you mean "radius_m"?',
     ),
     "key-unknown": (
         replaced("project.yaml", "carry_m: 5\n", "carry_m: 5\ncolour: grey\n"),
         'project.yaml:45:1: key "colour" is unknown',
-        "  allowed: title, opening, ground, methods, plugins, support_classes, criteria, schedule",
+        "  allowed: title, chainage, opening, ground, methods, plugins, support_classes, criteria, schedule",
         "  fix: remove it, or correct its name",
     ),
     "key-missing": (
@@ -85,19 +85,15 @@ CASES: dict[str, Case] = {
     "plugin-misspelt": (
         replaced("project.yaml", "support_classes:\n", "plugins: [shotcret]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "shotcret", a plugin that is not there',
-        (
-            "  allowed: csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
-            "steel_sets, validity_flags"
-        ),
+        "  allowed: ags_reader, csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
+        "steel_sets, validity_flags, xlsx_reader",
         '  fix: did you mean "shotcrete"?',
     ),
     "plugin-unknown": (
         replaced("project.yaml", "support_classes:\n", "plugins: [ice_lenses]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "ice_lenses", a plugin that is not there',
-        (
-            "  allowed: csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
-            "steel_sets, validity_flags"
-        ),
+        "  allowed: ags_reader, csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
+        "steel_sets, validity_flags, xlsx_reader",
         "  fix: install it, or remove the entry",
     ),
     "class-key-missing": (

@@ -132,7 +132,7 @@ CASES: dict[str, Case] = {
     "no-start": (
         replaced("ground.csv", "45,70", "  ,70"),
         'ground.csv:3:1: column "from_m" is empty',
-        "  allowed: a number at least -1e+07, at most 1e+07, in m",
+        "  allowed: a chainage",
         "  fix: write the chainage",
     ),
     "column-missing": (

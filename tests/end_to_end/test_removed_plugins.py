@@ -84,4 +84,5 @@ def test_without_the_schedule_tables_the_others_are_the_same(project: Path, tmp_
         "sections.csv",
         "classes.csv",
         "checks.csv",
+        "ground_values.csv",
     }

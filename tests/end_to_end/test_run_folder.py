@@ -8,7 +8,14 @@ from pathlib import Path
 
 from end_to_end.projects import completed, files_of, run, tables_of
 
-TABLES = {"sections.csv", "classes.csv", "checks.csv", "schedule.csv", "quantities.csv"}
+TABLES = {
+    "sections.csv",
+    "classes.csv",
+    "checks.csv",
+    "schedule.csv",
+    "quantities.csv",
+    "ground_values.csv",
+}
 INPUTS = {"project.yaml", "ground.csv", "units.csv"}
 
 

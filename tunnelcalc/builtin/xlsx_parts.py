@@ -86,7 +86,8 @@ def sheet_marks(part: IO[bytes]) -> SheetMarks:
 class _Scan:
     def __init__(self) -> None:
         self.marks = SheetMarks()
-        self.row = self.column = self.cells = 0
+        self.row = self.cells = 0
+        self.reference = ""
         self.formula = self.result = self.in_value = self.is_text = False
 
     def start(self, tag: str, attributes: dict[str, str]) -> None:
@@ -95,7 +96,7 @@ class _Scan:
             self.cells += 1
             if self.cells > MOST_CELLS_IN_A_ROW:
                 raise WorkbookError("has a row of too many cells", "save the table again as .xlsx")
-            self.column = _column(attributes.get("r", "")) or self.column + 1
+            self.reference = attributes.get("r", "")
             self.is_text = attributes.get("t") == "str"
             self.formula = self.result = False
         elif name == "v":
@@ -105,7 +106,7 @@ class _Scan:
             self.formula = True
         elif name == "row":
             self.row = int(attributes.get("r", self.row + 1))
-            self.column = self.cells = 0
+            self.cells = 0
         elif name == "mergeCell":
             self.marks.merged.append(attributes.get("ref", ""))
 
@@ -118,7 +119,8 @@ class _Scan:
         if name == "v":
             self.in_value = False
         elif name == "c" and self.formula and not self.result:
-            self.marks.without_result.append((self.row, self.column))
+            column = _column(self.reference) or self.cells
+            self.marks.without_result.append((self.row, column))
 
     def doctype(self, *_: object) -> None:
         raise WorkbookError(*_DOCUMENT_TYPE)

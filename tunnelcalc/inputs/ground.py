@@ -113,7 +113,7 @@ def read_ground(
     cut = _cut(intervals, opening.profiles, longest, reader)
     if cut is None:
         return None
-    return _ground(found, cut, opening, levels, tests, gaps, values, reader)
+    return _ground(found, cut, opening, levels, tests, gaps, values, intervals, reader)
 
 
 def _gaps(reader: Reader) -> Iterator[tuple[Gap, Where]]:
@@ -172,6 +172,7 @@ def _ground(
     tests: Mapping[str, UnitTests],
     gaps: Sequence[tuple[Gap, Where]],
     values: UnitValues | None,
+    intervals: Intervals,
     reader: Reader,
 ) -> Ground | None:
     rows = cut.interval
@@ -210,8 +211,14 @@ def _ground(
         tuple(value_origins(written, columns, origins, found.methods, rows)),
         tuple(tests.values()),
         tuple(sorted((gap for gap, _ in gaps), key=lambda gap: gap.from_m)),
-        ground_warnings(found, columns, levels, values),
+        (*_notes(intervals), *ground_warnings(found, columns, levels, values)),
     )
+
+
+def _notes(intervals: Intervals) -> tuple[str, ...]:
+    """What the readers of the tables want a user to know."""
+    tables = [table for table in (intervals.table, intervals.units) if table is not None]
+    return tuple(f"{table.raw.name}: {note}" for table in tables for note in table.raw.notes)
 
 
 def _profile_columns(profiles: Sequence[Profile], middle: Array) -> dict[str, Array]:

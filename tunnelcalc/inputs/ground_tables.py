@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
 
-from tunnelcalc.errors import Where
 from tunnelcalc.inputs.aliases import read_aliases
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.inputs.headers import understood
@@ -110,7 +109,7 @@ def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None
         if name not in raw.header:
             hint = suggestion(name, raw.header)
             reader.problems.add(
-                Where(raw.file, raw.header_line),
+                raw.head(),
                 "is missing",
                 name=f'column "{name}"',
                 allowed="the columns " + ", ".join(required),
@@ -118,7 +117,7 @@ def _check_frame(reader: Reader, raw: RawTable, required: Sequence[str]) -> None
             )
     if not raw.lines and not raw.problems:
         reader.problems.add(
-            Where(raw.file), "has a header and no rows", fix="write one row an interval or unit"
+            raw.whole(), "has a header and no rows", fix="write one row an interval or unit"
         )
 
 

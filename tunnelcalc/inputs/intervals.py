@@ -45,7 +45,7 @@ class Intervals:
     @property
     def files(self) -> str:
         """The tables' files, for "neither ... gives it"."""
-        return self.table.raw.file + (f" nor {self.units.raw.file}" if self.units else "")
+        return self.table.raw.name + (f" nor {self.units.raw.name}" if self.units else "")
 
     def has(self, name: str) -> bool:
         """Whether either table has a column."""
@@ -131,7 +131,7 @@ class Intervals:
             found[row] = rows.get(name, -1)
             if found[row] < 0:
                 hint = suggestion(name, rows)
-                what = f"holds {quoted(name)}, which {self.units.raw.file} does not name"
+                what = f"holds {quoted(name)}, which {self.units.raw.name} does not name"
                 add = "add the unit to the units table"
                 self.problems.add(
                     self.table.place(row, "ground_unit"),

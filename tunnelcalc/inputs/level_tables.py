@@ -116,7 +116,7 @@ def check_reach(levels: Levels, chainage_m: Array, problems: Problems, reader: R
     }
     named = [(name, line) for name, line in lines.items() if line is not None]
     named += [(LAYERS, layer.base) for layer in levels.layers]
-    for name, line in dict(named).items():
+    for name, line in named:
         outside = np.isnan(line.at(chainage_m))
         if np.any(outside):
             first, last = float(chainage_m[outside][0]), float(chainage_m[outside][-1])
@@ -208,10 +208,10 @@ def _in_order(table: TypedTable, rows: Array, level: str) -> Line | None:
     order = np.argsort(chainage, kind="stable")
     chainage, levels = chainage[order], levels[order]
     twice = np.flatnonzero(np.diff(chainage) <= SAME_PLACE_M)
-    for position in twice.tolist():
+    for row in rows[order[twice + 1]].tolist():
         table.problems.add(
-            table.place(int(rows[order[position + 1]]), CHAINAGE),
-            f"holds {chainage[position + 1]:.10g} m, where a level stands already",
+            table.place(row, CHAINAGE),
+            f"holds {quoted(_cell(table, row))}, where a level stands already",
             name=f'column "{CHAINAGE}"',
             allowed="each place once",
             fix="remove one of the two rows",
@@ -222,3 +222,8 @@ def _in_order(table: TypedTable, rows: Array, level: str) -> Line | None:
         )
         return None
     return None if twice.size else Line(chainage, levels)
+
+
+def _cell(table: TypedTable, row: int) -> str:
+    """A chainage as it is written."""
+    return table.raw.written(row, table.raw.header.index(CHAINAGE))

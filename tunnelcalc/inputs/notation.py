@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from tunnelcalc.chainage import KM_PLUS_M, METRES, Equation, Notation
 from tunnelcalc.inputs.values import Reader
+from tunnelcalc.text import quoted
 
 ASCENDING, DESCENDING = "ascending", "descending"
 
@@ -14,7 +15,7 @@ def read_notation(reader: Reader) -> Notation:
     if table is None:
         return Notation()
     form = table.choice("notation", (METRES, KM_PLUS_M), required=False) or METRES
-    prefix = table.text("prefix", required=False) or ""
+    prefix = _prefix(table)
     direction = table.choice("direction", (ASCENDING, DESCENDING), required=False) or ASCENDING
     sign = -1 if direction == DESCENDING else 1
     table.notation = Notation(form, prefix)
@@ -28,6 +29,22 @@ def read_notation(reader: Reader) -> Notation:
     table.finish()
     _check_order(equations, sign, start)
     return Notation(form, prefix, sign, start or 0.0, tuple(e for _, e in equations))
+
+
+def _prefix(table: Reader) -> str:
+    """What stands before a chainage, with the blank after it if one is written."""
+    prefix = table.text("prefix", required=False)
+    if prefix is None:
+        return ""
+    if prefix[0] in "+-.0123456789" or "@" in prefix:
+        table.complain(
+            "prefix",
+            f"holds {quoted(prefix)}, which may be taken for a part of the number",
+            allowed="text that begins with no digit, sign or point, and holds no @",
+            fix="correct the prefix, or leave it out",
+        )
+        return ""
+    return f"{prefix} " if table.ends_in_blank("prefix") else prefix
 
 
 def _check_order(equations: list[tuple[Reader, Equation]], sign: int, start: float | None) -> None:

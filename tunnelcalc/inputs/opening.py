@@ -125,7 +125,7 @@ def check_profiles(profiles: Sequence[Profile], from_m: Array, to_m: Array, read
     ):
         if missing > SAME_PLACE_M:
             reader.complain(
-                "profiles",
+                "profiles" if reader.has("profiles") else "opening",
                 f"leave {span(start, end)} without a profile",
                 fix="extend a profile, or add one",
             )

@@ -122,7 +122,7 @@ def typed(
     seen: dict[str, int] = {}
     for column, name in enumerate(raw.header):
         if name in seen:
-            first = f"stands twice, first in column {seen[name] + 1}"
+            first = f"stands twice, first in column {raw.number_of(seen[name])}"
             _about_header(table, column, first, "keep one of the two")
             continue
         seen[name] = column
@@ -242,7 +242,7 @@ def _numbers(
         what = "not a number" if number is None else "out of range"
         table.problems.add(
             table.raw.place(row, column),
-            f"holds {quoted(text)}, which is {what}",
+            f"holds {quoted(table.raw.written(row, column))}, which is {what}",
             name=f"column {quoted(table.raw.header[column])}",
             allowed=limits.describe(unit),
             context=context(row),

@@ -41,6 +41,11 @@ class Reader:
         entry = self.table.entries.get(key)
         return entry is not None and isinstance(entry[1], Listing)
 
+    def ends_in_blank(self, key: str) -> bool:
+        """Whether a text has a blank at its end, which `text` takes off."""
+        entry = self.table.entries.get(key)
+        return entry is not None and isinstance(entry[1], Scalar) and entry[1].text.endswith(" ")
+
     def label(self, key: str) -> str:
         return f"key {quoted(self.path + key)}"
 

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from tunnelcalc.arrays import Array
+from tunnelcalc.arrays import SAME_PLACE_M, Array
 
 KPA_PER_MPA = 1000.0
 
@@ -20,7 +20,8 @@ class Line:
 
     def at(self, chainage_m: Array) -> Array:
         """Level (n,) by interpolation; NaN outside the line: nothing is extrapolated. [m]"""
-        inside = (chainage_m >= self.chainage_m[0]) & (chainage_m <= self.chainage_m[-1])
+        first, last = self.chainage_m[0] - SAME_PLACE_M, self.chainage_m[-1] + SAME_PLACE_M
+        inside = (chainage_m >= first) & (chainage_m <= last)
         level = np.interp(chainage_m, self.chainage_m, self.level_m)
         return np.where(inside, level, np.nan)
 

@@ -4,8 +4,13 @@ from __future__ import annotations
 
 import statistics
 import sys
+from pathlib import Path
 
 import pytest
+from end_to_end.projects import Damage, all_of, content
+from end_to_end.projects import replaced as replaced_in
+from unit.inputs.reading import read as read_project
+from unit.inputs.reading import told as told_of_project
 
 from tunnelcalc.api import RawTable
 from tunnelcalc.builtin.ags_reader import AgsReader
@@ -264,3 +269,32 @@ def test_nothing_is_printed(capfd: pytest.CaptureFixture[str]):
     told(REFUSED["row-too-short"][0])
     read(ags())
     assert capfd.readouterr() == ("", "")
+
+
+GROUND = """\
+from_m,to_m,ground_unit,cover_m,unit_weight_kn_m3,mi,gsi,disturbance,poisson_ratio
+0,40,SST,60,25,17,62,0,0.25
+40,80,SLT,75,25.5,7,35,0,0.28
+"""
+
+
+def with_ags_units(values: str) -> Damage:
+    return all_of(
+        content("ground.csv", GROUND.encode()),
+        content("site.ags", ags().encode()),
+        replaced_in("project.yaml", "units: units.csv", f"units: site.ags\n{values}"),
+    )
+
+
+def test_a_project_says_how_values_follow_from_the_statistics(tmp_path: Path):
+    project = read_project(tmp_path, with_ags_units("  values: probable"))
+    by_unit = dict(
+        zip(project.ground["ground_unit"], project.ground["intact_strength_mpa"], strict=True)
+    )
+    assert by_unit == {"SST": 55.75, "SLT": 12.5}
+
+
+def test_the_mean_is_not_taken_as_the_value_unasked(tmp_path: Path):
+    told_here = told_of_project(tmp_path, with_ags_units(""))
+    assert told_here
+    assert all("intact_strength_mpa" in line for line in told_here)
