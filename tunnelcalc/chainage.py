@@ -85,7 +85,8 @@ class Notation:
 
     def written(self, axis_m: Array) -> list[str]:
         """The chainage of places along the axis (n,), as it is written on this alignment."""
-        return [self._text(x) for x in axis_m.tolist()]
+        starts = self.starts()
+        return [self._text(x, starts) for x in axis_m.tolist()]
 
     def _places(self, written: float, tolerance: float) -> dict[int, float]:
         """Axis metre of a number on each stretch on which it lies."""
@@ -111,14 +112,14 @@ class Notation:
             raise ChainageError("is not a chainage")
         return number
 
-    def _text(self, x: float) -> str:
-        starts = self.starts()
+    def _text(self, x: float, starts: tuple[tuple[float, float], ...]) -> str:
         stretch = sum(x >= begin - SAME_PLACE_M for begin, _ in starts[1:])
         begin, first = starts[stretch]
         # Rounded here, so that it is told apart as it will be read. Adding 0 drops the sign of -0.
         number = round(first + self.direction * (x - begin), DECIMALS) + 0.0
         text = f"{self.prefix}{self._form(number)}"
-        return f"{text}@{stretch + 1}" if len(self._places(number, ROUNDED_M)) > 1 else text
+        twice = len(starts) > 1 and len(self._places(number, ROUNDED_M)) > 1
+        return f"{text}@{stretch + 1}" if twice else text
 
     def _form(self, number: float) -> str:
         if self.form == METRES:

@@ -241,6 +241,7 @@ WORDS = {
     "chainage": "middle of the section, as the project writes chainages",
     "from_chainage": "start, as the project writes chainages",
     "to_chainage": "end, as the project writes chainages",
+    "governing_chainage": "middle of the governing section, as the project writes chainages",
     "profile": "name of the opening's profile",
     "quantity": "a ground quantity",
     "value": "in the unit of its row",

@@ -27,7 +27,8 @@ CASES: dict[str, Case] = {
     "key-unknown": (
         replaced("project.yaml", "carry_m: 5\n", "carry_m: 5\ncolour: grey\n"),
         'project.yaml:45:1: key "colour" is unknown',
-        "  allowed: title, chainage, opening, ground, methods, plugins, support_classes, criteria, schedule",
+        "  allowed: title, chainage, opening, ground, methods, plugins, support_classes, criteria, "
+        "schedule",
         "  fix: remove it, or correct its name",
     ),
     "key-missing": (

@@ -75,7 +75,7 @@ def groups_of(file: str, text: str, problems: Problems) -> dict[str, Group]:
         problems.add(
             Where(file),
             "needs the library python-ags4, which is not installed",
-            fix="install it: pip install 'tunnelcalc[ags]'",
+            fix="install python-ags4, or tunnelcalc with its extra ags",
         )
         problems.raise_if_any()
         raise

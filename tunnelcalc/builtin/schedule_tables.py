@@ -30,13 +30,14 @@ class ScheduleTables:
     name = "schedule_tables"
 
     def write(self, result: api.RunResult, folder: Path) -> Iterable[str]:
-        notation = result.project.notation
         rows = [_row(zone) for zone in result.zones]
         header: tuple[str, ...] = SCHEDULE_HEADER
-        if not notation.is_plain:
-            header = (*header[:2], "from_chainage", "to_chainage", *header[2:])
-            ends = [notation.written(np.array([z.from_m, z.to_m])) for z in result.zones]
-            rows = [(*r[:2], *end, *r[2:]) for r, end in zip(rows, ends, strict=True)]
+        if not result.project.notation.is_plain:
+            header = _with_written(header, "from_chainage", "to_chainage", "governing_chainage")
+            rows = [
+                _with_written(row, *_written(result.project, zone))
+                for row, zone in zip(rows, result.zones, strict=True)
+            ]
         api.write_table(folder / "schedule.csv", header, rows)
         api.write_table(
             folder / "quantities.csv",
@@ -47,6 +48,19 @@ class ScheduleTables:
             ],
         )
         return ("schedule.csv", "quantities.csv")
+
+
+def _with_written(cells: tuple[str, ...], start: str, end: str, governs: str) -> tuple[str, ...]:
+    """A row with chainages as the project writes them, each behind its metres."""
+    after = SCHEDULE_HEADER.index("governing_chainage_m") + 1
+    return (*cells[:2], start, end, *cells[2:after], governs, *cells[after:])
+
+
+def _written(project: api.Project, zone: api.Zone) -> tuple[str, str, str]:
+    governs = zone.governing_chainage_m
+    notation = project.notation
+    start, end = notation.written(np.array([zone.from_m, zone.to_m]))
+    return start, end, "" if np.isnan(governs) else notation.written(np.array([governs]))[0]
 
 
 def _row(zone: api.Zone) -> tuple[str, ...]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.inputs.estimates import observations_of
 from tunnelcalc.inputs.intervals import Intervals
 from tunnelcalc.inputs.merging import Merged
 from tunnelcalc.vocabulary import GROUND
@@ -20,7 +21,7 @@ def check_complete(found: Merged, intervals: Intervals, cover_from_levels: bool)
     for name in REQUIRED:
         absent = np.isnan(found.numbers[name])
         given = intervals.has(name) or not np.all(absent)
-        _tell(intervals, name, given, absent & ~intervals.told((name,)))
+        _tell(intervals, name, given, absent & ~intervals.told((name, *observations_of(name))))
     measured, cover, weight = STRESS_SOURCES
     depth = found.numbers[cover] if not cover_from_levels else np.zeros(found.count)
     absent = np.isnan(found.numbers[measured]) & np.isnan(depth * found.numbers[weight])
@@ -35,7 +36,7 @@ def _tell(intervals: Intervals, name: str, given: bool, absent: Array) -> None:
     allowed = quantity.allowed() if quantity else STRESS_RULE
     label = f'column "{name}"' if quantity else name
     units = intervals.units
-    if not given:
+    if not given and np.any(absent):
         neither = f"is missing: neither {intervals.files} gives it"
         intervals.problems.add(
             intervals.table.raw.head(),

@@ -13,9 +13,9 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.inputs.intervals import Intervals
+from tunnelcalc.inputs.laboratory_tests import FROM_TESTS, Tests
 from tunnelcalc.inputs.merging import Merged, Origin
 from tunnelcalc.inputs.values import Reader
-from tunnelcalc.project import UnitTests
 from tunnelcalc.rock_mass import observations
 from tunnelcalc.rock_mass.observations import RMR89_DRY_RANGE
 from tunnelcalc.vocabulary import GROUND
@@ -80,7 +80,8 @@ ESTIMATORS = (
     ),
 )
 ESTIMATED = ("gsi", "intact_strength_mpa", "mi")
-FROM_TESTS = ("intact_strength_mpa", "mi")
+SAME_VALUE = 1e-9
+"""Sources that lie closer than this share of the larger value agree. [-]"""
 
 
 def source_names(quantity: str) -> tuple[str, ...]:
@@ -88,6 +89,11 @@ def source_names(quantity: str) -> tuple[str, ...]:
     relations = tuple(e.name for e in ESTIMATORS if e.quantity == quantity)
     tests = (LABORATORY,) if quantity in FROM_TESTS else ()
     return (MEASURED, *relations, *tests)
+
+
+def observations_of(quantity: str) -> tuple[str, ...]:
+    """From what a quantity may be estimated."""
+    return tuple(need for e in ESTIMATORS if e.quantity == quantity for need in e.needs)
 
 
 def idle_observations(names: Container[str]) -> set[str]:
@@ -125,17 +131,21 @@ def read_preferences(reader: Reader) -> dict[str, tuple[str, ...]]:
 def estimate(
     found: Merged,
     intervals: Intervals,
-    tests: Mapping[str, UnitTests],
+    tests: Tests,
     preferences: Mapping[str, Sequence[str]],
 ) -> None:
     """Fill in estimated values, their origin, and the spread between sources."""
     for quantity in ESTIMATED:
-        sources = _sources(found, intervals, tests, quantity)
+        sources = _sources(found, intervals, tests, quantity, preferences[quantity])
         _choose(found, intervals, quantity, sources, preferences[quantity])
 
 
 def _sources(
-    found: Merged, intervals: Intervals, tests: Mapping[str, UnitTests], quantity: str
+    found: Merged,
+    intervals: Intervals,
+    tests: Tests,
+    quantity: str,
+    preference: Sequence[str],
 ) -> dict[str, tuple[Array, str]]:
     """Values (i,) by source, NaN where it has none, and what the source is called."""
     sources: dict[str, tuple[Array, str]] = {}
@@ -146,30 +156,39 @@ def _sources(
         if wanted and all(name in found.numbers for name in estimator.needs):
             needed = [found.numbers[name] for name in estimator.needs]
             values = estimator.estimate(*needed)
-            _tell_out_of_range(intervals, estimator, needed, values)
+            if not preference or estimator.name in preference:
+                _tell_out_of_range(found, intervals, estimator, needed, values)
             sources[estimator.name] = (values, f"{estimator.name}: {estimator.source}")
-    if quantity in FROM_TESTS and tests:
-        units = found.texts["ground_unit"].tolist()
-        values = np.array([tests[u].value(quantity) if u in tests else np.nan for u in units])
+    if quantity in FROM_TESTS and tests.by_unit:
+        values = tests.values_of(quantity, found.texts["ground_unit"])
         sources[LABORATORY] = (values, "laboratory: regression of Hoek & Brown (1980)")
     return sources
 
 
 def _tell_out_of_range(
-    intervals: Intervals, estimator: Estimator, needed: Sequence[Array], values: Array
+    found: Merged,
+    intervals: Intervals,
+    estimator: Estimator,
+    needed: Sequence[Array],
+    values: Array,
 ) -> None:
+    """Tell it where the observation stands: of a ground unit once, not in each interval."""
     given = np.all(~np.isnan(np.array(needed)), axis=0)
-    for row in np.flatnonzero(given & np.isnan(values)).tolist():
+    outside = given & np.isnan(values)
+    intervals.tell_no_more(estimator.quantity, outside)
+    first = estimator.needs[0]
+    for row in np.flatnonzero(outside).tolist():
         observed = ", ".join(
             f"{name} {column[row]:g}" for name, column in zip(estimator.needs, needed, strict=True)
         )
+        where, context = intervals.source(row, first, found.origins[first][row] == Origin.UNIT)
         intervals.problems.add(
-            intervals.table.place(row, estimator.needs[0]),
+            where,
             f"gives no {estimator.quantity}: {observed} is outside the range of its relation",
-            name=f'column "{estimator.needs[0]}"',
+            name=f'column "{first}"',
             allowed=f"{estimator.allowed} ({estimator.source})",
-            context=intervals.context(row),
-            fix=f"correct the observation, or state {estimator.quantity} itself",
+            context=context,
+            fix=f"correct the observation, or leave it out and state {estimator.quantity} itself",
         )
 
 
@@ -202,7 +221,8 @@ def _choose(
         lowest = np.min(np.where(np.isnan(stacked), np.inf, stacked), axis=0)
         highest = np.max(np.where(np.isnan(stacked), -np.inf, stacked), axis=0)
         spread = np.subtract(highest, lowest, out=np.full(found.count, np.nan), where=count > 1)
-        found.add(f"{quantity}_spread", spread)
+        same = spread <= SAME_VALUE * highest
+        found.add(f"{quantity}_spread", np.where(same, 0.0, spread))
 
 
 def _tell_undecided(

@@ -19,7 +19,7 @@ from tunnelcalc.inputs.estimates import (
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.inputs.ground_tables import TABLE, UNITS, check_carried, other_columns, read_table
 from tunnelcalc.inputs.intervals import Intervals
-from tunnelcalc.inputs.laboratory_tests import read_tests
+from tunnelcalc.inputs.laboratory_tests import FROM_TESTS, read_tests
 from tunnelcalc.inputs.level_tables import (
     TERRAIN,
     Levels,
@@ -104,8 +104,10 @@ def read_ground(
     intervals = Intervals(table, units, reader.notation, reader.problems)
     intervals.check_order(gaps)
     found = merged(intervals, values)
+    for name in FROM_TESTS:
+        intervals.tell_no_more(name, tests.told_of(found.texts["ground_unit"]))
     estimate(found, intervals, tests, preferences)
-    check_complete(found, intervals, levels.terrain is not None)
+    check_complete(found, intervals, reader.has(TERRAIN))
     if opening.profiles and np.all(np.isfinite(intervals.from_m + intervals.to_m)):
         check_profiles(opening.profiles, intervals.from_m, intervals.to_m, opening.reader)
     if len(reader.problems) or not opening.profiles:
@@ -113,7 +115,7 @@ def read_ground(
     cut = _cut(intervals, opening.profiles, longest, reader)
     if cut is None:
         return None
-    return _ground(found, cut, opening, levels, tests, gaps, values, intervals, reader)
+    return _ground(found, cut, opening, levels, tests.by_unit, gaps, values, intervals, reader)
 
 
 def _gaps(reader: Reader) -> Iterator[tuple[Gap, Where]]:
@@ -250,11 +252,13 @@ def _check_cover(
     columns: Mapping[str, Array], origins: Mapping[str, Array], reader: Reader
 ) -> None:
     bare = (origins["cover_m"] == Origin.LEVELS) & (columns["cover_m"] < 0)
-    for row in np.flatnonzero(bare).tolist():
-        at = alignment.span(float(columns["from_m"][row]), float(columns["to_m"][row]))
+    if np.any(bare):
+        rows = np.flatnonzero(bare)
+        deepest = -float(np.min(columns["cover_m"][rows]))
+        first = alignment.span(float(columns["from_m"][rows[0]]), float(columns["to_m"][rows[0]]))
         reader.complain(
             TERRAIN,
-            f"lies {-columns['cover_m'][row]:.6g} m below the crown, section {at}",
+            f"lies up to {deepest:.6g} m below the crown, in {rows.size} sections from {first} on",
             allowed="terrain at or above the crown",
             fix="correct the levels, or end the alignment at the portal",
         )

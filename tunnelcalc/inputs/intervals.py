@@ -60,6 +60,17 @@ class Intervals:
                 told |= self.units.wrong_in(name)[self.unit_row] | (self.unit_row < 0)
         return told
 
+    def tell_no_more(self, name: str, rows: Array) -> None:
+        """That intervals (a mask (i,)) have no value of a quantity is told already."""
+        self.table.wrong[name] = self.table.wrong_in(name) | rows
+
+    def source(self, row: int, name: str, of_unit: bool) -> tuple[Where, str]:
+        """Where a value of an interval stands, and words that help to find it."""
+        if not of_unit or self.units is None or self.unit_row is None:
+            return self.table.place(row, name), self.context(row)
+        unit = str(self.table.texts["ground_unit"][row])
+        return self.units.place(int(self.unit_row[row]), name), f"ground unit {quoted(unit)}"
+
     def context(self, row: int) -> str:
         """Words that help to find an interval."""
         start, end = float(self.from_m[row]), float(self.to_m[row])

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Mapping
+from dataclasses import dataclass
 
 import numpy as np
 
@@ -20,27 +21,51 @@ from tunnelcalc.vocabulary import Limits
 TESTS = "tests"
 UNIT, MINOR, MAJOR = "ground_unit", "minor_stress_mpa", "major_stress_mpa"
 SPECIMEN, DATE = "specimen", "date"
+FROM_TESTS = ("intact_strength_mpa", "mi")
+"""What follows from tests."""
 STRESSES = {MINOR: Limits(0, 1000), MAJOR: Limits(0, 3000, above=True)}
 
 
-def read_tests(reader: Reader, folder: ProjectFolder, registry: Registry) -> dict[str, UnitTests]:
+@dataclass(frozen=True, slots=True)
+class Tests:
+    """Results by ground unit; `told` are the units whose tests have a problem, None for all."""
+
+    by_unit: Mapping[str, UnitTests]
+    told: frozenset[str] | None = frozenset()
+
+    def values_of(self, quantity: str, units: Array) -> Array:
+        """Values (i,) by the name (i,) of the ground unit, NaN where it has no result."""
+        found = {unit: tests.value(quantity) for unit, tests in self.by_unit.items()}
+        return np.array([found.get(unit, np.nan) for unit in units.tolist()])
+
+    def told_of(self, units: Array) -> Array:
+        """Mask (i,) of the names (i,) whose tests have a problem."""
+        if self.told is None:
+            return np.ones(units.shape, dtype=bool)
+        return np.array([unit in self.told for unit in units.tolist()], dtype=bool)
+
+
+def read_tests(reader: Reader, folder: ProjectFolder, registry: Registry) -> Tests:
     """Results by ground unit; empty where the project names no table of tests."""
-    path = reader.text(TESTS, "the path of a table", required=False)
+    if not reader.has(TESTS):
+        reader.known[TESTS] = None
+        return Tests({})
+    path = reader.text(TESTS, "the path of a table")
     if path is None:
-        return {}
+        return Tests({}, None)
     raw = open_table(folder, path, reader.place(TESTS), reader.label(TESTS), registry)
     if raw is None:
-        return {}
+        return Tests({}, None)
     table = typed_columns(
         raw, reader.problems, STRESSES, "MPa", (UNIT, SPECIMEN, DATE), required=(UNIT, *STRESSES)
     )
     if not all(table.has(name) for name in (UNIT, *STRESSES)):
-        return {}
-    _check_rows(table)
-    return _by_unit(table, reader.problems)
+        return Tests({}, None)
+    return _by_unit(table, reader.problems, _wrong_rows(table))
 
 
-def _check_rows(table: TypedTable) -> None:
+def _wrong_rows(table: TypedTable) -> Array:
+    """Mask (r,) of the rows that cannot be used; what is wrong with them is told."""
     minor, major = table.numbers[MINOR], table.numbers[MAJOR]
     for row in range(table.rows):
         for name, values in ((MINOR, minor), (MAJOR, major)):
@@ -52,19 +77,21 @@ def _check_rows(table: TypedTable) -> None:
             _complain(
                 table, row, MAJOR, f"is not above {MINOR}", "write the major stress at failure"
             )
+    return ~(major > minor)
 
 
 def _complain(table: TypedTable, row: int, name: str, message: str, fix: str) -> None:
     table.problems.add(table.place(row, name), message, name=f'column "{name}"', fix=fix)
 
 
-def _by_unit(table: TypedTable, problems: Problems) -> dict[str, UnitTests]:
-    usable = ~np.isnan(table.numbers[MINOR]) & ~np.isnan(table.numbers[MAJOR])
+def _by_unit(table: TypedTable, problems: Problems, wrong: Array) -> Tests:
+    """A unit with a wrong row gives nothing: with the row mended it may give something else."""
     names = table.texts[UNIT]
     found: dict[str, UnitTests] = {}
+    told = set(names[wrong].tolist())
     for unit in dict.fromkeys(names.tolist()):
-        rows = np.flatnonzero((names == unit) & usable)
-        if not unit or not rows.size:
+        rows = np.flatnonzero(names == unit)
+        if not unit or unit in told:
             continue
         result = intact_rock_from_tests(table.numbers[MINOR][rows], table.numbers[MAJOR][rows])
         if result.reason:
@@ -73,15 +100,16 @@ def _by_unit(table: TypedTable, problems: Problems) -> dict[str, UnitTests]:
                 f"the tests of {quoted(unit)} give no strength: {result.reason}",
                 fix="add or correct tests, or take the unit out of the table",
             )
+            told.add(unit)
             continue
         found[unit] = UnitTests(unit, result, _specimens(table, rows, result))
-    return found
+    return Tests(found, frozenset(told))
 
 
 def _specimens(table: TypedTable, rows: Array, result: IntactTests) -> tuple[str, ...]:
     named = table.texts.get(SPECIMEN)
-    words: Callable[[int], str] = lambda row: f"line {table.raw.lines[row]}"  # noqa: E731
-    return tuple(
-        str(named[rows[k]]) if named is not None and named[rows[k]] else words(int(rows[k]))
-        for k in result.outliers
-    )
+    words = []
+    for row in rows[list(result.outliers)].tolist():
+        name = "" if named is None else str(named[row])
+        words.append(name or f"line {table.raw.lines[row]}")
+    return tuple(words)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 
 import numpy as np
 
@@ -162,8 +163,26 @@ def _layers(
                 fix="give the unit a unit_weight_kn_m3 in the units table",
             )
         elif line is not None:
-            layers.append(Layer(weights[unit], line))
-    return tuple(layers)
+            layers.append(Layer(weights[unit], line, unit))
+    return tuple(layers) if _from_top(layers, table) else ()
+
+
+def _from_top(layers: Sequence[Layer], table: TypedTable) -> bool:
+    """Whether no base lies above one that is listed before it; else a problem is told."""
+    for upper, lower in pairwise(layers):
+        places = np.union1d(upper.base.chainage_m, lower.base.chainage_m)
+        above = lower.base.at(places) - upper.base.at(places) > SAME_PLACE_M
+        if np.any(above):
+            table.problems.add(
+                table.raw.whole(),
+                f"has the base of {quoted(lower.unit)} above that of {quoted(upper.unit)}, which "
+                "is listed before it",
+                name=f'column "{BASE}"',
+                allowed="layers from the top down, with bases that meet but do not cross",
+                fix="sort the layers from the top down, or correct the levels",
+            )
+            return False
+    return True
 
 
 def _table(

@@ -50,7 +50,8 @@ def unit_values(units: TypedTable, chosen: str, rule: str) -> UnitValues:
     """Choose the values of a units table.
 
     `chosen` is one of VALUE_SETS, `rule` one of RULES. Where a unit has no value of the chosen
-    set for a quantity, the stated one is used; quantities of which some unit has statistics but
+    set for a quantity, the stated one is used; an entered cautious value goes before one by a
+    rule; quantities of which some unit has statistics but
     no cautious value come back in `without_cautious`.
     """
     found = UnitValues(uses_deviations=chosen == CAUTIOUS and rule != NOMINAL)
@@ -66,11 +67,12 @@ def unit_values(units: TypedTable, chosen: str, rule: str) -> UnitValues:
         rules = np.full(units.rows, "", dtype=object)
         better, how = _of_set(units, name, chosen, rule)
         there = ~np.isnan(better)
+        column = f"{name}_mean" if f"{name}_mean" in units.numbers else name
         for row in np.flatnonzero(there & ~quantity.limits.contain(better)).tolist():
             units.problems.add(
-                units.place(row, f"{name}_mean"),
+                units.place(row, column),
                 f"gives the value {better[row]:.6g} ({how[row]}), which is out of range",
-                name=f'column "{name}_mean"',
+                name=f'column "{column}"',
                 allowed=quantity.allowed(),
                 fix="correct mean, deviation and number of tests, or enter a cautious value",
             )
@@ -108,8 +110,8 @@ def _of_set(units: TypedTable, name: str, chosen: str, rule: str) -> tuple[Array
     if rule == NOMINAL:
         return entered, words
     by_rule = _by_rule(units, name, rule)
-    words[~np.isnan(by_rule)] = f"cautious, {rule}"
-    return np.where(np.isnan(by_rule), entered, by_rule), words
+    words[np.isnan(entered)] = f"cautious, {rule}"
+    return np.where(np.isnan(entered), by_rule, entered), words
 
 
 def _by_rule(units: TypedTable, name: str, rule: str) -> Array:

@@ -31,19 +31,24 @@ LABORATORY_HEADER = (
 
 def write_provenance(folder: Path, project: Project) -> None:
     """Write `ground_values.csv`, and `laboratory.csv` where there are tests."""
-    rows = chain.from_iterable(_value_rows(origins) for origins in project.origins)
-    write_table(folder / "ground_values.csv", VALUES_HEADER, rows)
+    rows = chain.from_iterable(_value_rows(origins, project) for origins in project.origins)
+    written = () if project.notation.is_plain else ("from_chainage", "to_chainage")
+    header = (*VALUES_HEADER[:3], *written, *VALUES_HEADER[3:])
+    write_table(folder / "ground_values.csv", header, rows)
     if project.tests:
         results = [row for tests in project.tests for row in _laboratory_rows(tests)]
         write_table(folder / "laboratory.csv", LABORATORY_HEADER, results)
 
 
-def _value_rows(origins: ValueOrigins) -> Iterator[tuple[str, ...]]:
+def _value_rows(origins: ValueOrigins, project: Project) -> Iterator[tuple[str, ...]]:
     count = len(origins.value)
+    ends = (origins.from_m, origins.to_m)
+    written = () if project.notation.is_plain else map(project.notation.written, ends)
     return zip(
         [origins.quantity] * count,
         number_texts(origins.from_m),
         number_texts(origins.to_m),
+        *written,
         number_texts(origins.value),
         [GROUND[origins.quantity].unit] * count,
         origins.origin.tolist(),

@@ -32,6 +32,7 @@ class Layer:
 
     unit_weight_kn_m3: float
     base: Line
+    unit: str = ""
 
 
 def layered_stress_mpa(

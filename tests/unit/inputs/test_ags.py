@@ -261,7 +261,7 @@ def test_without_the_library_the_remedy_is_told(monkeypatch: pytest.MonkeyPatch)
     monkeypatch.setitem(sys.modules, "python_ags4", None)
     assert told(ags()) == [
         "site.ags: needs the library python-ags4, which is not installed",
-        "  fix: install it: pip install 'tunnelcalc[ags]'",
+        "  fix: install python-ags4, or tunnelcalc with its extra ags",
     ]
 
 
