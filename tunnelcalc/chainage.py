@@ -101,8 +101,8 @@ class Notation:
         return places
 
     def _number(self, text: str) -> float:
-        if self.prefix and text.startswith(self.prefix):
-            text = text.removeprefix(self.prefix).strip()
+        # With or without the blank that ends the prefix.
+        text = text.removeprefix(self.prefix.strip()).strip()
         match = _KM_PLUS_M.fullmatch(text)
         if match:
             km, metres = float(match[1]), float(match[2])

@@ -232,7 +232,7 @@ CASES: dict[str, Case] = {
         replaced("ground.csv", "120,150,gouge,200,", "120,150,gouge,200"),
         "ground.csv:5: has 4 cells, the header has 5",
         "  allowed: 5 cells",
-        "  fix: write decimal points, not commas, and put text with commas in quotes",
+        "  fix: write every cell of the row, empty ones too",
     ),
 }
 

@@ -159,7 +159,8 @@ CASES: dict[str, Case] = {
     "column-unknown": (
         replaced("ground.csv", "block_width_m", "remarks"),
         'ground.csv:1:5: column "remarks" is unknown',
-        "  fix: remove it, or list it under ground: other_columns to carry it along",
+        "  fix: say under ground: aliases what it means, carry it along under other_columns, or "
+        "remove it",
     ),
     "column-without-name": (
         replaced("ground.csv", "cover_m,block_width_m", "cover_m,"),
@@ -177,7 +178,8 @@ CASES: dict[str, Case] = {
         "  allowed: the columns ground_unit",
         "  fix: add it",
         'units.csv:1:1: column "unit" is unknown',
-        "  fix: remove it, or list it under ground: other_columns to carry it along",
+        "  fix: say under ground: aliases what it means, carry it along under other_columns, or "
+        "remove it",
     ),
     "row-with-a-cell-too-many-beside-other-faults": (
         all_of(

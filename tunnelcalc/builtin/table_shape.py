@@ -92,7 +92,7 @@ def _check_widths(
                 Where(head.file, line, sheet=head.sheet),
                 f"has {_cells(len(row))}, the header has {width}",
                 allowed=allowed,
-                fix=fix,
+                fix=fix if len(row) > width else "write every cell of the row, empty ones too",
             )
 
 

@@ -8,7 +8,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.inputs.estimates import observations_of
 from tunnelcalc.inputs.intervals import Intervals
 from tunnelcalc.inputs.merging import Merged
-from tunnelcalc.vocabulary import GROUND
+from tunnelcalc.vocabulary import GROUND, UNIT_SUFFIXES
 
 REQUIRED = ("gsi", "mi", "disturbance", "poisson_ratio", "intact_strength_mpa")
 STRESS = "the in-situ stress"
@@ -20,7 +20,7 @@ def check_complete(found: Merged, intervals: Intervals, cover_from_levels: bool)
     """Tell each missing value, or once a column that nobody gives."""
     for name in REQUIRED:
         absent = np.isnan(found.numbers[name])
-        given = intervals.has(name) or not np.all(absent)
+        given = intervals.has(name) or not np.all(absent & ~intervals.told((name,)))
         _tell(intervals, name, given, absent & ~intervals.told((name, *observations_of(name))))
     measured, cover, weight = STRESS_SOURCES
     depth = found.numbers[cover] if not cover_from_levels else np.zeros(found.count)
@@ -43,7 +43,7 @@ def _tell(intervals: Intervals, name: str, given: bool, absent: Array) -> None:
             neither if units else "is missing",
             name=label,
             allowed=allowed,
-            fix="add the column; there is no default",
+            fix=_of_statistics(intervals, name) or "add the column; there is no default",
         )
         return
     for row in np.flatnonzero(absent).tolist():
@@ -53,5 +53,17 @@ def _tell(intervals: Intervals, name: str, given: bool, absent: Array) -> None:
             name=label,
             allowed=allowed,
             context=intervals.context(row),
-            fix="fill it in; there is no default",
+            fix=_of_statistics(intervals, name) or "fill it in; there is no default",
         )
+
+
+def _of_statistics(intervals: Intervals, name: str) -> str:
+    """What to do where the units table says something of a quantity, but gives no value."""
+    units = intervals.units
+    said = [name + s for s in UNIT_SUFFIXES if units is not None and units.has(name + s)]
+    if units is None or not said:
+        return ""
+    return (
+        f"{units.raw.name} has {', '.join(said)}: choose the set under ground: values, and fill in "
+        "all that its rule needs"
+    )

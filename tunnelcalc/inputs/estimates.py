@@ -103,6 +103,19 @@ def idle_observations(names: Container[str]) -> set[str]:
     return {n for n in needs if n in names} - {need for e in complete for need in e.needs}
 
 
+def incomplete_pairs(numbers: Mapping[str, Array]) -> tuple[str, ...]:
+    """Relations for which some intervals give only a part of what they need."""
+    notes = []
+    for estimator in ESTIMATORS:
+        there = [~np.isnan(numbers[need]) for need in estimator.needs if need in numbers]
+        if len(there) == len(estimator.needs) > 1:
+            part = int(np.count_nonzero(np.any(there, axis=0) & ~np.all(there, axis=0)))
+            if part:
+                both = " and ".join(estimator.needs)
+                notes.append(f"{part} intervals give only one of {both}: no {estimator.name} there")
+    return tuple(notes)
+
+
 def read_preferences(reader: Reader) -> dict[str, tuple[str, ...]]:
     """The order of preference of each quantity's sources, empty where none is stated."""
     table = reader.table_of("estimates", required=False)

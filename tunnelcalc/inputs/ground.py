@@ -108,7 +108,8 @@ def read_ground(
         intervals.tell_no_more(name, tests.told_of(found.texts["ground_unit"]))
     estimate(found, intervals, tests, preferences)
     check_complete(found, intervals, reader.has(TERRAIN))
-    if opening.profiles and np.all(np.isfinite(intervals.from_m + intervals.to_m)):
+    ends = intervals.from_m + intervals.to_m
+    if opening.profiles and ends.size and np.all(np.isfinite(ends)):
         check_profiles(opening.profiles, intervals.from_m, intervals.to_m, opening.reader)
     if len(reader.problems) or not opening.profiles:
         return None
@@ -184,7 +185,7 @@ def _ground(
     columns |= {name: column[rows] for name, column in found.numbers.items()}
     columns |= _profile_columns(opening.profiles, middle)
     origins = {name: codes[rows] for name, codes in found.origins.items()}
-    check_reach(levels, middle, reader.problems, reader)
+    check_reach(levels, middle, opening.reader, reader)
     _fill_from_levels(columns, origins, levels)
     _check_cover(columns, origins, reader)
     if len(reader.problems):
@@ -213,7 +214,11 @@ def _ground(
         tuple(value_origins(written, columns, origins, found.methods, rows)),
         tuple(tests.values()),
         tuple(sorted((gap for gap, _ in gaps), key=lambda gap: gap.from_m)),
-        (*_notes(intervals), *ground_warnings(found, columns, levels, values)),
+        (
+            *_notes(intervals),
+            *_idle_tests(tests, found),
+            *ground_warnings(found, columns, levels, values),
+        ),
     )
 
 
@@ -221,6 +226,13 @@ def _notes(intervals: Intervals) -> tuple[str, ...]:
     """What the readers of the tables want a user to know."""
     tables = [table for table in (intervals.table, intervals.units) if table is not None]
     return tuple(f"{table.raw.name}: {note}" for table in tables for note in table.raw.notes)
+
+
+def _idle_tests(tests: Mapping[str, UnitTests], found: Merged) -> tuple[str, ...]:
+    """Tests of a unit that no interval has: perhaps its name is misspelt."""
+    idle = sorted(set(tests) - set(found.texts["ground_unit"].tolist()))
+    what = f"laboratory tests of {', '.join(idle)} are not used: no interval has the unit"
+    return (what,) if idle else ()
 
 
 def _profile_columns(profiles: Sequence[Profile], middle: Array) -> dict[str, Array]:

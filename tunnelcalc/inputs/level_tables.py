@@ -9,7 +9,6 @@ from itertools import pairwise
 import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M, Array
-from tunnelcalc.errors import Problems
 from tunnelcalc.inputs.alignment import span
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.inputs.typed_table import TypedTable, open_table, typed_columns
@@ -108,24 +107,23 @@ def at_sections(
     return AtSections(terrain - axis - radius_m, np.maximum(water - axis, 0), stress)
 
 
-def check_reach(levels: Levels, chainage_m: Array, problems: Problems, reader: Reader) -> None:
+def check_reach(levels: Levels, chainage_m: Array, opening: Reader, ground: Reader) -> None:
     """Tell lines that end before the alignment does: nothing is extrapolated."""
-    lines = {
-        "opening: axis": levels.tunnel.line if levels.tunnel else None,
-        TERRAIN: levels.terrain,
-        WATER: levels.water,
-    }
-    named = [(name, line) for name, line in lines.items() if line is not None]
-    named += [(LAYERS, layer.base) for layer in levels.layers]
-    for name, line in named:
+    lines = [(ground, TERRAIN, levels.terrain), (ground, WATER, levels.water)]
+    lines += [(ground, LAYERS, layer.base) for layer in levels.layers]
+    lines += [(opening, AXIS, levels.tunnel.line if levels.tunnel else None)]
+    for reader, name, line in lines:
+        if line is None:
+            continue
         outside = np.isnan(line.at(chainage_m))
         if np.any(outside):
-            first, last = float(chainage_m[outside][0]), float(chainage_m[outside][-1])
-            problems.add(
-                reader.place(name) if reader.has(name) else reader.where,
-                f"reaches from {span(line.chainage_m[0], line.chainage_m[-1])}, not to the "
-                f"{np.count_nonzero(outside)} sections from {first:.10g} to {last:.10g} m",
-                name=f'"{name}"',
+            count, places = int(np.count_nonzero(outside)), chainage_m[outside]
+            missed = f"the section at {places[0]:.10g} m"
+            if count > 1:
+                missed = f"{count} sections from {span(places[0], places[-1])}"
+            reader.complain(
+                name,
+                f"reaches from {span(line.chainage_m[0], line.chainage_m[-1])}, not to {missed}",
                 allowed="levels over the whole alignment: nothing is extrapolated",
                 fix="add levels before the first and after the last section",
             )
@@ -153,7 +151,6 @@ def _layers(
     layers = []
     for unit in dict.fromkeys(table.texts[UNIT].tolist()):
         rows = np.flatnonzero(table.texts[UNIT] == unit)
-        line = _in_order(table, rows, BASE)
         if unit not in weights:
             table.problems.add(
                 table.place(int(rows[0]), UNIT),
@@ -162,7 +159,9 @@ def _layers(
                 allowed=few(sorted(weights)) or "units of the units table",
                 fix="give the unit a unit_weight_kn_m3 in the units table",
             )
-        elif line is not None:
+            continue
+        line = _in_order(table, rows, BASE)
+        if line is not None:
             layers.append(Layer(weights[unit], line, unit))
     return tuple(layers) if _from_top(layers, table) else ()
 

@@ -7,7 +7,7 @@ from collections.abc import Iterator, Mapping, Sequence
 import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M, Array
-from tunnelcalc.inputs.estimates import idle_observations
+from tunnelcalc.inputs.estimates import idle_observations, incomplete_pairs
 from tunnelcalc.inputs.level_tables import Levels
 from tunnelcalc.inputs.merging import Merged, Origin
 from tunnelcalc.inputs.unit_values import UnitValues
@@ -95,6 +95,7 @@ def ground_warnings(
         warnings.append(
             "read, checked and carried along, but not computed with: " + ", ".join(idle)
         )
+    warnings += incomplete_pairs(found.numbers)
     if np.all(np.isnan(columns["water_head_m"])):
         warnings.append("no water_head_m is given: stresses and strength are total")
     elif levels.water is not None:

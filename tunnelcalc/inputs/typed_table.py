@@ -136,7 +136,8 @@ def typed(
             fix = (
                 f'did you mean "{hint}"?'
                 if hint
-                else "remove it, or list it under ground: other_columns to carry it along"
+                else "say under ground: aliases what it means, carry it along under other_columns, "
+                "or remove it"
             )
             if name == "":
                 fix = "give the column a name, or remove it"

@@ -175,7 +175,7 @@ def test_a_row_that_may_have_lost_or_gained_a_cell_is_refused():
     assert of_rows("a;b;;\n1\n1;2\n") == [
         "g.csv:2: has 1 cell, the header has 4",
         "  allowed: 2 to 4 cells",
-        "  fix: put semicolons between all cells, and text with semicolons in quotes",
+        "  fix: write every cell of the row, empty ones too",
     ]
 
 

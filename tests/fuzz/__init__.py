@@ -1,0 +1,1 @@
+"""Damaged inputs by the thousand, on demand: `python -m tests.fuzz --minutes 10`."""
