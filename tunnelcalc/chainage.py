@@ -10,6 +10,8 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
+import numpy as np
+
 from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.text import as_number
 
@@ -83,10 +85,22 @@ class Notation:
             raise ChainageError(f"occurs twice: write {numbers}")
         return min(places.values())
 
-    def written(self, axis_m: Array) -> list[str]:
-        """The chainage of places along the axis (n,), as it is written on this alignment."""
+    def written(self, axis_m: Array, arriving: bool = False) -> list[str]:
+        """The chainage of places along the axis (n,), as it is written on this alignment.
+
+        Where an equation stands, a place has two: `arriving` gives that of the stretch which ends
+        there, as the end of an interval is written.
+        """
         starts = self.starts()
-        return [self._text(x, starts) for x in axis_m.tolist()]
+        return [self._text(x, starts, arriving) for x in axis_m.tolist()]
+
+    def ends(self, from_m: float, to_m: float) -> tuple[str, str]:
+        """The chainages of the two ends of a stretch of the axis."""
+        (start,), (end,) = (
+            self.written(np.array([from_m])),
+            self.written(np.array([to_m]), arriving=True),
+        )
+        return start, end
 
     def _places(self, written: float, tolerance: float) -> dict[int, float]:
         """Axis metre of a number on each stretch on which it lies."""
@@ -112,8 +126,9 @@ class Notation:
             raise ChainageError("is not a chainage")
         return number
 
-    def _text(self, x: float, starts: tuple[tuple[float, float], ...]) -> str:
-        stretch = sum(x >= begin - SAME_PLACE_M for begin, _ in starts[1:])
+    def _text(self, x: float, starts: tuple[tuple[float, float], ...], arriving: bool) -> str:
+        reach = x - SAME_PLACE_M if arriving else x + SAME_PLACE_M
+        stretch = sum(begin <= reach for begin, _ in starts[1:])
         begin, first = starts[stretch]
         # Rounded here, so that it is told apart as it will be read. Adding 0 drops the sign of -0.
         number = round(first + self.direction * (x - begin), DECIMALS) + 0.0

@@ -167,6 +167,27 @@ CASES: dict[str, Case] = {
         'ground.csv:1:5: column "" is unknown',
         "  fix: give the column a name, or remove it",
     ),
+    "title-above-the-header": (
+        replaced(
+            "ground.csv",
+            "from_m,to_m,ground_unit,cover_m",
+            "Invented drive,,,,\nfrom_m,to_m,ground_unit,cover_m",
+        ),
+        'ground.csv:1: column "from_m" is missing',
+        "  allowed: the columns from_m, to_m",
+        "  fix: add it",
+        'ground.csv:1: column "to_m" is missing',
+        "  allowed: the columns from_m, to_m",
+        "  fix: add it",
+        "ground.csv:1: has 4 columns without a name",
+        "  allowed: a name over every column",
+        "  fix: begin the table with its header row, without a title above it",
+        'ground.csv:1: column "ground_unit" is missing',
+        "  fix: add it: the project has a units table",
+        'ground.csv:1:1: column "Invented drive" is unknown',
+        "  fix: say under ground: aliases what it means, carry it along under other_columns, or "
+        "remove it",
+    ),
     "column-twice": (
         replaced("ground.csv", "cover_m,block_width_m", "cover_m,cover_m"),
         'ground.csv:1:5: column "cover_m" stands twice, first in column 4',

@@ -174,3 +174,9 @@ def test_places_farther_apart_than_the_rounding_keep_their_order(notation: Notat
     if second - first > 0.02:
         near, far = notation.written(np.array([first, second]))
         assert notation.axis_m(near) < notation.axis_m(far)
+
+
+def test_an_interval_that_ends_at_an_equation_ends_in_its_own_stretch():
+    notation = Notation("km+m", "", 1, 0.0, (Equation(1100.0, 1080.0),))
+    assert notation.ends(1050.0, 1100.0) == ("1+050.00", "1+100.00@1")
+    assert notation.ends(1100.0, 1150.0) == ("1+080.00@2", "1+130.00")

@@ -59,7 +59,7 @@ def _with_written(cells: tuple[str, ...], start: str, end: str, governs: str) ->
 def _written(project: api.Project, zone: api.Zone) -> tuple[str, str, str]:
     governs = zone.governing_chainage_m
     notation = project.notation
-    start, end = notation.written(np.array([zone.from_m, zone.to_m]))
+    start, end = notation.ends(zone.from_m, zone.to_m)
     return start, end, "" if np.isnan(governs) else notation.written(np.array([governs]))[0]
 
 

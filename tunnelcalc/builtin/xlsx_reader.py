@@ -6,6 +6,8 @@ import datetime
 import io
 import warnings
 from collections.abc import Callable, Iterator
+from dataclasses import replace
+from itertools import product
 from typing import Any
 
 from tunnelcalc import api
@@ -60,9 +62,11 @@ def _table(name: str, content: bytes, sheet: str | None, problems: api.Problems)
         marks = sheet_marks(part)
     rows, lines = _rows(place, chosen, problems)
     table = shaped(place, rows, lines, "fill the header row, and clear cells beside it", problems)
-    _check_marks(table, marks, problems)
-    problems.raise_if_any()
-    return table
+    told = {(p.where.line, p.where.column) for p in problems if p.where.column}
+    told |= set(_check_marks(table, marks, problems))
+    if any(line == table.header_line for line, _ in told):
+        problems.raise_if_any()  # without its names, a table cannot be read on
+    return replace(table, problems=tuple(problems), told=frozenset(told))
 
 
 def _chosen(name: str, sheets: list[Any], sheet: str | None, problems: api.Problems) -> Any:
@@ -135,6 +139,7 @@ def _text(place: api.Where, cell: Any, percent: dict[int, bool], problems: api.P
             what = f"holds {value!r}, which the sheet shows as {value * 100:g} %"
             fix = "format the cell as a number, and write the value in the unit of its column"
             _tell(place, cell, what, "numbers not formatted as percentages", fix, problems)
+            return ""
         return _number(value)
     if isinstance(value, datetime.datetime) and value.time() == datetime.time():
         return value.date().isoformat()
@@ -154,12 +159,15 @@ def _tell(
     problems.add(where, what, allowed=allowed, fix=fix)
 
 
-def _check_marks(table: api.RawTable, marks: SheetMarks, problems: api.Problems) -> None:
-    """Tell formulas without a result and merged cells that lie in the table."""
+def _check_marks(
+    table: api.RawTable, marks: SheetMarks, problems: api.Problems
+) -> Iterator[tuple[int, int]]:
+    """Tell formulas without a result and merged cells that lie in the table; their cells."""
     from openpyxl.utils import range_boundaries
 
     columns, last = set(table.column_numbers), max((table.header_line, *table.lines))
     for row, column in marks.without_result:
+        yield row, column
         problems.add(
             api.Where(table.file, row, column, table.sheet),
             "holds a formula whose result is not stored",
@@ -177,6 +185,8 @@ def _check_marks(table: api.RawTable, marks: SheetMarks, problems: api.Problems)
             allowed="cells that are not merged",
             fix="split the cells, and write the value into each of them",
         )
+        rows = range(top, min(bottom, last) + 1)
+        yield from product(rows, range(left, min(right, max(columns)) + 1))
 
 
 @api.hookimpl

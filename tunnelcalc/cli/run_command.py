@@ -158,7 +158,7 @@ def _ends(from_m: float, to_m: float, result: RunResult, wide: bool) -> list[str
     notation = result.project.notation
     if notation.is_plain:
         return along
-    return notation.written(np.array([from_m, to_m])) + (along if wide else [])
+    return [*notation.ends(from_m, to_m), *(along if wide else [])]
 
 
 def _governed_by(zone: Zone) -> str:

@@ -110,7 +110,7 @@ class Intervals:
             return False
         if end - start > SAME_PLACE_M:
             return True
-        first, last = self.notation.written(np.array([start, end]))
+        first, last = self.notation.ends(start, end)
         along = "above" if self.notation.direction > 0 else "beyond"
         number = f"{end:.10g}" if self.notation.is_plain else last
         begin = f"{start:.10g}" if self.notation.is_plain else first
@@ -140,7 +140,7 @@ class Intervals:
         found = np.empty(self.count, dtype=np.int64)
         for row, name in enumerate(self.table.texts["ground_unit"].tolist()):
             found[row] = rows.get(name, -1)
-            if found[row] < 0:
+            if found[row] < 0 and not self.table.wrong_in("ground_unit")[row]:
                 hint = suggestion(name, rows)
                 what = f"holds {quoted(name)}, which {self.units.raw.name} does not name"
                 add = "add the unit to the units table"
@@ -156,7 +156,7 @@ class Intervals:
     def _rows_by_name(self, units: TypedTable) -> dict[str, int]:
         rows: dict[str, int] = {}
         for row, name in enumerate(units.texts["ground_unit"].tolist()):
-            if name in rows or not name:
+            if (name in rows or not name) and not units.wrong_in("ground_unit")[row]:
                 what = f"holds {quoted(name)}, which stands already" if name else "is empty"
                 self.problems.add(
                     units.place(row, "ground_unit"),

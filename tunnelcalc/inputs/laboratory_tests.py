@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from datetime import date
 
 import numpy as np
 
@@ -73,11 +74,24 @@ def _wrong_rows(table: TypedTable) -> Array:
                 _complain(table, row, name, "is empty", "write the stress at failure, in MPa")
         if not table.texts[UNIT][row]:
             _complain(table, row, UNIT, "is empty", "name the ground unit that was tested")
+        day = table.texts[DATE][row] if table.has(DATE) else ""
+        if day and not _is_date(day):
+            _complain(
+                table, row, DATE, f"holds {quoted(day)}, which is no date", "write 2031-04-17"
+            )
         if major[row] <= minor[row]:
             _complain(
                 table, row, MAJOR, f"is not above {MINOR}", "write the major stress at failure"
             )
     return ~(major > minor)
+
+
+def _is_date(text: str) -> bool:
+    try:
+        date.fromisoformat(text)
+    except ValueError:
+        return False
+    return True
 
 
 def _complain(table: TypedTable, row: int, name: str, message: str, fix: str) -> None:

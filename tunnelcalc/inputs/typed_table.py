@@ -120,7 +120,17 @@ def typed(
     kept = set(carried)
     known = [*numbers, *texts, *GROUND]
     seen: dict[str, int] = {}
+    unnamed = sum(name == "" for name in raw.header)
+    if unnamed > 1:
+        problems.add(
+            raw.head(),
+            f"has {unnamed} columns without a name",
+            allowed="a name over every column",
+            fix="begin the table with its header row, without a title above it",
+        )
     for column, name in enumerate(raw.header):
+        if name == "" and unnamed > 1:
+            continue
         if name in seen:
             first = f"stands twice, first in column {raw.number_of(seen[name])}"
             _about_header(table, column, first, "keep one of the two")
@@ -250,8 +260,18 @@ def _numbers(
             fix=number_fix(text) if number is None else "correct the value, and check its unit",
         )
     values[wrong] = np.nan
-    table.wrong[table.raw.header[column]] = filled & np.isnan(values)
+    told = _told(table.raw, column)
+    values[told] = np.nan
+    table.wrong[table.raw.header[column]] = (filled & np.isnan(values)) | told
     return values
+
+
+def _told(raw: RawTable, column: int) -> Array:
+    """Mask (r,) of the cells about which the reader of the file has said all."""
+    if not raw.told:
+        return np.zeros(len(raw.lines), dtype=bool)
+    number = raw.number_of(column)
+    return np.array([(line, number) in raw.told for line in raw.lines], dtype=bool)
 
 
 def _float(cell: str) -> float:
@@ -265,6 +285,7 @@ def _float(cell: str) -> float:
 
 def _texts(table: TypedTable, column: int, context: Callable[[int], str]) -> Array:
     cells = np.array(table.raw.columns[column], dtype=object)
+    table.wrong[table.raw.header[column]] = _told(table.raw, column)
     of_unit = table.raw.header[column] == GROUND_UNIT
     for row, text in enumerate(cells.tolist()):
         if of_unit and JOINT in text:

@@ -42,13 +42,13 @@ def write_provenance(folder: Path, project: Project) -> None:
 
 def _value_rows(origins: ValueOrigins, project: Project) -> Iterator[tuple[str, ...]]:
     count = len(origins.value)
-    ends = (origins.from_m, origins.to_m)
-    written = () if project.notation.is_plain else map(project.notation.written, ends)
+    notation = project.notation
+    written = (notation.written(origins.from_m), notation.written(origins.to_m, arriving=True))
     return zip(
         [origins.quantity] * count,
         number_texts(origins.from_m),
         number_texts(origins.to_m),
-        *written,
+        *(() if notation.is_plain else written),
         number_texts(origins.value),
         [GROUND[origins.quantity].unit] * count,
         origins.origin.tolist(),

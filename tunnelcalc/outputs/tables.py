@@ -162,7 +162,7 @@ def write_sections(
         part = sections.take(slice(start, start + ROWS_AT_ONCE))
         columns = [_cells(part[name]) for name in names]
         columns[3:3] = [
-            [text_cell(text) for text in project.notation.written(part[name])]
+            [text_cell(text) for text in project.notation.written(part[name], name == "to_m")]
             for name in written.values()
         ]
         for name in ("required_class", "scheduled_class"):

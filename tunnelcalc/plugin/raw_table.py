@@ -34,6 +34,9 @@ class RawTable:
     problems: tuple[Problem, ...] = ()
     """What is wrong with rows that were left out; the others are read on."""
 
+    told: frozenset[tuple[int, int]] = frozenset()
+    """Line and column in the file of cells about which `problems` says all: they are empty."""
+
     @property
     def name(self) -> str:
         """The file, and the sheet if it has sheets."""

@@ -18,7 +18,7 @@ from unit.inputs.reading import told as told_of_project
 from tunnelcalc.api import RawTable
 from tunnelcalc.builtin import table_shape, xlsx_parts, xlsx_reader
 from tunnelcalc.builtin.xlsx_reader import XlsxReader
-from tunnelcalc.errors import InputError
+from tunnelcalc.errors import InputError, Problem
 
 Change = Callable[[Any], object]
 
@@ -62,6 +62,10 @@ def problems_of(content: bytes, sheet: str | None = None) -> list[str]:
     with pytest.raises(InputError) as caught:
         (reader.read_sheet if named else reader.read)("geo.xlsx", content, *named)
     return "\n".join(str(problem) for problem in caught.value.problems).splitlines()
+
+
+def placed(problem: Problem) -> tuple[int, int]:
+    return problem.where.line, problem.where.column
 
 
 def told(*changes: Change) -> list[str]:
@@ -199,12 +203,20 @@ REFUSED: dict[str, tuple[tuple[Change, ...], list[str]]] = {
 def test_a_cell_that_has_no_value_of_its_own_is_refused(
     changes: tuple[Change, ...], lines: list[str]
 ):
-    assert told(*changes) == lines
+    table = read(*changes)
+    assert "\n".join(str(problem) for problem in table.problems).splitlines() == lines
+    assert {(p.where.line, p.where.column) for p in table.problems} <= table.told
 
 
-def test_all_cells_are_told_at_once():
-    found = told(set_to("B3", "#N/A"), set_to("C2", "=1+1"), merged("A2:A3"))
-    assert found[::3] == [
+def test_a_header_that_has_no_names_ends_the_reading():
+    assert told(merged("A1:B1"))[0] == "geo.xlsx:Geology!A1: is merged with others, A1:B1"
+
+
+def test_all_cells_are_told_at_once_and_the_others_read():
+    table = read(set_to("B3", "#N/A"), set_to("C2", "=1+1"), merged("A2:A3"))
+    told_cells = [str(problem).splitlines()[0] for problem in sorted(table.problems, key=placed)]
+    assert {(2, 1), (3, 1), (2, 3), (3, 2)} == set(table.told)
+    assert told_cells == [
         "geo.xlsx:Geology!A2: is merged with others, A2:A3",
         "geo.xlsx:Geology!C2: holds a formula whose result is not stored",
         "geo.xlsx:Geology!B3: holds the error #N/A",
