@@ -31,7 +31,7 @@ from tunnelcalc.inputs.level_tables import (
 from tunnelcalc.inputs.merging import Merged, Origin, merged
 from tunnelcalc.inputs.opening import Profile, check_profiles, limits_inside, profile_of
 from tunnelcalc.inputs.provenance import ground_warnings, value_origins, written_columns
-from tunnelcalc.inputs.typed_table import TypedTable
+from tunnelcalc.inputs.table_columns import TypedTable
 from tunnelcalc.inputs.unit_values import (
     CAUTIOUS,
     NOMINAL,

@@ -7,7 +7,8 @@ from collections.abc import Callable, Iterator, Sequence
 from tunnelcalc.inputs.aliases import read_aliases
 from tunnelcalc.inputs.files import ProjectFolder
 from tunnelcalc.inputs.headers import understood
-from tunnelcalc.inputs.typed_table import CHAINAGE, TypedTable, open_table, typed
+from tunnelcalc.inputs.table_columns import CHAINAGE, TypedTable
+from tunnelcalc.inputs.typed_table import open_table, typed
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
 from tunnelcalc.plugin.raw_table import RawTable

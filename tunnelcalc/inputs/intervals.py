@@ -10,7 +10,7 @@ from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.chainage import Notation
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs import alignment
-from tunnelcalc.inputs.typed_table import TypedTable
+from tunnelcalc.inputs.table_columns import TypedTable
 from tunnelcalc.project import Gap
 from tunnelcalc.text import few, quoted, suggestion
 

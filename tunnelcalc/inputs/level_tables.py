@@ -11,7 +11,8 @@ import numpy as np
 from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.inputs.alignment import span
 from tunnelcalc.inputs.files import ProjectFolder
-from tunnelcalc.inputs.typed_table import TypedTable, open_table, typed_columns
+from tunnelcalc.inputs.table_columns import TypedTable
+from tunnelcalc.inputs.typed_table import open_table, typed_columns
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.rock_mass.levels import Layer, Line, layered_stress_mpa

@@ -12,7 +12,7 @@ from dataclasses import dataclass, field
 import numpy as np
 
 from tunnelcalc.arrays import Array
-from tunnelcalc.inputs.typed_table import TypedTable
+from tunnelcalc.inputs.table_columns import TypedTable
 from tunnelcalc.rock_mass.characteristic import (
     CautiousSide,
     cautious_by_half_deviation,
