@@ -155,8 +155,7 @@ class Problems:
     def raise_if_any(self) -> None:
         """Raise `InputError` with all problems, in the order of the files.
 
-        Files keep the order in which they were first complained about: the project file comes
-        before the tables that it names.
+        Files keep the order in which they were first complained about.
         """
         if not self.found:
             return
