@@ -136,3 +136,79 @@ class GroundCurve:
                 atol=[1e-14, 0.0],
                 dense_output=dense,
             )
+
+
+Strength = Callable[[float], float]
+POWER = 8
+"""With sr = t^8 the running variable t makes the ring smooth even where all strength is lost as
+sr goes to 0: d ln r = d sr / (sr^a ...) is finite in t for any a < 7/8."""
+
+
+@dataclass(frozen=True)
+class StrengthCurve(GroundCurve):
+    """Ground of any criterion: strength st - sr as a function of sr, before and after it yields.
+
+    Made by `of_strength`; the constants of the other criterion stay NaN.
+    """
+
+    peak: Strength = math.nan  # type: ignore[assignment]
+    ring: Strength = math.nan  # type: ignore[assignment]
+
+    @classmethod
+    def of_strength(
+        cls, p0: float, peak: Strength, ring: Strength, modulus: float, nu: float, psi_deg: float
+    ) -> StrengthCurve:
+        unused = (math.nan,) * 4
+        return cls(p0, *unused, modulus, nu, psi_deg, peak, ring)
+
+    def deviator(self, sr: float) -> float:
+        return self.ring(sr)
+
+    @cached_property
+    def critical_pressure(self) -> float:
+        def excess(p: float) -> float:
+            return 2 * (self.p0 - p) - self.peak(p)
+
+        if excess(0.0) <= 0:
+            return 0.0
+        return brentq(excess, 0, self.p0, xtol=1e-15 * self.p0, rtol=1e-15)
+
+    @cached_property
+    def closure_between(self) -> Callable[[float], float]:
+        if self.critical_pressure == 0:
+            return lambda p: (self.p0 - p) / self.double_shear_modulus
+        dense = self._integrated(0.0, TOLERANCE_BETWEEN, dense=True).sol
+
+        def closure(p: float) -> float:
+            if p >= self.critical_pressure:
+                return (self.p0 - p) / self.double_shear_modulus
+            return float(dense(p ** (1 / POWER))[1])
+
+        return closure
+
+    def _integrated(self, pressure: float, tolerance: float, *, dense: bool = False) -> Any:
+        def rates(t: float, state: State) -> list[float]:
+            if t <= 0:
+                return [0.0, 0.0]
+            return [POWER * t ** (POWER - 1) * rate for rate in self._rates(t**POWER, state)]
+
+        start = (self.p0 - self.critical_pressure) / self.double_shear_modulus
+        return solve_ivp(
+            rates,
+            (self.critical_pressure ** (1 / POWER), pressure ** (1 / POWER)),
+            [0.0, start],
+            method="DOP853",
+            rtol=tolerance,
+            atol=[1e-14, 0.0],
+            dense_output=dense,
+        )
+
+
+def hoek_brown_strength(sci: float, mb: float, s: float, a: float) -> Strength:
+    return lambda sr: sci * (mb * sr / sci + s) ** a
+
+
+def mohr_coulomb_strength(friction_deg: float, cohesion: float) -> Strength:
+    """(s1 - s3) = (s1 + s3) sin phi + 2 c cos phi, solved for s1 - s3."""
+    phi = math.radians(friction_deg)
+    return lambda sr: 2 * (sr * math.sin(phi) + cohesion * math.cos(phi)) / (1 - math.sin(phi))

@@ -1,16 +1,19 @@
-"""Ground reaction of a circular opening in elastic, perfectly plastic Hoek-Brown ground.
+"""Ground reaction of a circular opening in Hoek-Brown ground, perfectly plastic or brittle.
 
 The plastic ring is exact for any a < 1. With N = mb sr / sci + s, radial equilibrium
 d sr / d ln r = sci N^a integrates to N^(1-a) = N_cr^(1-a) + (1 - a) mb ln(r / Rp).
 
-The flow rule ep_r + Kpsi ep_th = 0, with elastic strains by Hooke's law from the actual
-stresses in plane strain, gives du/dr + Kpsi u / r = f(r). Integrated over the ring, by parts:
+The closure follows from the flow rule and Hooke's law in the ring, integrated by parts:
 
     2 G u / R = 2 (1 - nu) (p0 - pcr) X^(K+1) - (1 - 2 nu) (p0 - pi) - (K - 1) (1 - nu) J
     X = Rp / R,   J = integral over ln(r / R) of sci N^a (r / R)^(K+1)
 
-so that ground without dilation (K = 1) needs no integral at all. J has a smooth integrand: with
-z = (K + 1) ln(Rp / r) it is X^(K+1) / (K + 1) times the integral of exp(-z) sci N(z)^a.
+This holds for any strength in the ring, brittle ground included: see `flow_rule`. J has a smooth
+integrand: with z = (K + 1) ln(Rp / r) it is X^(K+1) / (K + 1) times the integral of
+exp(-z) sci N(z)^a.
+
+Brittle ground has pcr from its peak, and all else in the ring, N_cr = mb pcr / sci + s too, from
+its residual constants.
 """
 
 from __future__ import annotations
@@ -22,12 +25,16 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import CurvePoint
+from tunnelcalc.ground_reaction.flow_rule import (
+    dilation_coefficient as dilation_coefficient,  # asked for under this name elsewhere too
+)
+from tunnelcalc.ground_reaction.flow_rule import ring_exponent, state_of_wall
 from tunnelcalc.ground_reaction.ring_integral import ring_integral_mpa
+from tunnelcalc.rock_mass.hoek_brown import HoekBrownConstants
 from tunnelcalc.root_finding import increasing_roots
 
-LARGEST_EXPONENT = 600.0
-"""exp(600) is 1e260: what a larger closure is multiplied with, stresses, stiffness of support,
-could leave the range of a double. Such a closure cannot be computed."""
+ROUNDING = 1e-12
+"""Of the peak strength: a residual strength that is above by no more is equal to it."""
 
 
 class GroundReaction(NamedTuple):
@@ -35,25 +42,6 @@ class GroundReaction(NamedTuple):
 
     plastic_radius_m: Array
     closure_m: Array
-
-
-def dilation_coefficient(dilation_deg: Array) -> Array:
-    """Slope K of the plastic strains.
-
-    Parameters
-    ----------
-    dilation_deg : (n,) psi, dilation angle, 0 <= psi < 90. [deg]
-
-    Returns
-    -------
-    (n,) K = (1 + sin psi) / (1 - sin psi). [-]  1 for no dilation.
-
-    Source
-    ------
-    Flow rule of a Mohr-Coulomb plastic potential: common practice, no source.
-    """
-    sine = np.sin(np.radians(dilation_deg))
-    return (1 + sine) / (1 - sine)
 
 
 def critical_number(
@@ -112,7 +100,8 @@ def critical_number(
 class HoekBrownCurve:
     """Ground reaction curves of n sections; what does not change with pressure, computed once.
 
-    All fields are (n,), or broadcast with the pressures that `at` is called with.
+    All fields are (n,), or broadcast with the pressures that `at` is called with. `mb`, `s` and
+    `a` are those of the plastic ring: the residual ones where the ground is brittle.
     """
 
     in_situ_stress_mpa: Array
@@ -125,7 +114,9 @@ class HoekBrownCurve:
     dilation: Array
     critical_pressure_mpa: Array
     critical_power: Array
-    """N_cr^(1-a)"""
+    """N_cr^(1-a) of the ring"""
+    brittle: Array
+    """bool, whether the ring has constants of its own"""
 
     @classmethod
     def of_ground(
@@ -139,19 +130,34 @@ class HoekBrownCurve:
         deformation_modulus_mpa: Array,
         poisson_ratio: Array,
         dilation_deg: Array,
+        residual: HoekBrownConstants | None = None,
     ) -> Self:
         """Curves from the ground's properties, all (n,).
 
-        Stresses, strength and modulus in MPa, the rest as named. A NaN row stays NaN and
-        spoils no other.
+        Stresses, strength and modulus in MPa, the rest as named. `residual` holds the constants
+        to which ground falls at once where it yields, s >= 0; without it the ground is
+        perfectly plastic. A NaN row stays NaN and spoils no other. Where the residual strength
+        is above the peak, at any radial stress from 0 to the critical pressure, the row is NaN:
+        such ground is not brittle, and the solution does not hold for it.
 
         Source
         ------
-        See the head of this module; critical pressure: `critical_number`.
+        See the head of this module; critical pressure: `critical_number`. Brittle ground, pcr
+        from the peak and the ring wholly residual: E. T. Brown, J. W. Bray, B. Ladanyi, E. Hoek,
+        J. Geotech. Eng. 109 (1983) 15-39, whose closures differ: they freeze the elastic strain
+        at the ring's edge.
         """
         number = critical_number(in_situ_stress_mpa, intact_strength_mpa, mb, s, a)
         # Rounding may put N_cr an ulp below s just where yielding begins: no negative pressure.
         critical = np.maximum(intact_strength_mpa * (number - s) / mb, 0)
+        brittle = np.zeros(np.shape(critical), dtype=bool)
+        if residual is not None:
+            peak = HoekBrownConstants(mb, s, a)
+            falls = _falls(peak, residual, critical / intact_strength_mpa)
+            critical = np.where(falls, critical, np.nan)
+            mb, s, a = residual
+            brittle = (mb != peak.mb) | (s != peak.s) | (a != peak.a)
+            number = np.where(brittle, mb * critical / intact_strength_mpa + s, number)
         return cls(
             in_situ_stress_mpa=in_situ_stress_mpa,
             intact_strength_mpa=intact_strength_mpa,
@@ -163,6 +169,7 @@ class HoekBrownCurve:
             dilation=dilation_coefficient(dilation_deg),
             critical_pressure_mpa=critical,
             critical_power=number ** (1 - a),
+            brittle=brittle,
         )
 
     def take(self, index: Array) -> Self:
@@ -181,12 +188,12 @@ class HoekBrownCurve:
         Returns
         -------
         CurvePoint.  Where the closure leaves the range of a double it is NaN, never a number.
+        At a yielding wall with s = 0 and no pressure the slope is -infinity, all else finite.
 
         Source
         ------
         Derivation at the head of this module.
         """
-        p0, nu, dilation = self.in_situ_stress_mpa, self.poisson_ratio, self.dilation
         sci, mb = self.intact_strength_mpa, self.mb
         # Asked this way round, a section with NaN does not pass for elastic.
         yields = ~(support_pressure_mpa >= self.critical_pressure_mpa)
@@ -196,29 +203,41 @@ class HoekBrownCurve:
         # Rounding may put the edge of a ring that has just begun to yield inside the wall.
         depth = np.maximum((self.critical_power - power) / ((1 - self.a) * mb), 0)
         depth = np.where(yields, depth, 0)
-        exponent = (dilation + 1) * depth
-        exponent = np.where(exponent <= LARGEST_EXPONENT, exponent, np.nan)
-        growth = np.exp(exponent)
-
-        driving = 2 * (1 - nu) * (p0 - self.critical_pressure_mpa)
-        elastic_part = (1 - 2 * nu) * (p0 - support_pressure_mpa)
-        integral = ring_integral_mpa(
-            exponent, yields, sci, mb, self.a, dilation, self.critical_power
+        exponent = ring_exponent(depth, self.dilation)
+        return state_of_wall(
+            self,
+            support_pressure_mpa,
+            yields=yields,
+            depth=depth,
+            exponent=exponent,
+            weighted_strength_mpa=ring_integral_mpa(
+                exponent,
+                yields,
+                sci,
+                mb,
+                self.a,
+                self.dilation,
+                self.critical_power,
+                self.brittle,
+            ),
+            wall_strength_mpa=sci * number / np.where(power == 0, 1, power),
         )
-        dilating = (dilation - 1) * (1 - nu) * integral
-        plastic_closure = growth * (driving - dilating) - elastic_part
-        elastic_closure = p0 - support_pressure_mpa
-        double_modulus = 2 * self.shear_modulus_mpa
-        closure = np.where(yields, plastic_closure, elastic_closure) / double_modulus
 
-        # The ring is one curve of ln r: d(u/r) = (f - (K + 1) u/r) d ln r, d sr = sci N^a d ln r.
-        strength = sci * number / power
-        forcing = (1 + dilation) * (1 - 2 * nu) * (support_pressure_mpa - p0)
-        forcing = forcing + (dilation * (1 - nu) - nu) * strength
-        plastic_slope = (forcing / double_modulus - (dilation + 1) * closure) / strength
-        slope = np.where(yields, plastic_slope, -1 / double_modulus)
-        plastic_ratio = np.exp(np.where(depth <= LARGEST_EXPONENT, depth, np.nan))
-        return CurvePoint(plastic_ratio, closure, slope)
+
+def _falls(peak: HoekBrownConstants, residual: HoekBrownConstants, confinement: Array) -> Array:
+    """Whether the residual strength is nowhere above the peak, for sr / sci from 0 to a value.
+
+    The ratio of the two strengths is greatest at an end, or where its logarithm a_r ln N_r -
+    a ln N is level: at most one place.
+    """
+    level = peak.a * peak.mb * residual.s - residual.a * residual.mb * peak.s
+    bend = peak.mb * residual.mb * (residual.a - peak.a)
+    level = np.where(bend == 0, 0, level / np.where(bend == 0, 1, bend))
+    falls = ~np.isnan(confinement)
+    for sr in (np.zeros(np.shape(confinement)), confinement, np.clip(level, 0, confinement)):
+        strength, highest = ((c.mb * sr + c.s) ** c.a for c in (residual, peak))
+        falls &= strength <= highest * (1 + ROUNDING)
+    return falls
 
 
 def ground_reaction(

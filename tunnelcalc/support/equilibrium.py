@@ -71,9 +71,15 @@ def equilibrium(
     pressure[~np.isfinite(free_closure + full)] = np.nan
     loaded = np.flatnonzero((full > 0) & np.isfinite(free_closure))
     upper = np.minimum(full, curve.in_situ_stress_mpa)[loaded]
-    # One Newton step from the unsupported state never passes the root: closure is convex.
+    # One Newton step from the unsupported state never passes the root where closure is convex in
+    # the pressure; under finite strain it is not, and the step is held to the bracket.
     active_stiffness = _in_order(np.where(greatest > 0, stiffness_mpa_per_m, 0))
-    start = full / (1 - active_stiffness * unloaded.slope * radius_m)
+    # A wall that has lost all strength gives way infinitely fast under the first pressure: from
+    # there Newton's step is 0, and would pass for a root.
+    steep = np.isinf(unloaded.slope)
+    slope = np.where(steep, 0, unloaded.slope)
+    start = full / (1 - active_stiffness * slope * radius_m)
+    start = np.where(steep, 0.5 * np.minimum(full, curve.in_situ_stress_mpa), start)
 
     def surplus(estimate: Array, index: Array) -> tuple[Array, Array]:
         chosen = loaded[index]
@@ -82,9 +88,12 @@ def equilibrium(
         stiffness = stiffness_mpa_per_m[:, chosen]
         shares = _shares(point.closure_ratio * radius, stiffness, installed_m[:, chosen])
         moving = _in_order(np.where(shares > 0, stiffness, 0))
-        return estimate - _in_order(shares), 1 - moving * point.slope * radius
+        steepness = 1 - moving * point.slope * radius
+        # Slope 0 makes the search halve its bracket.
+        return estimate - _in_order(shares), np.where(np.isinf(steepness), 0, steepness)
 
-    roots = increasing_roots(surplus, np.zeros(loaded.size), upper, start[loaded])
+    first = np.minimum(start[loaded], upper)
+    roots = increasing_roots(surplus, np.zeros(loaded.size), upper, first)
     pressure[loaded] = np.where(roots.converged, roots.value, np.nan)
     return _at_rest(curve, radius_m, pressure, stiffness_mpa_per_m, installed_m)
 
@@ -102,7 +111,9 @@ def _at_rest(
     shares, held_at = _shared_out(pressure, stiffness_mpa_per_m, installed_m)
     acting = _in_order(np.where(shares > 0, stiffness_mpa_per_m, 0))
     give = np.divide(1, acting, out=np.zeros(acting.shape), where=acting > 0)
-    error = np.abs(closure - held_at) / (give - rest.slope * radius_m)
+    # Without pressure the slope may be infinite; then the error is not asked for.
+    slope = np.where(np.isinf(rest.slope), -1, rest.slope)
+    error = np.abs(closure - held_at) / (give - slope * radius_m)
     smallest = NEGLIGIBLE_PRESSURE * curve.in_situ_stress_mpa
     resolved = (pressure == 0) | (error <= np.maximum(LARGEST_ERROR * pressure, smallest))
     return Equilibrium(
