@@ -5,11 +5,15 @@ A plugin is a module, named under the entry-point group `tunnelcalc`, with funct
 """
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.calculation.line import SheetLine
+from tunnelcalc.calculation.working import Working
 from tunnelcalc.errors import InputError, Problem, Problems, ShapeError, Where
 from tunnelcalc.ground_reaction.curve import CurvePoint, GroundCurve
+from tunnelcalc.limits_statement import LIMITS
 from tunnelcalc.outputs.cells import number_text, write_table
 from tunnelcalc.plugin.contract import (
     Amount,
+    ClassCheck,
     ClosureProfileMethod,
     Evaluation,
     GroundReactionMethod,
@@ -18,17 +22,29 @@ from tunnelcalc.plugin.contract import (
     ModulusMethod,
     Parameter,
     ReportWriter,
+    SectionFigure,
+    SectionValues,
     SheetReader,
     StrengthMethod,
     SupportCheck,
     SupportKind,
     ValidityFlag,
 )
+from tunnelcalc.plugin.flag import Condition, Flag
 from tunnelcalc.plugin.hooks import hookimpl
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project, SupportClass
 from tunnelcalc.results import ItemTotal, RunResult, Zone
-from tunnelcalc.sections import Sections
+from tunnelcalc.section_curves import (
+    CaseCurves,
+    ClosureAlongDrive,
+    ReactionOfClass,
+    ReactionOfElement,
+    ReactionOfGround,
+    SectionCurves,
+    StrengthEnvelope,
+)
+from tunnelcalc.sections import Sections, one_section
 from tunnelcalc.support.reaction import (
     AdvanceIncrements,
     GroundRing,
@@ -37,22 +53,33 @@ from tunnelcalc.support.reaction import (
     Reaction,
 )
 from tunnelcalc.text import decoded
+from tunnelcalc.validity import PRACTICE, YES_OR_NO, Level, Side, Threshold
+from tunnelcalc.verification import Standing, VerificationCheck
 from tunnelcalc.vocabulary import Limits
 
 __all__ = [
+    "LIMITS",
+    "PRACTICE",
+    "YES_OR_NO",
     "AdvanceIncrements",
     "Amount",
     "Array",
+    "CaseCurves",
+    "ClassCheck",
+    "ClosureAlongDrive",
     "ClosureProfileMethod",
+    "Condition",
     "CurvePoint",
     "Element",
     "Evaluation",
+    "Flag",
     "GroundCurve",
     "GroundReactionMethod",
     "GroundReader",
     "GroundRing",
     "InputError",
     "ItemTotal",
+    "Level",
     "Limits",
     "LinearSpring",
     "Misfit",
@@ -64,20 +91,34 @@ __all__ = [
     "Project",
     "RawTable",
     "Reaction",
+    "ReactionOfClass",
+    "ReactionOfElement",
+    "ReactionOfGround",
     "ReportWriter",
     "RunResult",
+    "SectionCurves",
+    "SectionFigure",
+    "SectionValues",
     "Sections",
     "ShapeError",
+    "SheetLine",
     "SheetReader",
+    "Side",
+    "Standing",
+    "StrengthEnvelope",
     "StrengthMethod",
     "SupportCheck",
     "SupportClass",
     "SupportKind",
+    "Threshold",
     "ValidityFlag",
+    "VerificationCheck",
     "Where",
+    "Working",
     "Zone",
     "decoded",
     "hookimpl",
     "number_text",
+    "one_section",
     "write_table",
 ]

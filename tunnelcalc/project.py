@@ -9,6 +9,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.chainage import Notation
 from tunnelcalc.rock_mass.laboratory import IntactTests
 from tunnelcalc.sections import Sections
+from tunnelcalc.validity import FlagSettings
 
 DEFAULT_METHODS: Mapping[str, str] = {
     "strength": "hoek_brown_2002",
@@ -17,6 +18,29 @@ DEFAULT_METHODS: Mapping[str, str] = {
     "closure_profile": "vlachopoulos_diederichs_2009",
 }
 """The method of each step when the project names none. Every output states which was used."""
+
+
+DRAINED, WATERTIGHT = "drained", "watertight"
+DRAINAGE = (DRAINED, WATERTIGHT)
+"""What a project may say of the lining, so that stresses become effective under a water head."""
+
+
+@dataclass(frozen=True, slots=True)
+class MethodChoice:
+    """The methods of one step: `names` each once, the first for all ground units but those in
+    `by_unit`."""
+
+    names: tuple[str, ...]
+    by_unit: Mapping[str, str] = field(default_factory=dict)
+
+    def of_unit(self, ground_unit: str) -> str:
+        """The method of a ground unit."""
+        return self.by_unit.get(ground_unit, self.names[0])
+
+
+def method_column(step: str) -> str:
+    """The column that holds the number of each section's method among a step's names."""
+    return f"{step}_method"
 
 
 @dataclass(frozen=True, slots=True)
@@ -60,6 +84,8 @@ class Criteria:
 
     factor_of_safety: float
     closure_pct: float
+    chosen_checks: Mapping[str, bool] = field(default_factory=dict)
+    """Checks of a class that count only by choice, where the project says yes or no."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -120,7 +146,7 @@ class Project:
     """A checked project. `ground` holds its sections by increasing chainage."""
 
     title: str
-    methods: Mapping[str, str]
+    methods: Mapping[str, MethodChoice]
     support_classes: tuple[SupportClass, ...]
     criteria: Criteria
     schedule: ScheduleRules
@@ -132,8 +158,11 @@ class Project:
     origins: tuple[ValueOrigins, ...]
     tests: tuple[UnitTests, ...]
     notation: Notation
+    drainage: str
+    """One of DRAINAGE, or empty: water is then left out."""
     warnings: tuple[str, ...]
     files: tuple[InputFile, ...]
+    flags: FlagSettings = field(default_factory=FlagSettings)
 
     @property
     def class_names(self) -> tuple[str, ...]:

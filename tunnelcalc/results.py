@@ -25,6 +25,10 @@ class CheckLine:
         return f"{self.element}:{self.check}"
 
 
+STRESS_CASES = ("mean", "larger")
+"""Which in-plane stress stands for all sides: the mean, or the larger where they are far from
+equal. By the number in `class_stress_case`."""
+
 CLOSURE_GOVERNS = "closure"
 
 
@@ -67,15 +71,25 @@ class ItemTotal:
 
 @dataclass(frozen=True, slots=True)
 class FlagCount:
-    """How often a flag was raised, and where it could not be assessed for lack of input."""
+    """On how many sections a flag has each level, the levels in the order of their numbers."""
 
     name: str
     meaning: str
+    quantity: str
+    unit: str
     threshold: str
     origin: str
     remedy: str
-    raised: int
+    clear: int
+    advisory: int
+    outside: int
     not_assessed: int
+    overridden: int
+
+    @property
+    def raised(self) -> int:
+        """What a designer must see; what is not assessed is counted apart."""
+        return self.advisory + self.outside + self.overridden
 
 
 @dataclass(frozen=True, slots=True)

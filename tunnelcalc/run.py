@@ -9,17 +9,19 @@ from pathlib import Path
 
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import project_folder, read_project
+from tunnelcalc.outputs.flags_table import write_flags
 from tunnelcalc.outputs.manifest import write_manifest
 from tunnelcalc.outputs.provenance import write_provenance
 from tunnelcalc.outputs.run_folder import Target, copy_inputs, part_folder, sync_folder
 from tunnelcalc.outputs.tables import ChunkTables, write_sections
 from tunnelcalc.pipeline.chain import build_stages, kept_columns
-from tunnelcalc.pipeline.collect import flag_counts, item_totals, zones
+from tunnelcalc.pipeline.collect import item_totals, zones
+from tunnelcalc.pipeline.flags_stage import flag_counts, flag_value, screening_lines
 from tunnelcalc.pipeline.incidents import Incidents
+from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.pipeline.stage import check_chain, run_stages
-from tunnelcalc.pipeline.support_stages import check_lines, plan_classes
 from tunnelcalc.plugin.registry import Registry, describe
-from tunnelcalc.project import Project
+from tunnelcalc.project import MethodChoice, Project
 from tunnelcalc.results import RunResult
 from tunnelcalc.sections import Sections
 
@@ -79,6 +81,7 @@ def compute(
     copy_inputs(folder, project.files)
     plan = plan_classes(project, registry)
     flags = registry.flags(project.plugins)
+    lines = screening_lines(flags, project.flags)
     flag_names = [flag.name for flag in flags]
     incidents = Incidents()
     stages = build_stages(project, registry, plan, incidents)
@@ -102,6 +105,7 @@ def compute(
     finally:
         tables.abandon()
     write_sections(folder, project, sections, flag_names)
+    write_flags(folder, project, sections, lines, lambda k: flag_value(flags[k], sections))
     write_provenance(folder, project)
     quantities = item_totals(project, plan, sections, incidents)
     return write_reports(
@@ -111,7 +115,7 @@ def compute(
             checks=checks,
             zones=zones(project, sections, checks, flag_names),
             quantities=quantities,
-            flags=flag_counts(flags, sections),
+            flags=flag_counts(lines, sections),
             incidents=incidents.listed(),
             warnings=project.warnings,
             methods=_sources(project, registry),
@@ -147,6 +151,14 @@ def ending(result: RunResult, strict: bool) -> ExitCode:
 
 def _sources(project: Project, registry: Registry) -> Mapping[str, str]:
     return {
-        step: f"{name}: {registry.offers[step, name].thing.source}"
-        for step, name in project.methods.items()
+        step: "; ".join(_described(registry, step, choice, name) for name in choice.names)
+        for step, choice in project.methods.items()
     }
+
+
+def _described(registry: Registry, step: str, choice: MethodChoice, name: str) -> str:
+    """A method with its source, and the ground units that it is for where they are named."""
+    units = [unit for unit, method in choice.by_unit.items() if method == name]
+    others = ["all other ground"] if len(choice.names) > 1 and name == choice.names[0] else []
+    where = f" ({', '.join((*units, *others))})" if units or others else ""
+    return f"{name}{where}: {registry.method(step, name).source}"

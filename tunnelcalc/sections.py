@@ -54,3 +54,13 @@ class Sections(Mapping[str, Array]):
 def joined(parts: Sequence[Sections]) -> Sections:
     """Sections of consecutive parts that have the same columns."""
     return Sections({name: np.concatenate([part[name] for part in parts]) for name in parts[0]})
+
+
+def one_section(values: Mapping[str, float | str]) -> Sections:
+    """One section from its values by name."""
+    return Sections(
+        {
+            name: np.array([value], dtype=object if isinstance(value, str) else float)
+            for name, value in values.items()
+        }
+    )

@@ -85,6 +85,11 @@ class Quantity:
 _POSITIVE = Limits(0, above=True)
 _NOT_NEGATIVE = Limits(0)
 _COUNT = Limits(0, 1e6, whole=True)
+_NONE_OR_PRESENT = ("none", "present")
+
+
+def _choice(name: str, meaning: str, *choices: str) -> Quantity:
+    return Quantity(name, "", "", meaning, sort=Sort.CHOICE, choices=choices)
 
 
 def _of_ground() -> tuple[Quantity, ...]:
@@ -138,11 +143,18 @@ def _of_ground() -> tuple[Quantity, ...]:
             "",
             "residual geological strength index",
             Limits(0, 100, above=True),
-            used=False,
         ),
-        Quantity("rmr89", "RMR89", "", "rock mass rating, actual water", rating, used=False),
+        *_of_entered_strength(),
+        Quantity(
+            "disturbed_thickness_m",
+            "",
+            "m",
+            "thickness of the ring around the opening to which the disturbance is confined",
+            Limits(0, 100),
+        ),
+        Quantity("rmr89", "RMR89", "", "rock mass rating, actual water", rating),
         Quantity("rmr89_dry", "RMR89'", "", "rock mass rating, dry", rating),
-        Quantity("q", "Q", "", "rock mass quality Q", _POSITIVE, used=False),
+        Quantity("q", "Q", "", "rock mass quality Q", _POSITIVE),
         Quantity("q_prime", "Q'", "", "Q without water and stress", _POSITIVE),
         Quantity("jcond89", "JCond89", "", "joint condition rating", Limits(0, 30)),
         Quantity("rqd_pct", "RQD", "%", "rock quality designation", rating),
@@ -157,20 +169,16 @@ def _of_ground() -> tuple[Quantity, ...]:
             Limits(0, 100, above=True),
         ),
         Quantity("water_head_m", "hw", "m", "water head above the axis", _NOT_NEGATIVE),
-        Quantity("inflow_l_min_10m", "", "L/min/10m", "water inflow", _NOT_NEGATIVE, used=False),
-        Quantity(
-            "joint_set_count", "", "", "number of joint sets", Limits(0, 20, whole=True), used=False
-        ),
-        Quantity("joint_spacing_m", "", "m", "spacing of joints", _POSITIVE, used=False),
+        Quantity("inflow_l_min_10m", "", "L/min/10m", "water inflow", _NOT_NEGATIVE),
+        Quantity("joint_set_count", "", "", "number of joint sets", Limits(0, 20, whole=True)),
+        Quantity("joint_spacing_m", "", "m", "spacing of joints", _POSITIVE),
         Quantity("block_width_m", "", "m", "width of critical blocks", _POSITIVE),
-        Quantity(
-            "swelling_minerals",
-            "",
-            "",
-            "swelling minerals",
-            sort=Sort.CHOICE,
-            choices=("none", "present"),
-            used=False,
+        _choice("swelling_minerals", "swelling minerals", *_NONE_OR_PRESENT),
+        _choice("excavation", "whether the section is driven in stages", "full_face", "staged"),
+        _choice("heterogeneous_ground", "alternation of unlike rock", *_NONE_OR_PRESENT),
+        _choice("creeping_ground", "ground that creeps", *_NONE_OR_PRESENT),
+        _choice(
+            "site_hazards", "earthquake, gas, aggressive ground, temperature", *_NONE_OR_PRESENT
         ),
         Quantity(
             "neighbour_clear_distance_m",
@@ -178,9 +186,8 @@ def _of_ground() -> tuple[Quantity, ...]:
             "m",
             "clear distance to a neighbouring opening",
             _NOT_NEGATIVE,
-            used=False,
         ),
-        Quantity("portal_distance_m", "", "m", "distance to the portal", _NOT_NEGATIVE, used=False),
+        Quantity("portal_distance_m", "", "m", "distance to the portal", _NOT_NEGATIVE),
         Quantity(
             "boundary_tolerance_m",
             "",
@@ -189,7 +196,33 @@ def _of_ground() -> tuple[Quantity, ...]:
             _NOT_NEGATIVE,
             used=False,
         ),
-        Quantity("fault_width_m", "", "m", "width of the fault zone", _NOT_NEGATIVE, used=False),
+        Quantity("fault_width_m", "", "m", "width of the fault zone, 0 for none", _NOT_NEGATIVE),
+    )
+
+
+def _of_entered_strength() -> tuple[Quantity, ...]:
+    """Constants of strength criteria, where tests or back-analysis give them directly."""
+    constant, exponent = Limits(0, 60, above=True), Limits(0.5, 1, below=True)
+    share, cohesion = Limits(0, 1), Limits(0, 500)
+    angle = Limits(0, 80)
+    return (
+        Quantity("mb", "mb", "", "Hoek-Brown constant of the rock mass", constant),
+        Quantity("s", "s", "", "Hoek-Brown constant of the rock mass", share),
+        Quantity("a", "a", "", "Hoek-Brown exponent of the rock mass", exponent),
+        Quantity("friction_angle_deg", "phi", "deg", "friction angle of the rock mass", angle),
+        Quantity("cohesion_mpa", "c", "MPa", "cohesion of the rock mass", cohesion),
+        Quantity("residual_mb", "mb_r", "", "residual Hoek-Brown constant", constant),
+        Quantity("residual_s", "s_r", "", "residual Hoek-Brown constant", share),
+        Quantity("residual_a", "a_r", "", "residual Hoek-Brown exponent", exponent),
+        Quantity("residual_friction_angle_deg", "phi_r", "deg", "residual friction angle", angle),
+        Quantity("residual_cohesion_mpa", "c_r", "MPa", "residual cohesion", cohesion),
+        Quantity(
+            "critical_shear_strain",
+            "eta*",
+            "",
+            "plastic shear strain at which the strength is residual",
+            Limits(0, 1, above=True),
+        ),
     )
 
 
@@ -202,16 +235,31 @@ def _of_results() -> tuple[Quantity, ...]:
         Quantity("confinement_mpa", "s3max", "MPa", "upper confinement of the equivalent line"),
         Quantity("tested_confinement_mpa", "", "MPa", "greatest minor stress of triaxial tests"),
         Quantity("radius_m", "R", "m", "radius of the opening", Limits(0.5, 30)),
-        Quantity("in_situ_stress_mpa", "p0", "MPa", "mean in-plane in-situ stress"),
-        Quantity("mb", "mb", "", "Hoek-Brown constant of the rock mass"),
-        Quantity("s", "s", "", "Hoek-Brown constant of the rock mass"),
-        Quantity("a", "a", "", "Hoek-Brown exponent of the rock mass"),
+        Quantity("water_pressure_mpa", "uw", "MPa", "water pressure taken off the total stress"),
+        Quantity("effective_vertical_stress_mpa", "sv'", "MPa", "vertical stress less water"),
+        Quantity("effective_horizontal_stress_mpa", "sh'", "MPa", "k0 times the vertical one"),
+        Quantity("in_situ_stress_mpa", "p0", "MPa", "mean in-plane in-situ stress, effective"),
+        Quantity(
+            "larger_stress_mpa",
+            "",
+            "MPa",
+            "larger in-plane stress, with which sections far from equal stress are run too",
+        ),
+        Quantity("mass_disturbance", "D", "", "disturbance factor of the mass beyond the ring"),
         Quantity("rock_mass_strength_mpa", "sc", "MPa", "unconfined strength of the rock mass"),
         Quantity("tensile_strength_mpa", "st", "MPa", "tensile strength, magnitude"),
         Quantity("global_strength_mpa", "scm", "MPa", "global strength of the rock mass"),
-        Quantity("friction_angle_deg", "phi", "deg", "equivalent friction angle"),
-        Quantity("cohesion_mpa", "c", "MPa", "equivalent cohesion"),
         Quantity("deformation_modulus_mpa", "Erm", "MPa", "deformation modulus used"),
+        Quantity("ring_mb", "mb_d", "", "Hoek-Brown constant of the disturbed ring"),
+        Quantity("ring_s", "s_d", "", "Hoek-Brown constant of the disturbed ring"),
+        Quantity("ring_a", "a_d", "", "Hoek-Brown exponent of the disturbed ring"),
+        Quantity("ring_modulus_mpa", "Ed", "MPa", "deformation modulus of the disturbed ring"),
+        Quantity(
+            "squeezing_strength_mpa", "", "MPa", "strength in the squeezing relation, not scm"
+        ),
+        Quantity("squeezing_strain_pct", "", "%", "closure without support, squeezing relation"),
+        Quantity("face_strain_pct", "", "%", "strain of the face without support"),
+        Quantity("spalling_depth_m", "", "m", "depth of spalling were the rock massive"),
         Quantity("critical_pressure_mpa", "pcr", "MPa", "pressure below which the wall yields"),
         Quantity("plastic_radius_m", "Rp", "m", "radius of the plastic zone without support"),
         Quantity("closure_mm", "u", "mm", "closure without support, far from the face"),
@@ -228,6 +276,27 @@ def _of_results() -> tuple[Quantity, ...]:
         Quantity("least_factor_of_safety", "", "", "least factor of a zone's scheduled class"),
         Quantity("element_pressure_mpa", "", "MPa", "wall pressure carried by one element"),
         Quantity("element_capacity_mpa", "", "MPa", "wall pressure at the element's limit"),
+        *_of_curves(),
+    )
+
+
+def _of_curves() -> tuple[Quantity, ...]:
+    """What only the curves of one section have."""
+    line = "the equivalent straight line"
+    return (
+        Quantity("element_water_mpa", "", "MPa", "water pressure that a ring carries besides"),
+        Quantity("face_distance_m", "x", "m", "distance from the face, positive behind it"),
+        Quantity("profile_closure_mm", "", "mm", "closure without support, so far from the face"),
+        Quantity("closure_share", "", "", "share of the closure far behind the face"),
+        Quantity("minor_stress_mpa", "s3", "MPa", "minor principal stress"),
+        Quantity("major_stress_mpa", "s1", "MPa", "major principal stress at failure"),
+        Quantity("line_major_stress_mpa", "", "MPa", f"major principal stress by {line}"),
+        Quantity("line_difference_mpa", "", "MPa", f"major stress by {line}, less the criterion's"),
+        Quantity("line_difference_pct", "", "%", "the same, per cent of the criterion's"),
+        Quantity("normal_stress_mpa", "sn", "MPa", "normal stress on the plane of failure"),
+        Quantity("shear_stress_mpa", "tau", "MPa", "shear stress on the plane of failure"),
+        Quantity("line_shear_stress_mpa", "", "MPa", f"shear stress by {line}, same normal stress"),
+        Quantity("line_shear_difference_mpa", "", "MPa", "shear stress by it, less criterion's"),
     )
 
 
@@ -243,8 +312,8 @@ WORDS = {
     "to_chainage": "end, as the project writes chainages",
     "governing_chainage": "middle of the governing section, as the project writes chainages",
     "profile": "name of the opening's profile",
-    "quantity": "a ground quantity",
-    "value": "in the unit of its row",
+    "quantity": "a ground quantity, or what a flag compares",
+    "value": "in the unit of its row, or yes or no",
     "origin": "table, unit, estimated, levels or assumed",
     "method": "by which method or rule, empty for a value as written",
     "tests": "number of tests",
@@ -253,6 +322,9 @@ WORDS = {
     "ground_unit": "name of the ground unit",
     "ground_units": "ground units of a zone, joined by a semicolon",
     "support_class": "name of the class, or none_adequate",
+    "stress_case": "which in-plane stress governs the row: mean, or larger",
+    "strength": "whose strength: peak or residual of the mass, or of the disturbed ring",
+    "point": "what is special about a point of a curve, joined by a semicolon",
     "required_class": "first class that meets every criterion, or none_adequate",
     "scheduled_class": "class after zoning, or none_adequate",
     "adequate": "whether the class meets every criterion: yes or no",
@@ -263,10 +335,17 @@ WORDS = {
     "capacity": "in the unit of its row",
     "unit": "unit of the row's numbers",
     "outcome": "pass, fail or not_evaluated",
-    "reason": "why a check could not be evaluated",
+    "reason": "why a check was not evaluated, what a flag lacks, or why it was accepted",
     "item": "item of the quantities",
     "amount": "in the unit of its row",
-    "flags": "names of the raised flags, sorted, joined by a semicolon",
+    "flags": "names of flags at advisory, outside or overridden, sorted, joined by a semicolon",
+    "flag": "name of a flag on validity",
+    "level": "clear, advisory, outside, not_assessed or overridden",
+    "threshold": "where the levels of a flag begin",
+    "threshold_source": "publication, common practice or project setting",
+    "meaning": "what a raised flag means",
+    "remedy": "what to do about it",
+    "person": "who accepted the flag",
 }
 """Columns of the outputs that hold words, or numbers whose unit stands in the row."""
 
@@ -276,6 +355,8 @@ UNIT_SUFFIXES = ("_mean", TESTS_SUFFIX, "_probable", "_cautious")
 
 DEVIATION_SUFFIX = "_sd"
 """NAME_sd is the standard deviation of the ground column NAME."""
+_DEVIATION_USED = ("intact_strength_mpa",)
+"""Ground columns whose deviation the flags look at."""
 
 
 def ground_quantity(name: str) -> Quantity | None:
@@ -287,9 +368,9 @@ def ground_quantity(name: str) -> Quantity | None:
         if base is None or base.sort is not Sort.NUMBER:
             continue
         if suffix == DEVIATION_SUFFIX:
-            return Quantity(
-                name, "", base.unit, f"standard deviation of {base.name}", _NOT_NEGATIVE, used=False
-            )
+            meaning = f"standard deviation of {base.name}"
+            used = base.name in _DEVIATION_USED
+            return Quantity(name, "", base.unit, meaning, _NOT_NEGATIVE, used=used)
         if suffix == TESTS_SUFFIX:
             return Quantity(name, "", "", f"number of tests of {base.name}", _COUNT)
         word = suffix.removeprefix("_")

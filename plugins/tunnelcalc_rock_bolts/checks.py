@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 import numpy as np
 
 from tunnelcalc import api
 from tunnelcalc_rock_bolts.formulas import MN_PER_KN
 from tunnelcalc_rock_bolts.kind import RockBolts
+from tunnelcalc_rock_bolts.lines import length_lines, tension_lines
 
 APPLIES_TO = (RockBolts.name,)
 
@@ -28,6 +31,10 @@ class Tension:
         force = sections["element_pressure_mpa"] * share / MN_PER_KN
         return api.Evaluation(force, np.full(sections.count, element.number("capacity_kn")))
 
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        found = self.evaluate(api.one_section(values), element)
+        return tension_lines(values, element, found)
+
 
 class LengthBeyondPlasticZone:
     """A bolt anchored inside the plastic zone is not credited."""
@@ -48,3 +55,7 @@ class LengthBeyondPlasticZone:
         depth = sections["supported_plastic_radius_m"] - sections["radius_m"]
         needed = depth + element.number("anchorage_length_m")
         return api.Evaluation(needed, np.full(sections.count, element.number("length_m")))
+
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        found = self.evaluate(api.one_section(values), element)
+        return length_lines(values, element, found)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 
 import numpy as np
 
@@ -13,6 +13,7 @@ from tunnelcalc_rock_bolts.formulas import (
     capacity_pressure_mpa,
     end_anchored_stiffness_mpa_per_m,
 )
+from tunnelcalc_rock_bolts.lines import reaction_lines
 
 EM_1110_1_2907 = "em_1110_1_2907"
 NO_PATTERN_RULES = "none"
@@ -22,6 +23,7 @@ class RockBolts:
     """End-anchored, ungrouted bolts in a regular pattern over the whole ring."""
 
     name = "rock_bolts"
+    is_ring = False
     meaning = (
         "end-anchored ungrouted bolts as springs on still anchors; Hoek & Brown (1980), "
         "Brady & Brown App. C"
@@ -96,3 +98,6 @@ class RockBolts:
         bolts = 2 * np.pi * sections["radius_m"] / share
         yield api.Amount("bolts", "no", bolts)
         yield api.Amount("bolt_length", "m", bolts * element.number("length_m"))
+
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        return reaction_lines(values, element)

@@ -7,7 +7,7 @@ and maximum spacing [from memory]. "Spacing not more than half the length" is th
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -15,6 +15,7 @@ import numpy as np
 from tunnelcalc import api
 from tunnelcalc.api import Array, Element, Sections
 from tunnelcalc_rock_bolts.kind import EM_1110_1_2907, RockBolts
+from tunnelcalc_rock_bolts.pattern_lines import rule_lines
 
 SPACINGS_IN_LENGTH = 2.0
 BLOCK_WIDTHS_IN_LENGTH = 3.0
@@ -38,6 +39,8 @@ class PatternRule:
     name: str
     meaning: str
     compare: Callable[[Sections, Element], api.Evaluation]
+    formulas: Callable[[api.SectionValues], tuple[str, str]]
+    """of demand and capacity on a calculation sheet"""
     applies_to: tuple[str, ...] = (RockBolts.name,)
     unit: str = "m"
     carries_load: bool = False
@@ -53,6 +56,10 @@ class PatternRule:
             demand=np.round(found.demand, WRITTEN_DECIMALS),
             capacity=np.round(found.capacity, WRITTEN_DECIMALS),
         )
+
+    def lines(self, values: api.SectionValues, element: Element) -> Sequence[api.SheetLine]:
+        found = self.evaluate(api.one_section(values), element)
+        return rule_lines(values, element, self.formulas(values), found)
 
 
 def least_length_by_span_m(span_m: Array) -> Array:
@@ -123,30 +130,42 @@ def _largest_spacing(sections: Sections, element: Element) -> api.Evaluation:
     )
 
 
+def _span_formulas(values: api.SectionValues) -> tuple[str, str]:
+    span = float(values["span_m"])
+    if span < SHORT_SPAN_M:
+        return "0.5*B", "l"
+    return ("0.25*B" if span > LONG_SPAN_M else "3 + (B - 6)/(18 - 6)*(4.5 - 3)"), "l"
+
+
 PATTERN_RULES = (
     PatternRule(
         "pattern_length_by_spacing",
         "twice the spacing against the length; EM 1110-1-2907 (1980) [from memory]",
         _length_by_spacing,
+        lambda values: ("2*max(ba, bl)", "l"),
     ),
     PatternRule(
         "pattern_length_by_block",
         "three block widths against the length; EM 1110-1-2907 (1980) [from memory]",
         _length_by_block,
+        lambda values: ("3*b", "l"),
     ),
     PatternRule(
         "pattern_length_by_span",
         "length for the span against the length; EM 1110-1-2907 (1980) [from memory]",
         _length_by_span,
+        _span_formulas,
     ),
     PatternRule(
         "pattern_spacing_by_block",
         "spacing against one and a half block widths; EM 1110-1-2907 (1980) [from memory]",
         _spacing_by_block,
+        lambda values: ("max(ba, bl)", "1.5*b"),
     ),
     PatternRule(
         "pattern_largest_spacing",
         "spacing against 2 m; EM 1110-1-2907 (1980) [from memory]",
         _largest_spacing,
+        lambda values: ("max(ba, bl)", ""),
     ),
 )

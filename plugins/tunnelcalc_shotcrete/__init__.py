@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Iterable, Sequence
 
 import numpy as np
 
@@ -16,12 +16,14 @@ from tunnelcalc_shotcrete.formulas import (
     ring_stiffness_mpa_per_m,
     ring_volume_m3_per_m,
 )
+from tunnelcalc_shotcrete.lines import reaction_lines, stress_lines
 
 
 class Shotcrete:
     """A closed ring of sprayed concrete of one strength and stiffness."""
 
     name = "shotcrete"
+    is_ring = True
     meaning = "ring closed through the invert, thick-walled cylinder; Lame; Hoek & Brown (1980)"
     parameters = (
         Parameter("thickness_mm", "thickness of the ring", "mm", Limits(10, 2000)),
@@ -60,6 +62,9 @@ class Shotcrete:
         volume = ring_volume_m3_per_m(sections["radius_m"], thickness)
         yield api.Amount("shotcrete", "m3", volume)
 
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        return reaction_lines(values, element)
+
 
 class HoopStress:
     """Largest hoop stress of the ring, at its inner face, against its strength."""
@@ -80,6 +85,9 @@ class HoopStress:
             element.number("thickness_mm") * M_PER_MM,
         )
         return api.Evaluation(stress, np.full(sections.count, element.number("strength_mpa")))
+
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        return stress_lines(values, element)
 
 
 @api.hookimpl

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 
 import numpy as np
 
@@ -17,6 +17,7 @@ from tunnelcalc_steel_sets.formulas import (
     hoop_capacity_mpa,
     hoop_stiffness_mpa_per_m,
 )
+from tunnelcalc_steel_sets.lines import reaction_lines, yield_lines
 
 M_PER_MM = 1e-3
 M2_PER_MM2 = 1e-6
@@ -34,6 +35,7 @@ class SteelSets:
     """Closed rings of rolled steel, embedded in shotcrete or blocked to the rock."""
 
     name = "steel_sets"
+    is_ring = True
     meaning = (
         "closed steel rings, embedded (thin ring) or blocked (elastic ring on blocks; stiffness "
         "Hoek & Brown (1980), capacity by statics)"
@@ -118,6 +120,13 @@ class SteelSets:
         yield api.Amount("steel_sets", "no", sets)
         yield api.Amount("steel", "kg", sets * profile.area_m2 * axis * STEEL_DENSITY_KG_M3)
 
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        spring = self.reaction(api.one_section(values), element)
+        assert isinstance(spring, api.LinearSpring)
+        found = (float(spring.stiffness_mpa_per_m[0]), float(spring.capacity_mpa[0]))
+        blocks = _blocks(element) if element.choice("contact") == BLOCKED else None
+        return reaction_lines(values, element, _profile(element), blocks, found)
+
 
 class Yield:
     """Pressure on the sets against the pressure at which they begin to yield.
@@ -137,6 +146,9 @@ class Yield:
 
     def evaluate(self, sections: api.Sections, element: api.Element) -> api.Evaluation:
         return api.Evaluation(sections["element_pressure_mpa"], sections["element_capacity_mpa"])
+
+    def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
+        return yield_lines(values)
 
 
 def _profile(element: api.Element) -> Profile:

@@ -75,6 +75,21 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
             ],
             "criteria": {"factor_of_safety": 1.5, "closure_pct": 1},
             "schedule": {"minimum_zone_m": 20, "carry_m": 5},
+            "flags": {
+                "not_assessed": "outside",
+                "thresholds": {
+                    "shallow_cover": {"advisory_below": 8, "outside_below": 3, "origin": "invented"}
+                },
+                "overrides": [
+                    {
+                        "flag": "portal",
+                        "from_m": 0,
+                        "to_m": "0+020.00",
+                        "person": "A. Person",
+                        "reason": "invented",
+                    }
+                ],
+            },
         }
     )
 

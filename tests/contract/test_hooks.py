@@ -10,8 +10,10 @@ import pytest
 from contract.source import ROOT
 from unit.plugin.strangers import own_points
 
+from tunnelcalc.builtin import verification
 from tunnelcalc.plugin import contract, hooks
 from tunnelcalc.plugin.registry import OWN_DISTRIBUTION, SORTS, load_plugins
+from tunnelcalc.verification import VerificationCheck
 
 HOOKS = {
     name: function
@@ -49,6 +51,15 @@ def test_tunnelcalc_register_support_checks():
         contract.SupportCheck,
         "support_check",
         *("tension", "hoop_stress", "yield"),
+    )
+
+
+def test_tunnelcalc_register_class_checks():
+    assert_hook(
+        "tunnelcalc_register_class_checks",
+        contract.ClassCheck,
+        "class_check",
+        *("crown_dead_weight", "water_on_lining"),
     )
 
 
@@ -94,6 +105,15 @@ def test_tunnelcalc_register_validity_flags():
     )
 
 
+def test_tunnelcalc_register_verification_checks():
+    assert_hook(
+        "tunnelcalc_register_verification_checks",
+        VerificationCheck,
+        "verification_check",
+        *(check.name for check in verification.STRENGTH_CHECKS),
+    )
+
+
 def test_tunnelcalc_register_ground_readers():
     assert_hook("tunnelcalc_register_ground_readers", contract.GroundReader, "ground_reader", "csv")
 
@@ -104,6 +124,15 @@ def test_tunnelcalc_register_report_writers():
         contract.ReportWriter,
         "report_writer",
         "schedule_tables",
+    )
+
+
+def test_tunnelcalc_register_section_figures():
+    assert_hook(
+        "tunnelcalc_register_section_figures",
+        contract.SectionFigure,
+        "section_figure",
+        *("ground_reaction", "closure_profile", "strength_envelope", "shear_strength"),
     )
 
 

@@ -115,6 +115,14 @@ BROKEN = {
     "descending-from-nowhere": set_at("chainage", {"direction": "descending"}),
     "equation-by-half": set_at("chainage", {"equations": [{"back": 5}]}),
     "method-unknown": set_at("methods", "strength", "hoek_brown_1980"),
+    "threshold-of-no-flag": set_at("flags", {"thresholds": {"deep": {"advisory_above": 1}}}),
+    "threshold-of-no-side": set_at("flags", {"thresholds": {"low_gsi": {"outside_below": 1}}}),
+    "threshold-of-yes-or-no": set_at("flags", {"thresholds": {"creep": {"advisory_above": 1}}}),
+    "threshold-without-value": set_at("flags", {"thresholds": {"low_gsi": {"origin": "x"}}}),
+    "not-assessed-as-clear": set_at("flags", {"not_assessed": "clear"}),
+    "override-by-nobody": set_at(
+        "flags", {"overrides": [{"flag": "portal", "from_m": 0, "to_m": 9, "reason": "x"}]}
+    ),
     "plugin-unknown": set_at("plugins", ["no_such_plugin"]),
 }
 

@@ -5,17 +5,29 @@ from __future__ import annotations
 import pytest
 
 from tunnelcalc.builtin.schedule_tables import QUANTITIES_HEADER, SCHEDULE_HEADER
-from tunnelcalc.outputs.tables import CHECK_HEADER, CLASS_HEADER, SECTION_COLUMNS
+from tunnelcalc.outputs.curve_tables import (
+    CLOSURE_PROFILE_HEADER,
+    GROUND_REACTION_HEADER,
+    STRENGTH_ENVELOPE_HEADER,
+    SUPPORT_REACTION_HEADER,
+)
+from tunnelcalc.outputs.flags_table import FLAGS_HEADER
+from tunnelcalc.outputs.tables import CHECK_HEADER, CLASS_HEADER, OPTIONAL_COLUMNS, SECTION_COLUMNS
 from tunnelcalc.vocabulary import GROUND, QUANTITIES, WORDS, Sort
 
 INTERVAL = ("chainage_m", "from_m", "to_m", "ground_unit")
 CHOSEN = ("required_class", "scheduled_class", "flags")
 OUTPUT = {
-    "sections.csv": (*INTERVAL, *SECTION_COLUMNS, *CHOSEN),
+    "sections.csv": (*INTERVAL, *SECTION_COLUMNS, *OPTIONAL_COLUMNS, *CHOSEN),
     "classes.csv": CLASS_HEADER,
     "checks.csv": CHECK_HEADER,
     "schedule.csv": SCHEDULE_HEADER,
     "quantities.csv": QUANTITIES_HEADER,
+    "flags.csv": FLAGS_HEADER,
+    "ground_reaction.csv": GROUND_REACTION_HEADER,
+    "closure_profile.csv": CLOSURE_PROFILE_HEADER,
+    "support_reaction.csv": SUPPORT_REACTION_HEADER,
+    "strength_envelope.csv": STRENGTH_ENVELOPE_HEADER,
 }
 COLUMNS = sorted({name for header in OUTPUT.values() for name in header})
 
@@ -47,6 +59,18 @@ GROUND_COLUMNS = {
     "modulus_ratio",
     "rock_mass_modulus_mpa",
     "residual_gsi",
+    "mb",
+    "s",
+    "a",
+    "friction_angle_deg",
+    "cohesion_mpa",
+    "residual_mb",
+    "residual_s",
+    "residual_a",
+    "residual_friction_angle_deg",
+    "residual_cohesion_mpa",
+    "critical_shear_strain",
+    "disturbed_thickness_m",
     "rmr89",
     "rmr89_dry",
     "q",
@@ -63,6 +87,10 @@ GROUND_COLUMNS = {
     "joint_spacing_m",
     "block_width_m",
     "swelling_minerals",
+    "excavation",
+    "heterogeneous_ground",
+    "creeping_ground",
+    "site_hazards",
     "neighbour_clear_distance_m",
     "portal_distance_m",
     "boundary_tolerance_m",

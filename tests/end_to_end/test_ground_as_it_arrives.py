@@ -188,7 +188,10 @@ def test_flags_are_raised_where_estimates_differ_or_tests_fall_short(arrived: Pa
         for name in ("estimates_differ", "tests_below_confinement"):
             assert (name in flags) == (row["ground_unit"] == "siltstone")
     told = json.loads((arrived / "run.json").read_text(encoding="utf-8"))
-    assert "water heads follow from the water table, but stresses are total" in str(told)
+    assert (
+        "water heads are given, but ground: drainage is not: stresses and strength are total"
+        in str(told)
+    )
 
 
 def test_each_value_says_where_it_came_from(arrived: Path):

@@ -42,7 +42,10 @@ def test_a_starter_project_validates_and_runs_as_it_is(tmp_path: Path):
     assert set(files_of(tmp_path)) == {"first drive", *(f"first drive/{name}" for name in FILES)}
     checked = tunnelcalc("validate", "first drive", folder=tmp_path)
     assert (checked.returncode, checked.stderr) == (0, "")
-    assert checked.stdout == "no problems found: 22 sections, 2 support classes\n"
+    assert checked.stdout == (
+        "note: water heads are given, but ground: drainage is not: stresses and strength are "
+        "total\nno problems found: 22 sections, 2 support classes\n"
+    )
     ran = tunnelcalc("run", "first drive", "--strict", folder=tmp_path)
     assert (ran.returncode, ran.stderr) == (0, "")
     schedule = rows(tmp_path / "first drive" / "runs" / "0001" / "schedule.csv")

@@ -27,8 +27,8 @@ CASES: dict[str, Case] = {
     "key-unknown": (
         replaced("project.yaml", "carry_m: 5\n", "carry_m: 5\ncolour: grey\n"),
         'project.yaml:45:1: key "colour" is unknown',
-        "  allowed: title, chainage, opening, ground, methods, plugins, support_classes, criteria, "
-        "schedule",
+        "  allowed: title, chainage, opening, methods, plugins, criteria, ground, support_classes, "
+        "schedule, flags",
         "  fix: remove it, or correct its name",
     ),
     "key-missing": (
@@ -80,8 +80,9 @@ CASES: dict[str, Case] = {
             "methods:\n  deformation_modulus: hoek_diedrichs_2006\nsupport_classes:\n",
         ),
         'project.yaml:10:3: key "methods.deformation_modulus" holds "hoek_diedrichs_2006"',
-        "  allowed: hoek_diederichs_2006",
-        "  fix: write hoek_diederichs_2006",
+        "  allowed: barton_2002 or bieniawski_1978 or hoek_2002 or hoek_diederichs_2006 or "
+        "hoek_diederichs_2006_simplified or serafim_pereira_1983",
+        "  fix: did you mean hoek_diederichs_2006?",
     ),
     "plugin-misspelt": (
         replaced("project.yaml", "support_classes:\n", "plugins: [shotcret]\nsupport_classes:\n"),

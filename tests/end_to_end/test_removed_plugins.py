@@ -82,6 +82,7 @@ def test_without_the_schedule_tables_the_others_are_the_same(project: Path, tmp_
     less = run_project(project, without("schedule_tables"), out=tmp_path / "less").folder
     assert {path.name for path in less.glob("*.csv")} == {
         "sections.csv",
+        "flags.csv",
         "classes.csv",
         "checks.csv",
         "ground_values.csv",

@@ -10,6 +10,7 @@ from end_to_end.projects import completed, files_of, run, tables_of
 
 TABLES = {
     "sections.csv",
+    "flags.csv",
     "classes.csv",
     "checks.csv",
     "schedule.csv",
@@ -65,7 +66,7 @@ def test_the_manifest_says_with_what_and_how_the_run_was_made(finished: Path):
         "closure_profile",
     }
     assert told["options"] == {"strict": False, "chunk_sections": 2048}
-    assert told["criteria"] == {"factor_of_safety": 1.5, "closure_pct": 1.0}
+    assert told["criteria"] == {"factor_of_safety": 1.5, "closure_pct": 1.0, "chosen_checks": {}}
     assert told["schedule"] == {"minimum_zone_m": 20.0, "carry_m": 5.0}
     assert told["counts"]["sections"] == 16
     assert told["counts"]["sections_without_adequate_class"] == 3
@@ -73,8 +74,8 @@ def test_the_manifest_says_with_what_and_how_the_run_was_made(finished: Path):
     assert told["not_evaluated"] == []
     assert any("licensed engineers" in limit for limit in told["limits"])
     flags = {flag["name"]: flag for flag in told["flags"]}
-    assert flags["stress_ratio_assumed"]["raised"] == 3
-    assert flags["dilation_assumed"]["raised"] == 3
+    assert flags["stress_ratio_assumed"]["advisory"] == 3
+    assert flags["dilation_assumed"]["advisory"] == 3
     assert all(flag["threshold"] and flag["origin"] for flag in flags.values())
 
 

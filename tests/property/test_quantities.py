@@ -12,10 +12,11 @@ from unit.pipeline.projects import along, project, three_classes
 
 from tunnelcalc.pipeline.collect import item_totals, zones
 from tunnelcalc.pipeline.incidents import Incidents
-from tunnelcalc.pipeline.support_stages import check_lines, plan_classes
+from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.schedule.selection import NONE_ADEQUATE
 from tunnelcalc.sections import Sections
+from tunnelcalc.validity import Level, is_raised
 
 REGISTRY = load_plugins()
 CLASS_COUNT = len(three_classes())
@@ -46,7 +47,7 @@ def scheduled_sections(draw):
                 np.array(column(st.floats(0.0, 1.0)))[:, None], CLASS_COUNT, axis=1
             ),
             "class_governing": np.zeros((count, CLASS_COUNT), dtype=np.int32),
-            "flag_raised": np.array(column(st.booleans()))[:, None],
+            "flag_level": np.array(column(st.sampled_from(list(Level))), dtype=np.int8)[:, None],
             "ground_unit": np.array(column(st.sampled_from(["", "a", "b"])), dtype=object),
         }
     )
@@ -129,7 +130,9 @@ def test_a_zone_tells_the_worst_of_its_sections(sections):
         assert {int(sections["scheduled_class"][row]) for row in rows} == {number}
         units = {sections["ground_unit"][row] for row in rows} - {""}
         assert zone.ground_units == tuple(sorted(units))
-        assert zone.flags == (("flag",) if any(sections["flag_raised"][list(rows), 0]) else ())
+        assert zone.flags == (
+            ("flag",) if any(is_raised(sections["flag_level"][list(rows), 0])) else ()
+        )
         if number == NONE_ADEQUATE:
             assert zone.needed_pressure_mpa == max(
                 float(sections["needed_pressure_mpa"][row]) for row in rows

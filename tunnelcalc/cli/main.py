@@ -23,7 +23,8 @@ EPILOG = (
     "An aid to, and no substitute for, licensed engineering judgement; local codes govern. "
     "Exit codes: 0 complete; 1 defect or machine failure; 2 wrong input; 3 complete, but "
     "something could not be evaluated; 4 with --strict, a section has no adequate class; "
-    "6 the folder was filled by another run; 130 interrupted."
+    "5 a sheet does not agree with its run; 6 the folder was filled by another run; "
+    "130 interrupted."
 )
 
 
@@ -67,7 +68,45 @@ def build_parser() -> argparse.ArgumentParser:
         "--out", type=Path, metavar="FILE", help="write it there; an earlier one is replaced"
     )
 
+    explain = commands.add_parser(
+        "explain", help="print every step of one section of a run, to be redone by hand"
+    )
+    explain.add_argument("run", type=Path, metavar="RUN", help="folder that `run` has written")
+    explain.add_argument(
+        "--at", required=True, metavar="CHAINAGE", help="as the project writes chainages"
+    )
+    explain.add_argument(
+        "--class",
+        dest="class_name",
+        metavar="NAME",
+        help="support class to show; without it the scheduled one",
+    )
+    explain.add_argument(
+        "--out",
+        type=Path,
+        metavar="FILE",
+        help="write it there, as .md, .csv or .json; an earlier sheet is replaced",
+    )
+
+    curves = commands.add_parser(
+        "curves", help="write the curves of one section as tables and figures"
+    )
+    curves.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+    curves.add_argument(
+        "--at", required=True, metavar="CHAINAGE", help="where, as the project writes chainages"
+    )
+    curves.add_argument(
+        "--class", dest="class_name", metavar="NAME", help="support class; else the required one"
+    )
+    curves.add_argument(
+        "--out", type=Path, metavar="DIR", help="folder for the files; must be absent or empty"
+    )
+
     commands.add_parser("plugins", help="list what plugins offer, with parameters and ranges")
+
+    commands.add_parser(
+        "verification", help="compare every method with published and independent values"
+    )
 
     stages = commands.add_parser("stages", help="explain the chain of stages of a project")
     stages.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
@@ -166,6 +205,18 @@ def _command(options: argparse.Namespace, report: Report) -> ExitCode:
         from tunnelcalc.cli.schema_command import schema
 
         return schema(options.out)
+    if options.command == "curves":
+        from tunnelcalc.cli.curves_command import curves
+
+        return curves(options.project, options.at, options.class_name, options.out)
+    if options.command == "verification":
+        from tunnelcalc.cli.verification_command import verification
+
+        return verification()
+    if options.command == "explain":
+        from tunnelcalc.cli.explain_command import explain
+
+        return explain(options.run, options.at, options.class_name, options.out)
     if options.command == "stages":
         from tunnelcalc.cli.stages_command import stages
 

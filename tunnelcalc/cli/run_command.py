@@ -99,6 +99,8 @@ def show(finished: Finished, screen: Console) -> None:
     raised = flag_table(result)
     if raised.row_count:
         screen.print(raised)
+    if lacking := unassessed(result):
+        screen.print(lacking)
     for warning in result.warnings:
         screen.print(f"note: {warning}")
     if result.without_adequate_class:
@@ -246,24 +248,30 @@ def worst_table(result: RunResult) -> Table:
 
 
 def flag_table(result: RunResult) -> Table:
-    """Flags that were raised or could not be assessed."""
+    """Flags that were raised somewhere, those at outside first: how often, and what to do."""
+    levels = ("outside", "advisory", "overridden")
     made = table(
-        "Flags on validity",
+        "Flags on validity, sections",
         "flag",
-        "sections",
-        "not assessed",
+        *levels,
         "meaning and remedy",
-        right=("sections", "not assessed"),
+        right=levels,
         wide=("meaning and remedy",),
     )
-    for flag in result.flags:
-        if flag.raised or flag.not_assessed:
-            made.add_row(
-                *row(
-                    flag.name,
-                    str(flag.raised),
-                    str(flag.not_assessed),
-                    f"{flag.meaning}; {flag.remedy}",
-                )
-            )
+    for flag in sorted(result.flags, key=lambda f: (not f.outside, f.name)):
+        if flag.raised:
+            counts = (flag.outside, flag.advisory, flag.overridden)
+            numbers = [str(count) if count else "" for count in counts]
+            made.add_row(*row(flag.name, *numbers, f"{flag.meaning}; {flag.remedy}"))
     return made
+
+
+def unassessed(result: RunResult) -> str:
+    """One line on the flags that lack an input on some section; empty where none does."""
+    names = [flag.name for flag in result.flags if flag.not_assessed]
+    if not names:
+        return ""
+    return (
+        f"not assessed for lack of an input, on some or all sections, and not clear: "
+        f"{', '.join(names)}; flags.csv says where and what is missing"
+    )

@@ -8,8 +8,8 @@ from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import read_project
 from tunnelcalc.pipeline.chain import build_stages
 from tunnelcalc.pipeline.incidents import Incidents
+from tunnelcalc.pipeline.plan import plan_classes
 from tunnelcalc.pipeline.stage import check_chain
-from tunnelcalc.pipeline.support_stages import plan_classes
 from tunnelcalc.plugin.registry import load_plugins
 
 

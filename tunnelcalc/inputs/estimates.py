@@ -17,7 +17,7 @@ from tunnelcalc.inputs.laboratory_tests import FROM_TESTS, Tests
 from tunnelcalc.inputs.merging import Merged, Origin
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.rock_mass import observations
-from tunnelcalc.rock_mass.observations import RMR89_DRY_RANGE
+from tunnelcalc.rock_mass.observations import RESIDUAL_GSI_RANGE, RMR89_DRY_RANGE
 from tunnelcalc.vocabulary import GROUND
 
 MEASURED = "measured"
@@ -35,6 +35,8 @@ class Estimator:
     source: str
     allowed: str
     estimate: Callable[..., Array]
+    only_if_named: bool = False
+    """Whether it is used only where the project names it among the sources."""
 
 
 ESTIMATORS = (
@@ -78,8 +80,17 @@ ESTIMATORS = (
         "a product within the range of intact_strength_mpa",
         observations.intact_strength_from_point_load_mpa,
     ),
+    Estimator(
+        "cai_2007",
+        "residual_gsi",
+        ("gsi",),
+        "Cai et al. (2007), Int. J. Rock Mech. Min. Sci. 44, 247-265",
+        f"gsi up to {RESIDUAL_GSI_RANGE.maximum:.4g}",
+        observations.residual_gsi,
+        only_if_named=True,
+    ),
 )
-ESTIMATED = ("gsi", "intact_strength_mpa", "mi")
+ESTIMATED = ("gsi", "intact_strength_mpa", "mi", "residual_gsi")
 SAME_VALUE = 1e-9
 """Sources that lie closer than this share of the larger value agree. [-]"""
 
@@ -92,14 +103,20 @@ def source_names(quantity: str) -> tuple[str, ...]:
 
 
 def observations_of(quantity: str) -> tuple[str, ...]:
-    """From what a quantity may be estimated."""
-    return tuple(need for e in ESTIMATORS if e.quantity == quantity for need in e.needs)
+    """From what a quantity is estimated unasked."""
+    return tuple(
+        need
+        for e in ESTIMATORS
+        if e.quantity == quantity and not e.only_if_named
+        for need in e.needs
+    )
 
 
 def idle_observations(names: Container[str]) -> set[str]:
     """Observations that no relation uses, because another one that it needs is not given."""
-    needs = {need for estimator in ESTIMATORS for need in estimator.needs}
-    complete = [e for e in ESTIMATORS if all(need in names for need in e.needs)]
+    unasked = [estimator for estimator in ESTIMATORS if not estimator.only_if_named]
+    needs = {need for estimator in unasked for need in estimator.needs}
+    complete = [e for e in unasked if all(need in names for need in e.needs)]
     return {n for n in needs if n in names} - {need for e in complete for need in e.needs}
 
 
@@ -146,10 +163,16 @@ def estimate(
     intervals: Intervals,
     tests: Tests,
     preferences: Mapping[str, Sequence[str]],
+    wanted: Mapping[str, Array],
 ) -> None:
-    """Fill in estimated values, their origin, and the spread between sources."""
+    """Fill in estimated values, their origin, and the spread between sources.
+
+    `wanted` are the intervals (i,) that need a quantity, where not all of them do: elsewhere it
+    is no fault that a relation does not hold.
+    """
     for quantity in ESTIMATED:
-        sources = _sources(found, intervals, tests, quantity, preferences[quantity])
+        rows = wanted.get(quantity, np.ones(found.count, dtype=bool))
+        sources = _sources(found, intervals, tests, quantity, preferences[quantity], rows)
         _choose(found, intervals, quantity, sources, preferences[quantity])
 
 
@@ -159,6 +182,7 @@ def _sources(
     tests: Tests,
     quantity: str,
     preference: Sequence[str],
+    rows: Array,
 ) -> dict[str, tuple[Array, str]]:
     """Values (i,) by source, NaN where it has none, and what the source is called."""
     sources: dict[str, tuple[Array, str]] = {}
@@ -166,11 +190,12 @@ def _sources(
         sources[MEASURED] = (found.numbers[quantity].copy(), "")
     for estimator in ESTIMATORS:
         wanted = estimator.quantity == quantity
+        wanted = wanted and (estimator.name in preference or not estimator.only_if_named)
         if wanted and all(name in found.numbers for name in estimator.needs):
             needed = [found.numbers[name] for name in estimator.needs]
             values = estimator.estimate(*needed)
             if not preference or estimator.name in preference:
-                _tell_out_of_range(found, intervals, estimator, needed, values)
+                _tell_out_of_range(found, intervals, estimator, needed, values, rows)
             sources[estimator.name] = (values, f"{estimator.name}: {estimator.source}")
     if quantity in FROM_TESTS and tests.by_unit:
         values = tests.values_of(quantity, found.texts["ground_unit"])
@@ -184,10 +209,11 @@ def _tell_out_of_range(
     estimator: Estimator,
     needed: Sequence[Array],
     values: Array,
+    rows: Array,
 ) -> None:
     """Tell it where the observation stands: of a ground unit once, not in each interval."""
     given = np.all(~np.isnan(np.array(needed)), axis=0)
-    outside = given & np.isnan(values)
+    outside = given & np.isnan(values) & rows
     intervals.tell_no_more(estimator.quantity, outside)
     first = estimator.needs[0]
     for row in np.flatnonzero(outside).tolist():

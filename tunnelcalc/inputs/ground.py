@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.errors import Where
 from tunnelcalc.inputs import alignment
-from tunnelcalc.inputs.completeness import check_complete
+from tunnelcalc.inputs.completeness import check_complete, check_residual
 from tunnelcalc.inputs.estimates import (
     ESTIMATED,
     estimate,
@@ -29,6 +29,7 @@ from tunnelcalc.inputs.level_tables import (
     read_levels,
 )
 from tunnelcalc.inputs.merging import Merged, Origin, merged
+from tunnelcalc.inputs.method_choices import MEASURED_MODULUS, ChosenMethods, Requirement
 from tunnelcalc.inputs.opening import Profile, check_profiles, limits_inside, profile_of
 from tunnelcalc.inputs.provenance import ground_warnings, value_origins, written_columns
 from tunnelcalc.inputs.table_columns import TypedTable
@@ -42,8 +43,9 @@ from tunnelcalc.inputs.unit_values import (
     unit_values,
 )
 from tunnelcalc.inputs.values import Reader
+from tunnelcalc.inputs.water import check_water
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Gap, UnitTests, ValueOrigins
+from tunnelcalc.project import DRAINAGE, Gap, UnitTests, ValueOrigins, method_column
 from tunnelcalc.sections import Sections
 from tunnelcalc.vocabulary import (
     GROUND,
@@ -67,6 +69,7 @@ class Ground:
     tests: tuple[UnitTests, ...]
     gaps: tuple[Gap, ...]
     warnings: tuple[str, ...]
+    drainage: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -80,15 +83,24 @@ class Opening:
 
 
 def read_ground(
-    reader: Reader, opening: Opening, folder: ProjectFolder, registry: Registry
+    reader: Reader,
+    opening: Opening,
+    folder: ProjectFolder,
+    registry: Registry,
+    methods: ChosenMethods | None,
+    demands: Sequence[tuple[str, Limits, str]],
 ) -> Ground | None:
-    """Read the `ground` part of a project; None, with problems, where it cannot be used."""
+    """Read the `ground` part of a project; None, with problems, where it cannot be used.
+
+    `demands` are columns that every interval must have, each with its range and who asks.
+    """
     longest = reader.number("section_length_m", SECTION_LENGTH, "m", required=False)
     gaps = list(_gaps(reader))
     others = list(other_columns(reader, registry))
     chosen = reader.choice("values", VALUE_SETS, required=False) or STATED
     rule = reader.choice("cautious_rule", RULES, required=chosen == CAUTIOUS) or NOMINAL
     preferences = read_preferences(reader)
+    drainage = reader.choice("drainage", DRAINAGE, required=False) or ""
     table = read_table(reader, folder, registry, TABLE, others)
     units = read_table(reader, folder, registry, UNITS, others)
     values = None
@@ -104,10 +116,13 @@ def read_ground(
     intervals = Intervals(table, units, reader.notation, reader.problems)
     intervals.check_order(gaps)
     found = merged(intervals, values)
+    ground_units = found.texts["ground_unit"]
     for name in FROM_TESTS:
-        intervals.tell_no_more(name, tests.told_of(found.texts["ground_unit"]))
-    estimate(found, intervals, tests, preferences)
-    check_complete(found, intervals, reader.has(TERRAIN))
+        intervals.tell_no_more(name, tests.told_of(ground_units))
+    residual = {} if methods is None else {"residual_gsi": methods.needs_residual(ground_units)}
+    estimate(found, intervals, tests, preferences, residual)
+    check_complete(found, intervals, reader.has(TERRAIN), _asked(found, methods, demands))
+    check_residual(found, intervals)
     ends = intervals.from_m + intervals.to_m
     if opening.profiles and ends.size and np.all(np.isfinite(ends)):
         check_profiles(opening.profiles, intervals.from_m, intervals.to_m, opening.reader)
@@ -116,7 +131,40 @@ def read_ground(
     cut = _cut(intervals, opening.profiles, longest, reader)
     if cut is None:
         return None
-    return _ground(found, cut, opening, levels, tests.by_unit, gaps, values, intervals, reader)
+    assert methods is not None
+    ground = _ground(
+        found, cut, opening, levels, tests.by_unit, gaps, values, intervals, reader, drainage
+    )
+    return None if ground is None else _with_methods(ground, methods, found)
+
+
+def _asked(
+    found: Merged, methods: ChosenMethods | None, demands: Sequence[tuple[str, Limits, str]]
+) -> Iterator[Requirement]:
+    """What methods and checks cannot do without."""
+    if methods is not None:
+        ground_units = found.texts["ground_unit"]
+        methods.check_units(ground_units.tolist())
+        yield from methods.requirements(ground_units, ~np.isnan(found.numbers[MEASURED_MODULUS]))
+    for column, limits, name in demands:
+        yield Requirement(column, limits, name, np.ones(found.count, dtype=bool))
+
+
+def _with_methods(ground: Ground, methods: ChosenMethods, found: Merged) -> Ground:
+    """Where a step has several methods, the number of each section's own; notes on values that
+    no method reads."""
+    units = ground.sections["ground_unit"]
+    columns = {
+        method_column(step): methods.numbers(step, units)
+        for step, choice in methods.choices.items()
+        if len(choice.names) > 1
+    }
+    idle = tuple(methods.idle_values(found.numbers, found.texts["ground_unit"]))
+    return replace(
+        ground,
+        sections=ground.sections.with_columns(columns),
+        warnings=(*ground.warnings, *idle),
+    )
 
 
 def _gaps(reader: Reader) -> Iterator[tuple[Gap, Where]]:
@@ -177,6 +225,7 @@ def _ground(
     values: UnitValues | None,
     intervals: Intervals,
     reader: Reader,
+    drainage: str,
 ) -> Ground | None:
     rows = cut.interval
     middle = (cut.from_m + cut.to_m) / 2
@@ -188,6 +237,8 @@ def _ground(
     check_reach(levels, middle, opening.reader, reader)
     _fill_from_levels(columns, origins, levels)
     _check_cover(columns, origins, reader)
+    if drainage:
+        check_water(columns, origins, intervals, rows, reader)
     if len(reader.problems):
         return None
     for name, value in ASSUMED.items():
@@ -217,8 +268,9 @@ def _ground(
         (
             *_notes(intervals),
             *_idle_tests(tests, found),
-            *ground_warnings(found, columns, levels, values),
+            *ground_warnings(found, columns, values, drainage),
         ),
+        drainage,
     )
 
 
@@ -242,6 +294,7 @@ def _profile_columns(profiles: Sequence[Profile], middle: Array) -> dict[str, Ar
         "radius_m": np.array([profile.radius_m for profile in profiles])[number],
         "span_m": np.array([profile.span_m for profile in profiles])[number],
         "profile": names[number],
+        "height_m": np.array([profile.height_m for profile in profiles])[number],
         "equivalent_radius": np.array([p.rule != "circle" for p in profiles])[number],
     }
 

@@ -10,9 +10,15 @@ from tunnelcalc.inputs.headers import understood
 from tunnelcalc.inputs.table_columns import CHAINAGE, TypedTable
 from tunnelcalc.inputs.typed_table import open_table, typed
 from tunnelcalc.inputs.values import Reader
-from tunnelcalc.pipeline.support_stages import CHECK_COLUMNS, CLASS_COLUMNS
+from tunnelcalc.pipeline.support_stages import (
+    CHECK_COLUMNS,
+    CLASS_COLUMNS,
+    STRESS_CASE,
+    failing_column,
+)
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import DEFAULT_METHODS, method_column
 from tunnelcalc.text import few, quoted, shown, suggestion
 from tunnelcalc.vocabulary import GROUND, QUANTITIES, UNIT_SUFFIXES, WORDS
 
@@ -24,15 +30,24 @@ OWN_COLUMNS = (
     *CLASS_COLUMNS,
     *CHECK_COLUMNS,
     *WORDS,
-    *("flag_raised", "flag_not_assessed"),
+    *("flag_level", "height_m", "lining_water_mpa", "water_left_out", "profile_plastic_limit"),
+    STRESS_CASE,
     *(f"{name}_spread" for name in GROUND),
+    *(method_column(step) for step in DEFAULT_METHODS),
 )
-"""Names that a free column cannot have, besides those of flags: the program fills them."""
+"""Names that a free column cannot have: the program fills them."""
+
+
+def own_columns(registry: Registry) -> set[str]:
+    """The same, with the names that follow from what is installed."""
+    checks = (*registry.names("support_check"), *registry.names("class_check"))
+    failing = (failing_column(check) for check in checks)
+    return {*OWN_COLUMNS, *registry.names("validity_flag"), *failing}
 
 
 def other_columns(reader: Reader, registry: Registry) -> Iterator[str]:
     """Names of the columns that the project wants to be carried along as they are."""
-    taken = {*OWN_COLUMNS, *registry.names("validity_flag")}
+    taken = own_columns(registry)
     for where, name in reader.texts_of("other_columns"):
         if name not in taken:
             yield name

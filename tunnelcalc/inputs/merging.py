@@ -10,7 +10,6 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.inputs.intervals import Intervals
 from tunnelcalc.inputs.unit_values import UnitValues
-from tunnelcalc.vocabulary import GROUND, Sort
 
 
 class Origin(IntEnum):
@@ -22,6 +21,19 @@ class Origin(IntEnum):
     ESTIMATED = 3
     LEVELS = 4
     ASSUMED = 5
+
+
+ALWAYS_THERE = (
+    "cover_m",
+    "unit_weight_kn_m3",
+    "vertical_stress_mpa",
+    "water_head_m",
+    "stress_ratio",
+    "dilation_deg",
+    "mi",
+    "rock_mass_modulus_mpa",
+)
+"""What may be completed although no table gives it, or is asked for by name."""
 
 
 @dataclass(slots=True)
@@ -72,9 +84,9 @@ def merged(intervals: Intervals, unit_values: UnitValues | None) -> Merged:
             found.put(name, ~np.isnan(own), own, Origin.TABLE)
     _merge_texts(found, intervals)
     _settle_intact_modulus(found, intervals)
-    for quantity in GROUND.values():
-        if quantity.sort is Sort.NUMBER and quantity.used and quantity.name not in found.numbers:
-            found.add(quantity.name)
+    for name in ALWAYS_THERE:
+        if name not in found.numbers:
+            found.add(name)
     return found
 
 

@@ -35,6 +35,7 @@ class Profile:
     name: str
     radius_m: float
     span_m: float
+    height_m: float
     rule: str
     from_m: float = -math.inf
     to_m: float = math.inf
@@ -69,14 +70,14 @@ def read_profiles(reader: Reader, key: str) -> tuple[Profile, ...]:
     return tuple(sorted(profiles, key=lambda profile: profile.from_m))
 
 
-def _shape(reader: Reader) -> tuple[float, float, str] | None:
-    """Radius, span and rule of a profile."""
+def _shape(reader: Reader) -> tuple[float, float, float, str] | None:
+    """Radius, span, height and rule of a profile."""
     radius_range = QUANTITIES["radius_m"]
     dimensions = ("span_m", "height_m", "area_m2", "equivalent_radius")
     if not any(reader.has(name) for name in dimensions):
         radius = reader.number("radius_m", radius_range.limits, radius_range.unit)
         reader.known.update(dict.fromkeys(dimensions))
-        return None if radius is None else (radius, 2 * radius, CIRCLE)
+        return None if radius is None else (radius, 2 * radius, 2 * radius, CIRCLE)
     width = reader.number("span_m", DIMENSION, "m")
     height = reader.number("height_m", DIMENSION, "m")
     area = reader.number("area_m2", AREA, "m2")
@@ -106,7 +107,7 @@ def _shape(reader: Reader) -> tuple[float, float, str] | None:
             allowed=radius_range.allowed(),
         )
         return None
-    return radius, width, rule
+    return radius, width, height, rule
 
 
 def check_profiles(profiles: Sequence[Profile], from_m: Array, to_m: Array, reader: Reader) -> None:

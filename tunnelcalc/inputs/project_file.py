@@ -2,21 +2,28 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from pathlib import Path
 
 from tunnelcalc.errors import InputError, Problem, Problems, Where
 from tunnelcalc.inputs.files import PROJECT_FILE, ProjectFolder
+from tunnelcalc.inputs.flag_settings import check_overrides, read_flag_settings
 from tunnelcalc.inputs.ground import Ground, Opening, read_ground
 from tunnelcalc.inputs.level_tables import read_tunnel_level
+from tunnelcalc.inputs.method_choices import read_methods
 from tunnelcalc.inputs.notation import read_notation
 from tunnelcalc.inputs.opening import read_profiles
 from tunnelcalc.inputs.support_classes import read_support_classes
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.inputs.yaml_tree import Table, parse
+from tunnelcalc.plugin.contract import ClassCheck
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import DEFAULT_METHODS, Criteria, Project, ScheduleRules
+from tunnelcalc.project import Criteria, Project, ScheduleRules
 from tunnelcalc.text import decoded, quoted, suggestion
 from tunnelcalc.vocabulary import Limits
+
+YES_OR_NO = ("yes", "no", "true", "false")
+"""Some editors and programs write yes as true."""
 
 
 def read_project(path: Path, registry: Registry) -> Project:
@@ -62,28 +69,34 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
     title = reader.text("title")
     reader.notation = read_notation(reader)
     opening = _opening(reader, folder, registry)
+    methods = read_methods(reader, registry)
+    plugins = _plugins(reader, registry)
+    of_classes = registry.class_checks(plugins)
+    criteria = _criteria(reader, of_classes)
     ground_reader = reader.table_of("ground")
     ground = None
     if ground_reader is not None and opening is not None:
-        ground = read_ground(ground_reader, opening, folder, registry)
+        demands = class_demands(of_classes, criteria)
+        ground = read_ground(ground_reader, opening, folder, registry, methods, demands)
     radius = min((p.radius_m for p in opening.profiles), default=None) if opening else None
-    methods = _methods(reader, registry)
-    plugins = _plugins(reader, registry)
     classes = read_support_classes(reader, registry, plugins, radius)
-    criteria = _criteria(reader)
     schedule = _schedule(reader)
+    flags = read_flag_settings(reader, registry.flags(plugins))
+    if ground is not None:
+        check_overrides(flags, ground.sections, reader)
     reader.finish()
     # The project file before the tables that it names.
     rank = {file: number for number, file in enumerate(folder.files)}
     problems.found.sort(key=lambda problem: rank.get(problem.where.file, len(rank)))
     problems.raise_if_any()
     assert title is not None
+    assert methods is not None
     assert ground is not None
     assert criteria is not None
     assert schedule is not None
     return Project(
         title=title,
-        methods=methods,
+        methods=methods.choices,
         support_classes=classes,
         criteria=criteria,
         schedule=schedule,
@@ -94,8 +107,10 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
         origins=ground.origins,
         tests=ground.tests,
         notation=reader.notation,
+        drainage=ground.drainage,
         warnings=_warnings(ground, registry),
         files=tuple(sorted(folder.files.values(), key=lambda file: file.path)),
+        flags=flags.settings,
     )
 
 
@@ -111,28 +126,6 @@ def _opening(reader: Reader, folder: ProjectFolder, registry: Registry) -> Openi
     profiles = read_profiles(opening, "profiles")
     opening.finish()
     return Opening(profiles, level, has_axis, opening)
-
-
-def _methods(reader: Reader, registry: Registry) -> dict[str, str]:
-    methods = dict(DEFAULT_METHODS)
-    chosen = reader.table_of("methods", required=False)
-    if chosen is not None:
-        for step in DEFAULT_METHODS:
-            name = chosen.choice(step, registry.names(step), required=False)
-            if name is not None:
-                methods[step] = name
-        chosen.finish()
-    for step, name in methods.items():
-        if registry.find(step, name) is None:
-            reader.problems.add(
-                Where(PROJECT_FILE),
-                f'"{name}" is offered by no plugin',
-                name=f"the {step} method",
-                allowed=" or ".join(registry.names(step)) or "none is installed",
-                fix="; ".join(str(failure) for failure in registry.failures)
-                or "install the plugin that offers it, or name another method",
-            )
-    return methods
 
 
 def _plugins(reader: Reader, registry: Registry) -> tuple[str, ...]:
@@ -155,14 +148,35 @@ def _plugins(reader: Reader, registry: Registry) -> tuple[str, ...]:
     return tuple(dict.fromkeys(named))
 
 
-def _criteria(reader: Reader) -> Criteria | None:
+def _criteria(reader: Reader, of_classes: Sequence[ClassCheck]) -> Criteria | None:
     table = reader.table_of("criteria")
     if table is None:
         return None
     factor = table.number("factor_of_safety", Limits(1, 10))
     closure = table.number("closure_pct", Limits(0, 100, above=True), "%")
+    said = {
+        check.name: table.choice(check.name, YES_OR_NO, required=False)
+        for check in of_classes
+        if check.by_choice
+    }
     table.finish()
-    return None if factor is None or closure is None else Criteria(factor, closure)
+    if factor is None or closure is None:
+        return None
+    chosen = {name: word in ("yes", "true") for name, word in said.items() if word is not None}
+    return Criteria(factor, closure, chosen)
+
+
+def class_demands(
+    of_classes: Sequence[ClassCheck], criteria: Criteria | None
+) -> list[tuple[str, Limits, str]]:
+    """Ground columns that checks of a class need on every section, and the checks' names."""
+    chosen = {} if criteria is None else criteria.chosen_checks
+    return [
+        (column, limits, check.name)
+        for check in of_classes
+        if chosen.get(check.name, not check.by_choice)
+        for column, limits in check.requires.items()
+    ]
 
 
 def _schedule(reader: Reader) -> ScheduleRules | None:

@@ -8,7 +8,6 @@ import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.inputs.estimates import idle_observations, incomplete_pairs
-from tunnelcalc.inputs.level_tables import Levels
 from tunnelcalc.inputs.merging import Merged, Origin
 from tunnelcalc.inputs.unit_values import UnitValues
 from tunnelcalc.project import ValueOrigins
@@ -77,7 +76,7 @@ def value_origins(
 
 
 def ground_warnings(
-    found: Merged, columns: Mapping[str, Array], levels: Levels, values: UnitValues | None
+    found: Merged, columns: Mapping[str, Array], values: UnitValues | None, drainage: str
 ) -> tuple[str, ...]:
     """What a user should know about the ground although nothing is wrong with it."""
 
@@ -98,8 +97,10 @@ def ground_warnings(
     warnings += incomplete_pairs(found.numbers)
     if np.all(np.isnan(columns["water_head_m"])):
         warnings.append("no water_head_m is given: stresses and strength are total")
-    elif levels.water is not None:
-        warnings.append("water heads follow from the water table, but stresses are total")
+    elif not drainage:
+        warnings.append(
+            "water heads are given, but ground: drainage is not: stresses and strength are total"
+        )
     if values is not None and values.without_cautious:
         warnings.append(
             "no cautious value follows for some units, the stated one is used: "

@@ -32,6 +32,9 @@ CAUTIOUS_IF_HIGH = (
     "vertical_stress_mpa",
     "water_head_m",
     "block_width_m",
+    "a",
+    "residual_a",
+    "disturbed_thickness_m",
 )
 """Quantities whose cautious value is a high one; of all others it is a low one."""
 

@@ -41,6 +41,10 @@ class Reader:
         entry = self.table.entries.get(key)
         return entry is not None and isinstance(entry[1], Listing)
 
+    def is_table(self, key: str) -> bool:
+        entry = self.table.entries.get(key)
+        return entry is not None and isinstance(entry[1], Table)
+
     def ends_in_blank(self, key: str) -> bool:
         """Whether a text has a blank at its end, which `text` takes off."""
         entry = self.table.entries.get(key)

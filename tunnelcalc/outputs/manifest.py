@@ -18,6 +18,7 @@ from tunnelcalc.limits_statement import LIMITS
 from tunnelcalc.outputs.run_folder import MANIFEST, write_bytes
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.results import RunResult
+from tunnelcalc.validity import FlagSettings
 
 HASH_BLOCK = 1 << 20
 
@@ -53,6 +54,7 @@ def write_manifest(
             "sections_without_adequate_class": result.without_adequate_class,
             "not_evaluated": sum(incident.sections for incident in result.incidents),
         },
+        "flag_settings": _flag_settings(project.flags),
         "flags": [asdict(flag) for flag in result.flags],
         "gaps": [asdict(gap) for gap in project.gaps],
         "warnings": list(result.warnings),
@@ -66,6 +68,24 @@ def write_manifest(
     }
     text = json.dumps(manifest, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
     write_bytes(folder / MANIFEST, text.encode())
+
+
+def _flag_settings(settings: FlagSettings) -> dict[str, Any]:
+    """What the project says of the flags."""
+    return {
+        "not_assessed": settings.not_assessed,
+        "thresholds": [
+            {
+                "flag": setting.flag,
+                "level": setting.level.word,
+                "side": setting.side.value,
+                "value": setting.value,
+                "origin": setting.origin,
+            }
+            for setting in settings.thresholds
+        ],
+        "overrides": [asdict(override) for override in settings.overrides],
+    }
 
 
 def _hashed(folder: Path) -> Iterable[dict[str, str]]:

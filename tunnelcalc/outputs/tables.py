@@ -13,14 +13,19 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.outputs.cells import number_texts, text_cell
 from tunnelcalc.project import Project
-from tunnelcalc.results import CheckLine, governing_labels
+from tunnelcalc.results import STRESS_CASES, CheckLine, governing_labels
 from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import Outcome
+from tunnelcalc.validity import is_raised
 
 SECTION_COLUMNS = (
     "radius_m",
+    "water_pressure_mpa",
+    "effective_vertical_stress_mpa",
+    "effective_horizontal_stress_mpa",
     "in_situ_stress_mpa",
+    "larger_stress_mpa",
     "mb",
     "s",
     "a",
@@ -34,12 +39,30 @@ SECTION_COLUMNS = (
     "plastic_radius_m",
     "closure_mm",
     "closure_pct",
+    "squeezing_strength_mpa",
+    "squeezing_strain_pct",
+    "face_strain_pct",
+    "spalling_depth_m",
 )
 """Columns of `sections.csv` between the ground's and the classes."""
+
+OPTIONAL_COLUMNS = (
+    "residual_mb",
+    "residual_s",
+    "residual_a",
+    "residual_friction_angle_deg",
+    "residual_cohesion_mpa",
+    "ring_mb",
+    "ring_s",
+    "ring_a",
+    "ring_modulus_mpa",
+)
+"""Columns of `sections.csv` where some section has a value."""
 
 CLASS_HEADER = (
     "chainage_m",
     "support_class",
+    "stress_case",
     "installation_closure_mm",
     "support_pressure_mpa",
     "supported_closure_mm",
@@ -53,6 +76,7 @@ CLASS_HEADER = (
 CHECK_HEADER = (
     "chainage_m",
     "support_class",
+    "stress_case",
     "element",
     "check",
     "demand",
@@ -121,18 +145,20 @@ class ChunkTables:
                 "class_factor_of_safety",
             )
         ]
+        cases = _cases(chunk, number)
         governing = [labels[int(code)] for code in chunk["class_governing"][:, number].tolist()]
         adequate = np.where(chunk["class_adequate"][:, number], "yes", "no").tolist()
-        rows = zip(chainage, *numeric, governing, adequate, strict=True)
+        rows = zip(chainage, cases, *numeric, governing, adequate, strict=True)
         return [
-            f"{at},{name},{u},{p},{us},{pct},{rp},{fs},{check},{ok}\n"
-            for at, u, p, us, pct, rp, fs, check, ok in rows
+            f"{at},{name},{case},{u},{p},{us},{pct},{rp},{fs},{check},{ok}\n"
+            for at, case, u, p, us, pct, rp, fs, check, ok in rows
         ]
 
     def _check_lines(
         self, chunk: Sections, chainage: list[str], position: int, line: CheckLine
     ) -> list[str]:
-        middle = ",".join(text_cell(t) for t in (line.class_name, line.element, line.check))
+        name = text_cell(line.class_name)
+        middle = ",".join(text_cell(t) for t in (line.element, line.check))
         unit = text_cell(line.unit)
         demand, capacity, factor = (
             number_texts(chunk[column][:, position])
@@ -140,12 +166,18 @@ class ChunkTables:
         )
         outcome = [OUTCOME_WORDS[c] for c in chunk["check_outcome"][:, position].tolist()]
         reason = [text_cell(text) for text in chunk["check_reason"][:, position].tolist()]
+        cases = _cases(chunk, line.class_number)
         return [
-            f"{at},{middle},{d},{c},{unit},{f},{o},{why}\n"
-            for at, d, c, f, o, why in zip(
-                chainage, demand, capacity, factor, outcome, reason, strict=True
+            f"{at},{name},{case},{middle},{d},{c},{unit},{f},{o},{why}\n"
+            for at, case, d, c, f, o, why in zip(
+                chainage, cases, demand, capacity, factor, outcome, reason, strict=True
             )
         ]
+
+
+def _cases(chunk: Sections, class_number: int) -> list[str]:
+    """The stress case that each section's row of a class is told of."""
+    return [STRESS_CASES[case] for case in chunk["class_stress_case"][:, class_number].tolist()]
 
 
 def write_sections(
@@ -153,7 +185,8 @@ def write_sections(
 ) -> None:
     """Write `sections.csv`."""
     ends = (CHAINAGE, "from_m", "to_m")
-    names = [*ends, *_profile_columns(sections), *project.ground_columns, *SECTION_COLUMNS]
+    ground = [name for name in project.ground_columns if name not in SECTION_COLUMNS]
+    names = [*ends, *_profile_columns(sections), *ground, *_section_columns(sections)]
     written = {} if project.notation.is_plain else WRITTEN_ENDS
     header = (*names[:3], *written, *names[3:], "required_class", "scheduled_class", "flags")
     stream = _opened(folder / "sections.csv", [text_cell(name) for name in header])
@@ -168,9 +201,20 @@ def write_sections(
         for name in ("required_class", "scheduled_class"):
             # NONE_ADEQUATE is -1: the last of the cells.
             columns.append([class_cells[number] for number in part[name].tolist()])
-        columns.append(flag_texts(part["flag_raised"], flag_names))
+        columns.append(flag_texts(is_raised(part["flag_level"]), flag_names))
         stream.writelines(",".join(row) + "\n" for row in zip(*columns, strict=True))
     _finish(stream)
+
+
+def _section_columns(sections: Sections) -> tuple[str, ...]:
+    """What every run writes, and what only some laws of the ground have."""
+    optional = [
+        name
+        for name in OPTIONAL_COLUMNS
+        if name in sections and not np.all(np.isnan(sections[name]))
+    ]
+    last = SECTION_COLUMNS.index("friction_angle_deg")
+    return (*SECTION_COLUMNS[:last], *optional, *SECTION_COLUMNS[last:])
 
 
 def _profile_columns(sections: Sections) -> tuple[str, ...]:

@@ -4,19 +4,26 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from tunnelcalc.pipeline.dispatch import chosen_steps
+from tunnelcalc.pipeline.disturbed_ring_stage import disturbed_ring_stage
+from tunnelcalc.pipeline.flags_stage import flags_stage
 from tunnelcalc.pipeline.ground_stages import (
     deformation_modulus_stage,
     ground_reaction_stage,
     in_situ_stress_stage,
     intact_modulus_stage,
+    knows_ring,
+    mass_disturbance_stage,
     strength_stage,
 )
+from tunnelcalc.pipeline.hazard_stage import hazard_stage
 from tunnelcalc.pipeline.incidents import Incidents
-from tunnelcalc.pipeline.schedule_stages import flags_stage, zoning_stage
+from tunnelcalc.pipeline.plan import PlannedClass
+from tunnelcalc.pipeline.schedule_stages import zoning_stage
 from tunnelcalc.pipeline.stage import Stage
 from tunnelcalc.pipeline.support_stages import (
     CHECK_COLUMNS,
-    PlannedClass,
+    STRESS_CASE,
     choice_stage,
     support_stage,
 )
@@ -25,12 +32,34 @@ from tunnelcalc.project import Project
 
 ONLY_IN_TABLES = (
     *CHECK_COLUMNS,
+    STRESS_CASE,
     "installation_closure_mm",
     "class_support_pressure_mpa",
     "class_closure_mm",
     "class_plastic_radius_m",
 )
 """Columns that are written while their chunk lasts and not kept beyond it."""
+
+
+def section_stages(
+    project: Project, registry: Registry, plan: Sequence[PlannedClass]
+) -> tuple[Stage, ...]:
+    """The stages that look at each section by itself, with the project's methods."""
+    steps = chosen_steps(project, registry)
+    has_ring = any(knows_ring(method) for method in steps.ground_reaction.methods)
+    ring = [disturbed_ring_stage(steps.strength, steps.deformation_modulus)] if has_ring else []
+    return (
+        in_situ_stress_stage(project.drainage),
+        mass_disturbance_stage(steps.ground_reaction),
+        strength_stage(steps.strength),
+        intact_modulus_stage(),
+        deformation_modulus_stage(steps.deformation_modulus),
+        *ring,
+        hazard_stage(),
+        ground_reaction_stage(steps.ground_reaction),
+        support_stage(plan, steps, project.criteria),
+        choice_stage(steps, project.criteria),
+    )
 
 
 def build_stages(
@@ -40,24 +69,10 @@ def build_stages(
 
     What a stage over the whole alignment cannot evaluate is added to `incidents`.
     """
-    reaction = registry.ground_reaction(project.methods["ground_reaction"])
     return (
-        in_situ_stress_stage(),
-        strength_stage(registry.strength(project.methods["strength"])),
-        intact_modulus_stage(),
-        deformation_modulus_stage(
-            registry.deformation_modulus(project.methods["deformation_modulus"])
-        ),
-        ground_reaction_stage(reaction),
-        support_stage(
-            plan,
-            reaction,
-            registry.closure_profile(project.methods["closure_profile"]),
-            project.criteria,
-        ),
-        choice_stage(reaction, project.criteria),
+        *section_stages(project, registry, plan),
         zoning_stage(project.schedule),
-        flags_stage(registry.flags(project.plugins), incidents),
+        flags_stage(registry.flags(project.plugins), project.flags, incidents),
     )
 
 

@@ -8,15 +8,15 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.incidents import Incidents
-from tunnelcalc.pipeline.support_stages import PlannedClass
-from tunnelcalc.plugin.contract import ValidityFlag
+from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.plugin.isolation import contained_amounts
 from tunnelcalc.project import Project
-from tunnelcalc.results import CheckLine, FlagCount, ItemTotal, Zone, governing_labels
+from tunnelcalc.results import CheckLine, ItemTotal, Zone, governing_labels
 from tunnelcalc.schedule.quantities import excavation_m3_per_m, totals_by_class
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, NONE_ADEQUATE_NAME
 from tunnelcalc.schedule.zoning import stretches, zone_starts
 from tunnelcalc.sections import Sections
+from tunnelcalc.validity import is_raised
 
 
 def zones(
@@ -56,7 +56,7 @@ def _zone(
         least = float(factors[at])
         governing = labels[number][int(within["class_governing"][at, number])]
         name = project.class_names[number]
-    raised = np.any(within["flag_raised"], axis=0).tolist()
+    raised = np.any(is_raised(within["flag_level"]), axis=0).tolist()
     return Zone(
         first=first,
         last=end - 1,
@@ -109,21 +109,3 @@ def item_totals(
                 amounts[key] = amounts.get(key, 0.0) + added
         totals.extend(ItemTotal(name, item, unit, sum_) for (item, unit), sum_ in amounts.items())
     return tuple(totals)
-
-
-def flag_counts(flags: Sequence[ValidityFlag], sections: Sections) -> tuple[FlagCount, ...]:
-    """How often each flag was raised or could not be assessed."""
-    raised = np.sum(sections["flag_raised"], axis=0).tolist()
-    unknown = np.sum(sections["flag_not_assessed"], axis=0).tolist()
-    return tuple(
-        FlagCount(
-            flag.name,
-            flag.meaning,
-            flag.threshold,
-            flag.origin,
-            flag.remedy,
-            int(raised[number]),
-            int(unknown[number]),
-        )
-        for number, flag in enumerate(flags)
-    )

@@ -1,17 +1,11 @@
-"""Stages over the whole alignment: zoning, and flags on validity."""
+"""The stage over the whole alignment that makes zones."""
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
-from functools import partial
-
-import numpy as np
+from collections.abc import Mapping
 
 from tunnelcalc.arrays import Array
-from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.stage import Stage
-from tunnelcalc.plugin.contract import ValidityFlag
-from tunnelcalc.plugin.isolation import NO_REASON, contained
 from tunnelcalc.project import ScheduleRules
 from tunnelcalc.schedule.zoning import zone_classes
 from tunnelcalc.sections import Sections
@@ -42,42 +36,3 @@ def zoning_stage(rules: ScheduleRules) -> Stage:
         compute,
         whole_alignment=True,
     )
-
-
-def flags_stage(flags: Sequence[ValidityFlag], incidents: Incidents) -> Stage:
-    """Which flags are raised, and which could not be assessed; (n, f) each.
-
-    A flag that fails is an incident, and not assessed where it fails.
-    """
-
-    def compute(sections: Sections) -> Mapping[str, Array]:
-        raised = np.zeros((sections.count, len(flags)), dtype=bool)
-        unknown = np.zeros_like(raised)
-        for number, flag in enumerate(flags):
-            for need in flag.needs:
-                unknown[:, number] |= _missing(sections[need])
-            found = contained(partial(_raised, flag), sections, ("raised",))
-            for reason in dict.fromkeys(found.reason[found.reason != NO_REASON].tolist()):
-                failed = found.reason == reason
-                incidents.add(f"flag {flag.name}", reason, sections["chainage_m"][failed])
-                unknown[:, number] |= failed
-            raised[:, number] = (found.values[0] == 1) & ~unknown[:, number]
-        return {"flag_raised": raised, "flag_not_assessed": unknown}
-
-    return Stage(
-        "flags",
-        "where the method reaches its limits: " + ", ".join(flag.name for flag in flags),
-        tuple(dict.fromkeys(("chainage_m", *(need for flag in flags for need in flag.needs)))),
-        ("flag_raised", "flag_not_assessed"),
-        compute,
-        whole_alignment=True,
-    )
-
-
-def _raised(flag: ValidityFlag, sections: Sections) -> tuple[Array]:
-    return (flag.raised(sections),)
-
-
-def _missing(column: Array) -> Array:
-    """Where a column (n,) has no value: NaN, or an empty text."""
-    return column == "" if column.dtype == object else np.isnan(column)

@@ -3,27 +3,21 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
 
 import numpy as np
 
 from tunnelcalc.arrays import Array
-from tunnelcalc.pipeline.ground_stages import MM_PER_M
+from tunnelcalc.pipeline.class_evaluation import CheckRow, ClassRow, Evaluated, evaluate_class
+from tunnelcalc.pipeline.dispatch import ChosenSteps, curves
+from tunnelcalc.pipeline.plan import PlannedClass, check_lines
 from tunnelcalc.pipeline.stage import Stage
-from tunnelcalc.plugin.contract import (
-    ClosureProfileMethod,
-    GroundReactionMethod,
-    SupportCheck,
-    SupportKind,
-)
-from tunnelcalc.plugin.isolation import NO_REASON, Contained, contained_evaluation, contained_spring
-from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Criteria, Element, Project, SupportClass
+from tunnelcalc.pipeline.stress_cases import LARGER, MEAN, larger_stress
+from tunnelcalc.project import Criteria
 from tunnelcalc.results import CheckLine
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, required_classes
 from tunnelcalc.sections import Sections
-from tunnelcalc.support.adequacy import class_outcome, load_check, rule_check
-from tunnelcalc.support.equilibrium import Equilibrium, equilibrium, pressure_at_closure
+from tunnelcalc.support.adequacy import Outcome
+from tunnelcalc.support.equilibrium import pressure_at_closure
 
 CLASS_COLUMNS = (
     "installation_closure_mm",
@@ -35,7 +29,7 @@ CLASS_COLUMNS = (
     "class_governing",
     "class_adequate",
 )
-"""Columns (n, c): one value a section and support class."""
+"""Columns (n, c): one value a section and support class, in the order of `ClassRow`."""
 
 CHECK_COLUMNS = (
     "check_demand",
@@ -45,210 +39,159 @@ CHECK_COLUMNS = (
     "check_counts",
     "check_reason",
 )
-"""Columns (n, k): one value a section and check line."""
+"""Columns (n, k): one value a section and check line, in the order of `CheckRow`."""
 
-UNRESOLVED = "ground and support have no equilibrium that can be computed"
-
-
-@dataclass(frozen=True, slots=True)
-class PlannedElement:
-    """An element with its kind and the checks that will be made of it."""
-
-    element: Element
-    kind: SupportKind
-    checks: tuple[SupportCheck, ...]
+STRESS_CASE = "class_stress_case"
+"""Column (n, c): number of the stress case that a class is told of."""
 
 
-@dataclass(frozen=True, slots=True)
-class PlannedClass:
-    """A support class with all that is needed to judge it."""
-
-    support_class: SupportClass
-    elements: tuple[PlannedElement, ...]
+def failing_column(check: str) -> str:
+    """Column (n,): whether some class fails a check of this name."""
+    return f"fails_{check}"
 
 
-def plan_classes(project: Project, registry: Registry) -> tuple[PlannedClass, ...]:
-    """What is to be checked, before any number is known."""
-    return tuple(
-        PlannedClass(
-            support_class,
-            tuple(
-                PlannedElement(
-                    element,
-                    registry.support_kind(element.kind),
-                    tuple(registry.checks_for(element, project.plugins)),
-                )
-                for element in support_class.elements
-            ),
-        )
-        for support_class in project.support_classes
-    )
-
-
-def check_lines(plan: Sequence[PlannedClass]) -> tuple[CheckLine, ...]:
-    """The rows that every section has in `checks.csv`, in order."""
-    return tuple(
-        CheckLine(
-            number,
-            planned.support_class.name,
-            item.element.label,
-            check.name,
-            check.unit,
-            check.carries_load,
-        )
-        for number, planned in enumerate(plan)
-        for item in planned.elements
-        for check in item.checks
-    )
-
-
-def support_stage(
-    plan: Sequence[PlannedClass],
-    reaction: GroundReactionMethod,
-    profile: ClosureProfileMethod,
-    criteria: Criteria,
-) -> Stage:
+def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Criteria) -> Stage:
     """Every class on every section: equilibrium, checks, adequacy."""
+    lines = check_lines(plan)
+    failing = tuple(dict.fromkeys(failing_column(line.check) for line in lines))
 
     def compute(sections: Sections) -> Mapping[str, Array]:
-        curve = reaction.curve(sections)
-        radius = sections["radius_m"]
-        per_class: list[tuple[Array, ...]] = []
-        per_check: list[tuple[Array, ...]] = []
+        curve = curves(steps.ground_reaction, sections)
+        larger = larger_stress(steps.ground_reaction, sections)
+        rows: list[ClassRow] = []
+        checks: list[CheckRow] = []
+        cases: list[Array] = []
         for planned in plan:
-            springs = [
-                contained_spring(item.kind, sections, item.element) for item in planned.elements
-            ]
-            installed = _installed_m(planned, profile, sections)
-            stiffness = np.array([spring.values[0] for spring in springs])
-            shape = (len(springs), sections.count)
-            rest = equilibrium(curve, radius, stiffness.reshape(shape), installed)
-            rows = _check_rows(planned, springs, rest, sections, criteria)
-            closure_pct = rest.closure_m / radius * 100
-            outcome = class_outcome(
-                [row[2] for row in rows],
-                [row[3] for row in rows],
-                [check.carries_load for item in planned.elements for check in item.checks],
-                [row[4] for row in rows],
-                closure_pct,
-                criteria.closure_pct,
-            )
-            per_class.append(
-                (
-                    _least(installed, sections.count) * MM_PER_M,
-                    rest.support_pressure_mpa,
-                    rest.closure_m * MM_PER_M,
-                    closure_pct,
-                    rest.plastic_ratio * radius,
-                    outcome.factor_of_safety,
-                    outcome.governing,
-                    outcome.adequate,
+            found = evaluate_class(planned, curve, steps.closure_profile, sections, criteria)
+            row, of_class, case = found.row, found.checks, np.full(sections.count, MEAN)
+            if larger.positions.size:
+                other = evaluate_class(
+                    planned, larger.curve, steps.closure_profile, larger.sections, criteria
                 )
-            )
-            per_check.extend(rows)
+                row, of_class, case = _heavier(found, other, larger.positions)
+            rows.append(row)
+            checks.extend(of_class)
+            cases.append(case)
         return {
-            **_side_by_side(CLASS_COLUMNS, per_class, sections.count),
-            **_side_by_side(CHECK_COLUMNS, per_check, sections.count),
+            **_side_by_side(CLASS_COLUMNS, rows, sections.count),
+            **_side_by_side(CHECK_COLUMNS, checks, sections.count),
+            **_side_by_side((STRESS_CASE,), [(case,) for case in cases], sections.count),
+            **_failing(lines, checks, sections.count),
+            "dead_weight_not_required": np.full(
+                sections.count, "crown_dead_weight" not in criteria.chosen_checks
+            ),
+            "profile_plastic_limit": _profile_limit(steps, sections),
         }
 
-    own = ("radius_m", "closure_mm", "plastic_radius_m")
+    own = ("radius_m", "closure_mm", "plastic_radius_m", "larger_stress_mpa", "lining_water_mpa")
+    needs = (*steps.ground_reaction.needs, *steps.closure_profile.needs, *own)
     return Stage(
         "support",
-        f"each class on each section: closure at installation by {profile.name}, equilibrium, "
-        "checks by plugins, adequacy",
-        tuple(dict.fromkeys((*reaction.needs, *profile.needs, *own))),
-        CLASS_COLUMNS + CHECK_COLUMNS,
+        "each class on each section: closure at installation by "
+        f"{steps.closure_profile.names}, equilibrium, checks by plugins, adequacy; where stresses "
+        "are far from equal, once more with the larger one, and both must pass",
+        tuple(dict.fromkeys(needs)),
+        (
+            *CLASS_COLUMNS,
+            *CHECK_COLUMNS,
+            STRESS_CASE,
+            *failing,
+            "dead_weight_not_required",
+            "profile_plastic_limit",
+        ),
         compute,
     )
 
 
-def choice_stage(reaction: GroundReactionMethod, criteria: Criteria) -> Stage:
+def _heavier(
+    mean: Evaluated, larger: Evaluated, positions: Array
+) -> tuple[ClassRow, tuple[CheckRow, ...], Array]:
+    """Of two stress cases, on each section the one that asks more of the class.
+
+    A class must be adequate in both. What is told of it comes from one case alone, so that its
+    numbers belong together: the one in which it is not adequate; else the lower factor; else the
+    larger closure.
+    """
+    first = [column[positions] for column in mean.row]
+    before, after = ClassRow(*first), larger.row
+    worse = before.adequate & ~after.adequate
+    alike = before.adequate == after.adequate
+    one, two = (
+        np.where(np.isnan(row.factor_of_safety), np.inf, row.factor_of_safety)
+        for row in (before, after)
+    )
+    # NaN, a closure that could not be computed, asks most.
+    moves_more = ~(after.closure_pct <= before.closure_pct)
+    worse |= alike & ((two < one) | ((two == one) & moves_more))
+    chosen, taken = positions[worse], np.flatnonzero(worse)
+    row = ClassRow(*(_replaced(a, b, chosen, taken) for a, b in zip(mean.row, after, strict=True)))
+    checks = tuple(
+        CheckRow(*(_replaced(a, b, chosen, taken) for a, b in zip(one_, two_, strict=True)))
+        for one_, two_ in zip(mean.checks, larger.checks, strict=True)
+    )
+    case = np.full(mean.row.adequate.size, MEAN)
+    case[chosen] = LARGER
+    return row, checks, case
+
+
+def _replaced(values: Array, others: Array, positions: Array, taken: Array) -> Array:
+    mended = values.copy()
+    mended[positions] = others[taken]
+    return mended
+
+
+def _failing(
+    lines: Sequence[CheckLine], checks: Sequence[CheckRow], count: int
+) -> dict[str, Array]:
+    found: dict[str, Array] = {}
+    for line, row in zip(lines, checks, strict=True):
+        name = failing_column(line.check)
+        found[name] = found.get(name, np.zeros(count, dtype=bool)) | (row.outcome == Outcome.FAIL)
+    return found
+
+
+def _profile_limit(steps: ChosenSteps, sections: Sections) -> Array:
+    """(n,) Rp / R up to which each section's closure profile holds."""
+    limit = np.empty(sections.count)
+    for method, positions in steps.closure_profile.positions(sections):
+        limit[positions] = method.largest_plastic_ratio
+    return limit
+
+
+def choice_stage(steps: ChosenSteps, criteria: Criteria) -> Stage:
     """The first class that meets every criterion; where none does, the pressure needed."""
 
     def compute(sections: Sections) -> Mapping[str, Array]:
         required = required_classes(sections["class_adequate"])
         needed = np.full(sections.count, np.nan)
-        none = required == NONE_ADEQUATE
-        if np.any(none):
+        none = np.flatnonzero(required == NONE_ADEQUATE)
+        if none.size:
             failed = sections.take(none)
             radius = failed["radius_m"]
             limit = radius * criteria.closure_pct / 100
-            needed[none] = pressure_at_closure(reaction.curve(failed), radius, limit)
+            curve = curves(steps.ground_reaction, failed)
+            pressure = pressure_at_closure(curve, radius, limit)
+            larger = larger_stress(steps.ground_reaction, failed)
+            if larger.positions.size:
+                at = larger.positions
+                more = pressure_at_closure(larger.curve, radius[at], limit[at])
+                pressure[at] = np.maximum(pressure[at], more)
+            needed[none] = pressure
         return {"required_class": required, "needed_pressure_mpa": needed}
 
+    own = ("radius_m", "class_adequate", "larger_stress_mpa")
     return Stage(
         "choice",
         "first listed class that meets every criterion, else the pressure that the closure limit "
         "would need",
-        tuple(dict.fromkeys((*reaction.needs, "radius_m", "class_adequate"))),
+        tuple(dict.fromkeys((*steps.ground_reaction.needs, *own))),
         ("required_class", "needed_pressure_mpa"),
         compute,
     )
 
 
-def _installed_m(planned: PlannedClass, profile: ClosureProfileMethod, sections: Sections) -> Array:
-    """(e, n) unsupported closure where each element is installed. [m]"""
-    final = sections["closure_mm"] / MM_PER_M
-    installed = np.empty((len(planned.elements), sections.count))
-    for row, item in enumerate(planned.elements):
-        distance = np.full(sections.count, item.element.installed_at_m)
-        installed[row] = final * profile.share(sections, distance)
-    return installed
-
-
-def _check_rows(
-    planned: PlannedClass,
-    springs: Sequence[Contained],
-    rest: Equilibrium,
-    sections: Sections,
-    criteria: Criteria,
-) -> list[tuple[Array, ...]]:
-    """For each check: demand, capacity, factor, outcome, counts, reason; (n,) each."""
-    rows: list[tuple[Array, ...]] = []
-    unresolved = np.where(rest.converged, NO_REASON, UNRESOLVED).astype(object)
-    for spring in springs:
-        faulty = spring.reason != NO_REASON
-        unresolved[faulty] = spring.reason[faulty]
-    standing = np.flatnonzero(unresolved == NO_REASON)
-    supported = sections.with_columns(
-        {
-            "support_pressure_mpa": rest.support_pressure_mpa,
-            "supported_closure_mm": rest.closure_m * MM_PER_M,
-            "supported_plastic_radius_m": rest.plastic_ratio * sections["radius_m"],
-        }
-    )
-    for position, (item, spring) in enumerate(zip(planned.elements, springs, strict=True)):
-        if not item.checks:
-            continue
-        of_element = supported.with_columns(
-            {
-                "element_pressure_mpa": rest.element_pressure_mpa[position],
-                "element_capacity_mpa": spring.values[1],
-            }
-        ).take(standing)
-        for check in item.checks:
-            found, left_out = contained_evaluation(check, of_element, item.element)
-            demand, capacity = np.full((2, sections.count), np.nan)
-            demand[standing], capacity[standing] = found.values
-            reason = unresolved.copy()
-            reason[standing] = found.reason
-            counts = np.ones(sections.count, dtype=bool)
-            counts[standing] = ~left_out
-            if check.carries_load:
-                judged = load_check(demand, capacity, criteria.factor_of_safety)
-            else:
-                judged = rule_check(demand, capacity)
-            rows.append((demand, capacity, *judged, counts, reason))
-    return rows
-
-
-def _least(installed: Array, count: int) -> Array:
-    """(n,) least over the elements; NaN for a class without elements."""
-    return np.min(installed, axis=0) if len(installed) else np.full(count, np.nan)
-
-
 def _side_by_side(
-    names: Sequence[str], rows: Sequence[tuple[Array, ...]], count: int
+    names: Sequence[str], rows: Sequence[Sequence[Array]], count: int
 ) -> dict[str, Array]:
     if not rows:
         return {name: np.empty((count, 0)) for name in names}

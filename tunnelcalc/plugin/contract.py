@@ -2,6 +2,10 @@
 
 Every array is (n,): one value a section. Plugins see sections and elements, never a file,
 the screen or another plugin, and must not change what they are given.
+
+Whatever is offered here may also have `lines`, by which a calculation sheet shows how a result
+came about: see the protocols `...Lines` in `tunnelcalc.plugin.sheet_contract`. Where it has none
+the sheet prints the result alone.
 """
 
 from __future__ import annotations
@@ -13,12 +17,18 @@ from typing import Protocol, runtime_checkable
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
+from tunnelcalc.plugin.flag import Condition
 from tunnelcalc.plugin.raw_table import RawTable
-from tunnelcalc.project import Element
+from tunnelcalc.project import Element, Project
 from tunnelcalc.results import RunResult
+from tunnelcalc.section_curves import SectionCurves
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.reaction import Reaction
+from tunnelcalc.validity import Threshold
 from tunnelcalc.vocabulary import UNLIMITED, Limits, Sort
+
+SectionValues = Mapping[str, float | str]
+"""The columns of one section by name, a number or a text each."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -77,6 +87,10 @@ class SupportKind(Protocol):
     @property
     def parameters(self) -> tuple[Parameter, ...]:
         """The parameters, each with unit and range."""
+
+    @property
+    def is_ring(self) -> bool:
+        """Whether it is a ring at the wall, on which water presses if the lining is watertight."""
 
     def misfits(self, element: Element, smallest_radius_m: float) -> Iterable[Misfit]:
         """Values that are each in range but do not fit together or into the opening."""
@@ -142,85 +156,178 @@ class SupportCheck(Protocol):
         """Demand and capacity on each section."""
 
 
-class StrengthMethod(Protocol):
+class ClassCheck(Protocol):
+    """A demand against a capacity of a support class as a whole.
+
+    `evaluate` finds in the sections, besides the ground and the radius: `support_pressure_mpa`,
+    `supported_closure_mm`, `supported_plastic_radius_m` of the class, `class_capacity_mpa`, the
+    sum of its elements' capacities, `ring_capacity_mpa`, that of its rings alone, and
+    `lining_water_mpa`, the water pressure on a watertight lining.
+    """
+
+    @property
+    def name(self) -> str:
+        """Its name in the outputs."""
+
+    @property
+    def meaning(self) -> str:
+        """One line on what is compared, with the source."""
+
+    @property
+    def unit(self) -> str:
+        """Unit of demand and capacity."""
+
+    @property
+    def carries_load(self) -> bool:
+        """True: capacity / demand must reach the project's factor. False: a rule."""
+
+    @property
+    def by_choice(self) -> bool:
+        """True: it counts only where the project says `criteria: NAME: yes`."""
+
+    @property
+    def requires(self) -> Mapping[str, Limits]:
+        """Ground columns that it cannot do without where it counts."""
+
+    def concerns(self, project: Project) -> bool:
+        """Whether the check is made in this project at all."""
+
+    def evaluate(self, sections: Sections) -> Evaluation:
+        """Demand and capacity on each section."""
+
+
+STRENGTH_COLUMNS = (
+    "mb",
+    "s",
+    "a",
+    "rock_mass_strength_mpa",
+    "tensile_strength_mpa",
+    "global_strength_mpa",
+    "confinement_mpa",
+    "friction_angle_deg",
+    "cohesion_mpa",
+    "residual_mb",
+    "residual_s",
+    "residual_a",
+    "residual_friction_angle_deg",
+    "residual_cohesion_mpa",
+)
+"""What the strength of the rock mass may be told by."""
+
+
+class Method(Protocol):
+    """What every method by name says of itself.
+
+    A project names one for all its ground, or one for each ground unit.
+    """
+
+    @property
+    def name(self) -> str: ...
+    @property
+    def source(self) -> str: ...
+    @property
+    def needs(self) -> tuple[str, ...]:
+        """The columns that it reads."""
+
+    @property
+    def requires(self) -> Mapping[str, Limits]:
+        """Ground columns that it cannot do without, each with the range in which it holds.
+
+        What is missing, or outside, is a problem of the input and stops the run. A column
+        that is needed and not required may be NaN.
+        """
+
+
+class StrengthMethod(Method, Protocol):
     """Strength constants and derived strengths of the rock mass, from ground columns."""
 
     @property
-    def name(self) -> str: ...
+    def gives(self) -> tuple[str, ...]:
+        """Which of `STRENGTH_COLUMNS` it computes; the others stay NaN."""
+
     @property
-    def source(self) -> str: ...
-    @property
-    def needs(self) -> tuple[str, ...]: ...
-    @property
-    def gives(self) -> tuple[str, ...]: ...
+    def requires_of_residual(self) -> Mapping[str, Limits]:
+        """What it cannot do without where the law of the ground needs residual strength."""
 
     def compute(self, sections: Sections) -> Mapping[str, Array]:
-        """The columns named in `gives`, from those in `needs`."""
+        """The columns named in `gives`, from those in `needs`.
+
+        `mass_disturbance` is the disturbance factor to use: 0 where disturbance is confined to
+        a ring.
+        """
 
 
-class ModulusMethod(Protocol):
-    """An estimate of the deformation modulus of the rock mass."""
+class ModulusMethod(Method, Protocol):
+    """An estimate of the deformation modulus of the rock mass.
 
-    @property
-    def name(self) -> str: ...
-    @property
-    def source(self) -> str: ...
-    @property
-    def needs(self) -> tuple[str, ...]: ...
+    What it requires is asked for only where no modulus was measured.
+    """
 
     def modulus_mpa(self, sections: Sections) -> Array:
         """(n,) modulus. [MPa]  `intact_modulus_mpa` is NaN where it is not known."""
 
 
-class GroundReactionMethod(Protocol):
+class GroundReactionMethod(Method, Protocol):
     """The law of the ground around a circular opening."""
-
-    @property
-    def name(self) -> str: ...
-    @property
-    def source(self) -> str: ...
-    @property
-    def needs(self) -> tuple[str, ...]: ...
 
     def curve(self, sections: Sections) -> GroundCurve:
         """Ground reaction curves of the sections."""
 
 
-class ClosureProfileMethod(Protocol):
+class ClosureProfileMethod(Method, Protocol):
     """How far the unsupported wall has moved at a distance from the face."""
 
     @property
-    def name(self) -> str: ...
-    @property
-    def source(self) -> str: ...
-    @property
-    def needs(self) -> tuple[str, ...]: ...
+    def largest_plastic_ratio(self) -> float:
+        """Rp / R up to which it holds; infinity where it follows the plastic zone."""
 
     def share(self, sections: Sections, distance_m: Array) -> Array:
         """(n,) closure at `distance_m` behind the face over the final closure, 0 to 1. [-]"""
 
 
 class ValidityFlag(Protocol):
-    """A warning on sections where the method reaches its limits, or an input was assumed."""
+    """A hazard or a limit of the method that every section is screened for.
+
+    It gives a value; the core compares it with the thresholds in force and makes the level. A
+    ready one is `Flag`.
+    """
 
     @property
     def name(self) -> str: ...
     @property
     def meaning(self) -> str: ...
     @property
-    def threshold(self) -> str: ...
-    @property
-    def origin(self) -> str:
-        """The published source of the threshold, or "common practice, no source"."""
-
-    @property
     def remedy(self) -> str: ...
     @property
-    def needs(self) -> tuple[str, ...]:
-        """Columns that the flag reads. Where one is NaN the flag is counted as not assessed."""
+    def quantity(self) -> str:
+        """What is compared with the thresholds, in words."""
 
-    def raised(self, sections: Sections) -> Array:
-        """(n,) bool."""
+    @property
+    def unit(self) -> str:
+        """Unit of the value; `YES_OR_NO` where it is 1 or 0."""
+
+    @property
+    def thresholds(self) -> tuple[Threshold, ...]:
+        """One at most of each level and side, `advisory` or `outside`, each with its origin."""
+
+    @property
+    def needs(self) -> tuple[str, ...]:
+        """Columns that the flag reads. Where one is NaN or empty the flag is not assessed."""
+
+    @property
+    def may_be_missing(self) -> tuple[str, ...]:
+        """Further columns that it reads, and that may be NaN or empty."""
+
+    @property
+    def applies(self) -> Condition | None:
+        """Where the flag applies at all: elsewhere it is clear. None: everywhere."""
+
+    @property
+    def outside_applies(self) -> Condition | None:
+        """Where its outside thresholds hold. None: everywhere."""
+
+    def value(self, sections: Sections) -> Array:
+        """(n,) in `unit`; NaN where it cannot be told."""
 
 
 class GroundReader(Protocol):
@@ -252,3 +359,14 @@ class ReportWriter(Protocol):
 
     def write(self, result: RunResult, folder: Path) -> Iterable[str]:
         """Write into `folder`; returns the names of the files written."""
+
+
+class SectionFigure(Protocol):
+    """Draws curves of one section."""
+
+    @property
+    def name(self) -> str: ...
+
+    def draw(self, curves: SectionCurves, folder: Path) -> Iterable[str]:
+        """Write into `folder`; returns the names of the files written, none where the curves
+        that it draws are not known. The same curves give the same bytes."""

@@ -14,16 +14,19 @@ from collections.abc import Callable
 import pluggy
 
 from tunnelcalc.plugin.contract import (
+    ClassCheck,
     ClosureProfileMethod,
     GroundReactionMethod,
     GroundReader,
     ModulusMethod,
     ReportWriter,
+    SectionFigure,
     StrengthMethod,
     SupportCheck,
     SupportKind,
     ValidityFlag,
 )
+from tunnelcalc.verification import VerificationCheck
 
 ENTRY_POINT_GROUP = "tunnelcalc"
 """Distributions name their plugin modules under this entry-point group."""
@@ -43,6 +46,15 @@ def tunnelcalc_register_support_checks(register: Callable[[SupportCheck], None])
 
     A check runs for the kinds that its own plugin offers, and for other kinds where the
     project names the plugin under `plugins:`.
+    """
+
+
+@hookspec
+def tunnelcalc_register_class_checks(register: Callable[[ClassCheck], None]) -> None:
+    """Offer checks of a support class as a whole.
+
+    The checks of this distribution always run; those of another run where the project names the
+    plugin under `plugins:`.
     """
 
 
@@ -80,6 +92,16 @@ def tunnelcalc_register_validity_flags(register: Callable[[ValidityFlag], None])
 
 
 @hookspec
+def tunnelcalc_register_verification_checks(
+    register: Callable[[VerificationCheck], None],
+) -> None:
+    """Offer checks of methods against publications or independent solutions.
+
+    `tunnelcalc verification` computes all that are installed.
+    """
+
+
+@hookspec
 def tunnelcalc_register_ground_readers(register: Callable[[GroundReader], None]) -> None:
     """Offer file formats for ground and units tables, chosen by the file's ending."""
 
@@ -89,5 +111,14 @@ def tunnelcalc_register_report_writers(register: Callable[[ReportWriter], None])
     """Offer writers of files about a finished run.
 
     The writers of this distribution always run; those of another run where the project names
+    the plugin under `plugins:`.
+    """
+
+
+@hookspec
+def tunnelcalc_register_section_figures(register: Callable[[SectionFigure], None]) -> None:
+    """Offer figures of the curves of one section, for `tunnelcalc curves`.
+
+    The figures of this distribution are always drawn; those of another where the project names
     the plugin under `plugins:`.
     """

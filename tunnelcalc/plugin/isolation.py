@@ -12,7 +12,7 @@ from typing import NamedTuple
 import numpy as np
 
 from tunnelcalc.arrays import Array
-from tunnelcalc.plugin.contract import Amount, Evaluation, SupportCheck, SupportKind
+from tunnelcalc.plugin.contract import Amount, ClassCheck, Evaluation, SupportCheck, SupportKind
 from tunnelcalc.plugin.registry import describe
 from tunnelcalc.project import Element
 from tunnelcalc.sections import Sections
@@ -30,9 +30,14 @@ class Contained(NamedTuple):
 
 
 def contained(
-    call: Callable[[Sections], Sequence[Array]], sections: Sections, names: Sequence[str]
+    call: Callable[[Sections], Sequence[Array]],
+    sections: Sections,
+    names: Sequence[str],
+    any_value: bool = False,
 ) -> Contained:
     """Arrays of values not below 0 from a plugin, one for each of `names`.
+
+    `any_value`: values below 0 or not finite are as good.
 
     Where the call raises or returns no such arrays, the sections are halved until the offending
     ones stand alone: the outcome of a section never depends on the others that are computed
@@ -48,13 +53,15 @@ def contained(
     if fault and count > 1:
         half = count // 2
         parts = [
-            contained(call, sections.take(piece), names)
+            contained(call, sections.take(piece), names, any_value)
             for piece in (slice(None, half), slice(half, None))
         ]
         return Contained(
             np.concatenate([part.values for part in parts], axis=1),
             np.concatenate([part.reason for part in parts]),
         )
+    if any_value and not fault:
+        return Contained(values, np.broadcast_to(np.array(NO_REASON, dtype=object), count))
     reason = np.full(count, fault, dtype=object)
     if not fault:
         for name, row in zip(names, values, strict=True):
@@ -102,8 +109,21 @@ def contained_evaluation(
     out: in a load check they stay marked as faults.
     """
 
+    return _contained_check(
+        lambda part: check.evaluate(part, element), sections, check.carries_load
+    )
+
+
+def contained_class_evaluation(check: ClassCheck, sections: Sections) -> tuple[Contained, Array]:
+    """The same for a check of a class as a whole."""
+    return _contained_check(check.evaluate, sections, check.carries_load)
+
+
+def _contained_check(
+    evaluate: Callable[[Sections], Evaluation], sections: Sections, carries_load: bool
+) -> tuple[Contained, Array]:
     def call(part: Sections) -> Sequence[Array]:
-        evaluation: Evaluation = check.evaluate(part, element)
+        evaluation = evaluate(part)
         if evaluation.left_out is None:
             return (evaluation.demand, evaluation.capacity, np.zeros(part.count))
         left_out = np.asarray(evaluation.left_out, dtype=float)
@@ -122,7 +142,7 @@ def contained_evaluation(
     if np.any(left_out):
         values[:, left_out] = np.nan
         reason[left_out] = reasons[0]
-    return Contained(values, reason), left_out & (not check.carries_load)
+    return Contained(values, reason), left_out & (not carries_load)
 
 
 def contained_amounts(

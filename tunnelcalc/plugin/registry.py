@@ -12,30 +12,33 @@ import pluggy
 from tunnelcalc.errors import DuplicateNameError
 from tunnelcalc.plugin import hooks
 from tunnelcalc.plugin.contract import (
-    ClosureProfileMethod,
-    GroundReactionMethod,
+    ClassCheck,
     GroundReader,
-    ModulusMethod,
+    Method,
     ReportWriter,
-    StrengthMethod,
+    SectionFigure,
     SupportCheck,
     SupportKind,
     ValidityFlag,
 )
 from tunnelcalc.project import Element
+from tunnelcalc.verification import VerificationCheck
 
 OWN_DISTRIBUTION = "tunnelcalc"
 
 SORTS = {
     "support_kind": "tunnelcalc_register_support_kinds",
     "support_check": "tunnelcalc_register_support_checks",
+    "class_check": "tunnelcalc_register_class_checks",
     "strength": "tunnelcalc_register_strengths",
     "deformation_modulus": "tunnelcalc_register_deformation_moduli",
     "ground_reaction": "tunnelcalc_register_ground_reactions",
     "closure_profile": "tunnelcalc_register_closure_profiles",
     "validity_flag": "tunnelcalc_register_validity_flags",
+    "verification_check": "tunnelcalc_register_verification_checks",
     "ground_reader": "tunnelcalc_register_ground_readers",
     "report_writer": "tunnelcalc_register_report_writers",
+    "section_figure": "tunnelcalc_register_section_figures",
 }
 """Each sort of thing that plugins offer, and the hook that offers it."""
 
@@ -121,17 +124,8 @@ class Registry:
     def support_kind(self, name: str) -> SupportKind:
         return cast("SupportKind", self.offers["support_kind", name].thing)
 
-    def strength(self, name: str) -> StrengthMethod:
-        return cast("StrengthMethod", self.offers["strength", name].thing)
-
-    def deformation_modulus(self, name: str) -> ModulusMethod:
-        return cast("ModulusMethod", self.offers["deformation_modulus", name].thing)
-
-    def ground_reaction(self, name: str) -> GroundReactionMethod:
-        return cast("GroundReactionMethod", self.offers["ground_reaction", name].thing)
-
-    def closure_profile(self, name: str) -> ClosureProfileMethod:
-        return cast("ClosureProfileMethod", self.offers["closure_profile", name].thing)
+    def method(self, step: str, name: str) -> Method:
+        return cast("Method", self.offers[step, name].thing)
 
     def ground_reader(self, suffix: str) -> GroundReader | None:
         """The reader of a file ending. What we read ourselves, no other plugin takes over."""
@@ -151,11 +145,20 @@ class Registry:
             if offer.thing.concerns(element):
                 yield cast("SupportCheck", offer.thing)
 
+    def class_checks(self, named: Iterable[str]) -> tuple[ClassCheck, ...]:
+        return tuple(offer.thing for offer in self._taking_part("class_check", named))
+
     def flags(self, named: Iterable[str]) -> tuple[ValidityFlag, ...]:
         return tuple(offer.thing for offer in self._taking_part("validity_flag", named))
 
+    def verification_checks(self) -> tuple[VerificationCheck, ...]:
+        return tuple(offer.thing for offer in self.of_sort("verification_check"))
+
     def report_writers(self, named: Iterable[str]) -> tuple[ReportWriter, ...]:
         return tuple(offer.thing for offer in self._taking_part("report_writer", named))
+
+    def section_figures(self, named: Iterable[str]) -> tuple[SectionFigure, ...]:
+        return tuple(offer.thing for offer in self._taking_part("section_figure", named))
 
     def _taking_part(self, sort: str, named: Iterable[str]) -> Iterator[Offer]:
         """What runs follows from the project, not from what else happens to be installed."""

@@ -45,7 +45,7 @@ def student_quantile(probability: float, degrees_of_freedom: Array) -> Array:
     Student, Biometrika 6 (1908) 1-25; by the inverse in scipy.special.
     """
     # Here, so that whoever has no tests does not wait for the library.
-    from scipy.special import stdtrit  # type: ignore[import-untyped]
+    from scipy.special import stdtrit
 
     degrees = np.asarray(degrees_of_freedom, float)
     return stdtrit(np.where(degrees >= 1, degrees, np.nan), probability)

@@ -247,7 +247,7 @@ class _Line:
 def _least_squares(minor: Array, major: Array, start: IntactFit) -> IntactFit:
     """The criterion fitted to s1, in stresses over the regression's strength."""
     # Here, so that whoever has no tests does not wait for the library.
-    from scipy.optimize import least_squares  # type: ignore[import-untyped]
+    from scipy.optimize import least_squares
 
     unit = start.intact_strength_mpa
     x, difference = minor / unit, (major - minor) / unit

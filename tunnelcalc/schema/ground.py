@@ -5,6 +5,7 @@ from __future__ import annotations
 from tunnelcalc.inputs.estimates import ESTIMATED, source_names
 from tunnelcalc.inputs.ground import SECTION_LENGTH
 from tunnelcalc.inputs.unit_values import CAUTIOUS, RULES, VALUE_SETS
+from tunnelcalc.project import DRAINAGE
 from tunnelcalc.schema.parts import (
     NOT_BLANK,
     Schema,
@@ -34,6 +35,9 @@ def ground() -> Schema:
             "propertyNames": {"pattern": NOT_BLANK},
             "additionalProperties": text("the name that the program knows"),
         },
+        "drainage": choice(
+            "what becomes of ground water at the lining; stated, stresses are effective", DRAINAGE
+        ),
         "terrain": path("levels of the terrain, with chainage_m and level_m"),
         "water_table": path("levels of the water table, with chainage_m and level_m"),
         "layers": path("ground units above the opening"),

@@ -62,7 +62,8 @@ def _plain(value: float) -> float | int:
 def choice(meaning: str, words: Sequence[str]) -> Schema:
     """One of several words; YAML may take a word for a number."""
     numbers = [_plain(value) for value in map(as_number, words) if value is not None]
-    return {"description": meaning, "enum": [*words, *numbers]}
+    truths = [{"true": True, "false": False}[word] for word in words if word in ("true", "false")]
+    return {"description": meaning, "enum": [*words, *numbers, *truths]}
 
 
 def listing(meaning: str, items: Schema, **more: Any) -> Schema:

@@ -4,11 +4,14 @@ from __future__ import annotations
 
 import json
 
+from tunnelcalc.inputs.method_choices import BY_UNIT
+from tunnelcalc.inputs.project_file import YES_OR_NO
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import DEFAULT_METHODS
 from tunnelcalc.schema.alignment import chainage_notation, opening
+from tunnelcalc.schema.flags import flags
 from tunnelcalc.schema.ground import ground
-from tunnelcalc.schema.parts import Schema, choice, listing, number, table, text
+from tunnelcalc.schema.parts import NOT_BLANK, Schema, choice, listing, number, table, text
 from tunnelcalc.schema.support import support_classes
 from tunnelcalc.vocabulary import Limits
 
@@ -33,8 +36,9 @@ def project_schema(registry: Registry) -> Schema:
         "methods": _methods(registry),
         "plugins": _plugins(registry),
         "support_classes": support_classes(registry),
-        "criteria": _criteria(),
+        "criteria": _criteria(registry),
         "schedule": _schedule(),
+        "flags": flags(registry),
     }
     head = {"$schema": DIALECT, "$id": SCHEMA_ID, "title": "project.yaml of tunnelcalc"}
     return {**head, **table("a project of tunnelcalc", keys, REQUIRED)}
@@ -49,7 +53,23 @@ def _methods(registry: Registry) -> Schema:
     keys = {}
     for step, default in DEFAULT_METHODS.items():
         meaning = METHOD_MEANINGS.get(step, step)
-        keys[step] = choice(f"{meaning}; without it {default}", registry.names(step))
+        names = registry.names(step)
+        one = choice(f"{meaning}; without it {default}", names)
+        units = {
+            "description": "the method of single ground units: GROUND UNIT: method",
+            "type": "object",
+            "propertyNames": {"pattern": NOT_BLANK},
+            "additionalProperties": choice("a method", names),
+        }
+        by_unit = table(
+            f"{meaning}, by ground unit",
+            {
+                "default": choice(f"for all other ground; without it {default}", names),
+                BY_UNIT: units,
+            },
+            [BY_UNIT],
+        )
+        keys[step] = {"if": {"type": "object"}, "then": by_unit, "else": one}
     return table("methods by name", keys)
 
 
@@ -59,14 +79,19 @@ def _plugins(registry: Registry) -> Schema:
     return listing(meaning, choice("an installed plugin", names))
 
 
-def _criteria() -> Schema:
+def _criteria(registry: Registry) -> Schema:
     keys = {
         "factor_of_safety": number("least factor of safety of any load check", Limits(1, 10)),
         "closure_pct": number(
             "largest supported closure, per cent of the radius", Limits(0, 100, above=True), "%"
         ),
     }
-    return table("what makes a class adequate", keys, list(keys))
+    required = list(keys)
+    for offer in registry.of_sort("class_check"):
+        if offer.thing.by_choice:
+            meaning = f"whether a class must pass {offer.name}: {offer.thing.meaning}"
+            keys[offer.name] = choice(meaning, YES_OR_NO)
+    return table("what makes a class adequate", keys, required)
 
 
 def _schedule() -> Schema:

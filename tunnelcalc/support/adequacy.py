@@ -104,7 +104,8 @@ def class_outcome(
     factors : of each check, (n,) factor of safety, NaN where there is none. [-]
     outcomes : of each check, (n,) Outcome.
     loads : for each check, whether it carries load; the others are rules.
-    counting : for each check, (n,) whether the class needs it to pass here.
+    counting : for each check, (n,) whether the class needs it to pass here; what does not count
+        has no part in the factor either.
     closure_pct : (n,) closure at rest with this class, in per cent of the radius; NaN where
         there is no equilibrium. [%]
     largest_closure_pct : the project's limit. [%]
@@ -127,7 +128,7 @@ def class_outcome(
     checks = zip(factors, outcomes, loads, counting, strict=True)
     for position, (factor, outcome, load, counts) in enumerate(checks):
         adequate = adequate & ((outcome == Outcome.PASS) | ~counts)
-        lower = factor < least
+        lower = (factor < least) & counts
         least = np.where(lower, factor, least)
         weakest = np.where(lower, position, weakest)
         blocking = (outcome == Outcome.NOT_EVALUATED) if load else (outcome != Outcome.PASS)

@@ -9,10 +9,10 @@ import pytest
 from end_to_end.projects import GROUND, content, replaced
 from unit.inputs.reading import REGISTRY, read, told
 
-from tunnelcalc.inputs.ground_tables import OWN_COLUMNS
+from tunnelcalc.inputs.ground_tables import own_columns
 from tunnelcalc.pipeline.chain import build_stages
 from tunnelcalc.pipeline.incidents import Incidents
-from tunnelcalc.pipeline.support_stages import plan_classes
+from tunnelcalc.pipeline.plan import plan_classes
 from tunnelcalc.project import Gap, Project
 
 
@@ -115,14 +115,17 @@ def stage_columns(project: Project) -> set[str]:
 
 def test_no_column_that_the_program_fills_can_be_the_users_own(tmp_path: Path):
     project = read(tmp_path)
-    flags = set(REGISTRY.names("validity_flag"))
-    taken = {*OWN_COLUMNS, *flags}
+    taken = own_columns(REGISTRY)
     assert stage_columns(project) <= taken
     assert set(project.ground) - {"ground_unit"} <= taken
 
 
 @pytest.mark.parametrize(
-    "name", ["radius_m", "from_m", "flags", "class_adequate", "modulus_capped"]
+    "name",
+    [
+        *("radius_m", "from_m", "flags", "class_adequate", "modulus_capped", "height_m"),
+        *("fails_crown_dead_weight", "strength_method", "class_stress_case"),
+    ],
 )
 def test_a_name_of_the_programs_own_is_refused_for_a_column(tmp_path: Path, name: str):
     own = replaced(

@@ -7,7 +7,7 @@ from pathlib import Path
 import numpy as np
 import pytest
 from end_to_end.projects import Damage, replaced
-from unit.inputs.arriving import ground, table
+from unit.inputs.arriving import ground, ground_key, table
 from unit.inputs.levelled import (
     AXIS,
     AXIS_TABLE,
@@ -62,7 +62,14 @@ def test_the_water_head_stands_over_the_axis_and_is_never_below_it(tmp_path: Pat
     head = line(WATER_TABLE, project.ground["chainage_m"]) - axis_of(project)
     assert np.any(head < 0)
     assert_same(project.ground["water_head_m"], np.where(head > 0, head, 0))
-    assert "water heads follow from the water table, but stresses are total" in project.warnings
+    told = "water heads are given, but ground: drainage is not: stresses and strength are total"
+    assert told in project.warnings
+
+
+def test_heads_that_follow_from_levels_are_used_once_drainage_is_stated(tmp_path: Path):
+    project = read(tmp_path, levelled(AXIS, *WATERED, ground_key("  drainage: drained\n")))
+    assert project.drainage == "drained"
+    assert not any("stresses and strength are total" in text for text in project.warnings)
 
 
 def test_rows_of_levels_may_stand_in_any_order(tmp_path: Path):

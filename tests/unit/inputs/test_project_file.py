@@ -43,12 +43,14 @@ def test_a_class_needs_no_distance_where_each_element_has_one(tmp_path: Path):
 
 
 def test_methods_that_are_not_named_are_the_default_ones(tmp_path: Path):
-    assert dict(read(tmp_path).methods) == {
-        "strength": "hoek_brown_2002",
-        "deformation_modulus": "hoek_diederichs_2006",
-        "ground_reaction": "hoek_brown_perfectly_plastic",
-        "closure_profile": "vlachopoulos_diederichs_2009",
+    methods = read(tmp_path).methods
+    assert {step: choice.names for step, choice in methods.items()} == {
+        "strength": ("hoek_brown_2002",),
+        "deformation_modulus": ("hoek_diederichs_2006",),
+        "ground_reaction": ("hoek_brown_perfectly_plastic",),
+        "closure_profile": ("vlachopoulos_diederichs_2009",),
     }
+    assert not any(choice.by_unit for choice in methods.values())
 
 
 @pytest.mark.parametrize("title", ["no", "2024", "1:20", "'a # b'", ">\n  folded\n  title", "Füße"])

@@ -23,6 +23,13 @@ RANGES = [
     ("intact_modulus_mpa", ["1e-6", "1e6"], ["0", "1000001"]),
     ("rock_mass_modulus_mpa", ["1e-6", "1e6"], ["0", "1000001"]),
     ("residual_gsi", ["1e-6", "100"], ["0", "100.1"]),
+    ("mb", ["1e-6", "60"], ["0", "60.1"]),
+    ("s", ["0", "1"], ["-0.1", "1.001"]),
+    ("a", ["0.5", "0.9999"], ["0.4999", "1"]),
+    ("friction_angle_deg", ["0", "80"], ["-0.1", "80.1"]),
+    ("cohesion_mpa", ["0", "500"], ["-0.1", "500.1"]),
+    ("critical_shear_strain", ["1e-9", "1"], ["0", "1.001"]),
+    ("disturbed_thickness_m", ["0", "100"], ["-0.1", "100.1"]),
     ("rmr89", ["0", "100"], ["-1", "100.1"]),
     ("rqd_pct", ["0", "100"], ["-1", "101"]),
     ("jcond89", ["0", "30"], ["-1", "31"]),
@@ -43,6 +50,8 @@ def of_siltstone(column: str, cell: str) -> Damage:
         table = [[*line, column if number == 0 else ""] for number, line in enumerate(table)]
     if column == "intact_modulus_mpa":
         table[2][table[0].index("modulus_ratio")] = ""
+    if column == "residual_gsi":
+        table[2][table[0].index("gsi")] = "100"  # the residual one is not above it
     table[2][table[0].index(column)] = cell
     return content("units.csv", "\n".join(",".join(line) for line in table).encode())
 

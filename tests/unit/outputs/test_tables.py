@@ -25,10 +25,10 @@ def test_names_with_commas_and_quotes_stand_in_their_cells(tmp_path: Path):
     replaced("project.yaml", "name: light", "name: 'bolts, \"light\"'")(project)
     folder = run_project(project, load_plugins()).folder
     for table in folder.glob("*.csv"):
-        if table.name == "ground_values.csv":
-            continue  # it knows no classes
         rows = list(csv.reader(io.StringIO(table.read_text(encoding="utf-8"), newline="")))
         assert {len(row) for row in rows} == {len(rows[0])}
+        if table.name in ("flags.csv", "ground_values.csv"):
+            continue  # they know no classes
         assert any('bolts, "light"' in row for row in rows)
 
 

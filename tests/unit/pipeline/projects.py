@@ -13,11 +13,13 @@ from tunnelcalc.project import (
     DEFAULT_METHODS,
     Criteria,
     Element,
+    MethodChoice,
     Project,
     ScheduleRules,
     SupportClass,
 )
 from tunnelcalc.sections import Sections
+from tunnelcalc.vocabulary import GROUND, Sort
 
 BOLTS = {
     "diameter_mm": 25.0,
@@ -54,14 +56,21 @@ def element(
 
 
 def project(
-    classes: Mapping[str, Sequence[Element]], ground: Sections, plugins: Sequence[str] = ()
+    classes: Mapping[str, Sequence[Element]],
+    ground: Sections,
+    plugins: Sequence[str] = (),
+    *,
+    methods: Mapping[str, MethodChoice] | None = None,
+    drainage: str = "",
+    chosen_checks: Mapping[str, bool] | None = None,
 ) -> Project:
     """A project with these classes, lightest first, and rules and criteria as in a small job."""
+    defaults = {step: MethodChoice((name,)) for step, name in DEFAULT_METHODS.items()}
     return Project(
         title="Invented test tunnel",
-        methods=DEFAULT_METHODS,
+        methods={**defaults, **(methods or {})},
         support_classes=tuple(SupportClass(n, tuple(e)) for n, e in classes.items()),
-        criteria=Criteria(factor_of_safety=1.5, closure_pct=1.0),
+        criteria=Criteria(1.5, 1.0, chosen_checks or {}),
         schedule=ScheduleRules(minimum_zone_m=20.0, carry_m=10.0),
         plugins=tuple(plugins),
         gaps=(),
@@ -70,6 +79,7 @@ def project(
         origins=(),
         tests=(),
         notation=Notation(),
+        drainage=drainage,
         warnings=(),
         files=(),
     )
@@ -92,6 +102,17 @@ def along(lengths_m: Sequence[float]) -> dict[str, Array]:
     to_m = np.cumsum(lengths_m)
     from_m = to_m - np.asarray(lengths_m)
     return {"chainage_m": (from_m + to_m) / 2, "from_m": from_m, "to_m": to_m}
+
+
+def with_absent(columns: Mapping[str, Array], count: int) -> dict[str, Array]:
+    """Columns of the ground that no table gives hold nothing, as in a project that was read."""
+    absent = {
+        quantity.name: np.full(count, "", dtype=object)
+        if quantity.sort is Sort.CHOICE
+        else np.full(count, np.nan)
+        for quantity in GROUND.values()
+    }
+    return absent | dict(columns)
 
 
 def random_ground(count: int, seed: int) -> Sections:
@@ -121,11 +142,13 @@ def random_ground(count: int, seed: int) -> Sections:
         "block_width_m": np.where(half, draw.uniform(0.1, 2, count), np.nan),
         "radius_m": np.full(count, 5.2),
         "span_m": np.full(count, 10.4),
+        "height_m": np.full(count, 10.4),
         "profile": np.array([""] * count, dtype=object),
         "equivalent_radius": np.zeros(count, dtype=bool),
         "estimates_differ": np.zeros(count, dtype=bool),
         "tested_confinement_mpa": np.full(count, np.inf),
     }
+    columns = with_absent(columns, count)
     columns["gsi"][-1], columns["intact_strength_mpa"][-1] = 1.0, 1e-5
     columns["vertical_stress_mpa"][-1] = 100.0
     return Sections(columns)

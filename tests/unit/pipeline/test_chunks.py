@@ -8,11 +8,12 @@ from unit.pipeline.projects import project, random_ground, three_classes
 
 from tunnelcalc.pipeline.chain import ONLY_IN_TABLES, build_stages, kept_columns
 from tunnelcalc.pipeline.incidents import Incidents
+from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.pipeline.stage import check_chain, run_stages
-from tunnelcalc.pipeline.support_stages import check_lines, plan_classes
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.sections import joined
 from tunnelcalc.support.adequacy import Outcome
+from tunnelcalc.validity import Level
 
 COUNT = 61
 
@@ -65,8 +66,8 @@ def test_the_invented_ground_has_a_bit_of_everything(at_once):
     assert set(whole["required_class"].tolist()) == {-1, 0, 1, 2}
     assert np.any(whole["scheduled_class"] != whole["required_class"])
     assert set(np.unique(chunks["check_outcome"])) == set(Outcome)
-    assert np.any(whole["flag_raised"])
-    assert np.any(whole["flag_not_assessed"])
+    found = set(np.unique(whole["flag_level"]).tolist())
+    assert found >= {Level.CLEAR, Level.ADVISORY, Level.OUTSIDE, Level.NOT_ASSESSED}
 
 
 def test_the_chain_of_a_project_holds():

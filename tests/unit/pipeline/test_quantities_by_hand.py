@@ -13,7 +13,7 @@ from unit.pipeline.projects import BOLTS, SHOTCRETE, STEEL_SETS, along, element,
 
 from tunnelcalc.pipeline.collect import item_totals
 from tunnelcalc.pipeline.incidents import Incidents
-from tunnelcalc.pipeline.support_stages import plan_classes
+from tunnelcalc.pipeline.plan import plan_classes
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.schedule.selection import NONE_ADEQUATE
 from tunnelcalc.sections import Sections

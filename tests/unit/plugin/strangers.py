@@ -91,6 +91,7 @@ class Kind:
     """A kind of support with one parameter."""
 
     meaning = "invented"
+    is_ring = False
     parameters = (api.Parameter("amount_m", "invented", "m", api.Limits(0, 10)),)
 
     def __init__(
@@ -148,14 +149,18 @@ class Check:
 class Flag:
     """A flag that is never raised."""
 
-    meaning = threshold = origin = remedy = "invented"
+    meaning = remedy = quantity = "invented"
+    unit = ""
+    thresholds = (api.Threshold(api.Level.ADVISORY, api.Side.ABOVE, 1.0, "invented"),)
     needs: tuple[str, ...] = ()
+    may_be_missing: tuple[str, ...] = ()
+    applies = outside_applies = None
 
     def __init__(self, name: str) -> None:
         self.name = name
 
-    def raised(self, sections: api.Sections) -> api.Array:
-        return np.zeros(sections.count, dtype=bool)
+    def value(self, sections: api.Sections) -> api.Array:
+        return np.zeros(sections.count)
 
 
 class Reader:

@@ -1,0 +1,248 @@
+"""The figure of ground reaction, support reaction and their equilibrium."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+
+from tunnelcalc import api
+from tunnelcalc_report import page
+from tunnelcalc_report.marks import (
+    ATTENTION,
+    GREY,
+    GROUND,
+    OF_CASES,
+    OF_CLASS,
+    OF_LIMIT,
+    SUPPORT,
+    of_element,
+)
+from tunnelcalc_report.page import megapascals, millimetres, number
+from tunnelcalc_report.views import (
+    BELOW_ZERO,
+    MOST_PLASTIC,
+    View,
+    capacity_pressure_mpa,
+    enlarged,
+    whole,
+)
+
+if TYPE_CHECKING:
+    from matplotlib.axes import Axes
+
+CLOSURE = "closure of the wall u [mm]"
+ABSURD_M = 1e5
+PRESSURE = "support pressure p [MPa]"
+
+
+class GroundReactionFigure:
+    """Three drawings: ground and support enlarged, the whole curve, the plastic radius."""
+
+    name = "ground_reaction"
+
+    def draw(self, curves: api.SectionCurves, folder: Path) -> Iterable[str]:
+        if not any(np.any(np.isfinite(case.ground.closure_mm)) for case in curves.cases):
+            return ()
+        with page.drawing():
+            return _drawn(curves, folder)
+
+
+def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
+    facts = (
+        f"class {curves.support_class}",
+        f"radius R {number(curves.radius_m)} m",
+        curves.methods["ground_reaction"],
+        f"deformation modulus by {curves.methods['deformation_modulus']}",
+    )
+    figure = page.sheet("Ground and support", curves, facts)
+    view, all_of_it = enlarged(curves), whole(curves)
+    handles = _handles(curves)
+    bottom, legend_top = page.bottom_above_legend(len(handles))
+    grid = figure.add_gridspec(
+        2,
+        2,
+        width_ratios=(1.75, 1),
+        left=page.LEFT,
+        right=page.RIGHT,
+        top=page.TOP,
+        bottom=bottom,
+        wspace=0.2,
+        hspace=0.42,
+    )
+    main, top, low = (figure.add_subplot(cell) for cell in (grid[:, 0], grid[0, 1], grid[1, 1]))
+    _ground_and_support(main, curves, view)
+    _whole_curve(top, curves, all_of_it, view)
+    notes = [*_notes(curves, view, all_of_it), *_plastic_radius(low, curves)]
+    page.legend(figure, handles, legend_top)
+    page.note(figure, notes)
+    return page.saved(figure, folder, "ground_reaction")
+
+
+def _cases(curves: api.SectionCurves) -> list[tuple[api.CaseCurves, Any]]:
+    """The governing stress case first, each with its looks."""
+    others = [case for case in curves.cases if case is not curves.governing]
+    return list(zip([curves.governing, *others], OF_CASES, strict=False))
+
+
+def _ground_and_support(axes: Axes, curves: api.SectionCurves, view: View) -> None:
+    for case, line in _cases(curves):
+        axes.plot(case.ground.closure_mm, case.ground.support_pressure_mpa, **line.looks())
+    support = curves.governing.support
+    for position, element in enumerate(support.elements):
+        axes.plot(*_line_of(element, support), **of_element(position).looks())
+    if len(support.elements) > 1:
+        axes.plot(support.closure_mm, support.pressure_mpa, **OF_CLASS.looks())
+    axes.axvline(curves.closure_limit_mm, **OF_LIMIT.looks())
+    _mark_states(axes, curves)
+    axes.set_xlim(view.left, view.right)
+    _set_pressures(axes, view.top)
+    title = "enlarged where they meet" if view != whole(curves) else ""
+    page.label_axes(axes, CLOSURE, PRESSURE, title)
+
+
+def _line_of(
+    element: api.ReactionOfElement, support: api.ReactionOfClass
+) -> tuple[api.Array, api.Array]:
+    """The line of an element, followed to the state at rest where that lies beyond it."""
+    closure, pressure = element.closure_mm, element.pressure_mpa
+    if support.rest_closure_mm > closure[-1]:
+        closure = np.append(closure, support.rest_closure_mm)
+        pressure = np.append(pressure, element.rest_pressure_mpa)
+    return closure, pressure
+
+
+def _set_pressures(axes: Axes, top: float) -> None:
+    axes.set_ylim(-BELOW_ZERO * top, top)
+    axes.axhline(0, color=GREY, linewidth=0.8, zorder=1)
+
+
+def _mark_states(axes: Axes, curves: api.SectionCurves) -> None:
+    for case in curves.cases:
+        ground, support = case.ground, case.support
+        if ground.critical_pressure_mpa > 0:
+            at = ground.critical_pressure_mpa
+            closure = np.interp(at, ground.support_pressure_mpa, ground.closure_mm)
+            axes.plot([closure], [at], **_critical())
+        filled = case is curves.governing
+        axes.plot([support.rest_closure_mm], [support.rest_pressure_mpa], **_rest(filled), zorder=5)
+
+
+def _critical() -> dict[str, Any]:
+    return {"marker": "o", "color": GROUND, "markersize": 7, "mfc": "white", "linestyle": "none"}
+
+
+def _rest(filled: bool) -> dict[str, Any]:
+    face = SUPPORT if filled else "white"
+    return {"marker": "D", "color": SUPPORT, "markersize": 8, "mfc": face, "linestyle": "none"}
+
+
+def _whole_curve(axes: Axes, curves: api.SectionCurves, view: View, within: View) -> None:
+    from matplotlib.patches import Rectangle
+
+    for case, line in _cases(curves):
+        axes.plot(case.ground.closure_mm, case.ground.support_pressure_mpa, **line.looks())
+    axes.axvline(curves.closure_limit_mm, **OF_LIMIT.looks())
+    _mark_states(axes, curves)
+    title = "whole curve"
+    if within != view:
+        size = within.right - within.left, within.top
+        axes.add_patch(Rectangle((within.left, 0), *size, fill=False, ec=GREY, lw=0.8, ls="--"))
+        title = "whole curve (frame: part at left)"
+    axes.locator_params(axis="x", nbins=5)
+    axes.set_xlim(0, view.right)
+    _set_pressures(axes, view.top)
+    page.label_axes(axes, CLOSURE, PRESSURE, title)
+
+
+def _plastic_radius(axes: Axes, curves: api.SectionCurves) -> list[str]:
+    """Draw it against the pressure; returns what must be said of it."""
+    radius, largest, top = curves.radius_m, curves.radius_m, 0.0
+    for case, line in _cases(curves):
+        ground = case.ground
+        axes.plot(ground.plastic_radius_m, ground.support_pressure_mpa, **line.looks())
+        largest = max(largest, *ground.plastic_radius_m[np.isfinite(ground.plastic_radius_m)])
+        top = max(top, ground.in_situ_stress_mpa)
+        filled = case is curves.governing
+        at_rest = case.support.rest_plastic_radius_m, case.support.rest_pressure_mpa
+        axes.plot(*([value] for value in at_rest), **_rest(filled), zorder=5)
+    right = min(largest, MOST_PLASTIC * radius)
+    axes.set_xlim(0.95 * radius, radius + 1.08 * max(right - radius, 0.25 * radius))
+    _set_pressures(axes, 1.04 * top)
+    title = f"plastic radius (wall: {number(radius)} m)"
+    page.label_axes(axes, "plastic radius Rp [m]", PRESSURE, title)
+    if largest > right:
+        told = f"{number(largest)} m" if largest < ABSURD_M else "more than 100 km"
+        return [f"the plastic radius without support, {told}, is beyond its axis"]
+    return []
+
+
+def _notes(curves: api.SectionCurves, view: View, all_of_it: View) -> list[str]:
+    notes = []
+    support = curves.governing.support
+    free = [case.ground.free_closure_mm for case in curves.cases]
+    if any(value != value for value in free):
+        notes.append("closure without support cannot be computed")
+    elif max(free) > all_of_it.right:
+        told = " and ".join(f"{millimetres(value)}" for value in free)
+        notes.append(f"closure without support, {told}, is beyond the axis")
+    if not curves.closure_limit_mm <= view.right:
+        notes.append("the closure limit is beyond the axis at left")
+    if view.left > 0:
+        notes.append(f"the closure axis at left begins at {millimetres(view.left)}")
+    if capacity_pressure_mpa(support) > view.top:
+        notes.append("capacities are beyond the axis at left")
+    if len(curves.cases) > 1 and support.elements:
+        notes.append(f"lines of elements are those of the {curves.governing_case} stress")
+    water = sum(element.water_mpa for element in support.elements)
+    if water > 0:
+        notes.append(f"water on the rings, {number(water)} MPa, is not in these lines")
+    notes += [
+        f"{element.label} is beyond its capacity at rest"
+        for element in support.elements
+        if element.rest_pressure_mpa + element.water_mpa > element.capacity_mpa
+    ]
+    if support.rest_closure_mm != support.rest_closure_mm:
+        notes.append("no equilibrium can be computed")
+    return notes
+
+
+def _handles(curves: api.SectionCurves) -> list[Any]:
+    """What the lines and marks mean, with their numbers."""
+    from matplotlib.lines import Line2D
+
+    def handle(label: str, **looks: Any) -> Any:
+        return Line2D([], [], label=label, **looks)
+
+    made = []
+    for case, line in _cases(curves):
+        ground = case.ground
+        name = f"ground, {case.stress_case} stress p0 {megapascals(ground.in_situ_stress_mpa)}"
+        made.append(handle(f"{name}: {millimetres(ground.free_closure_mm)} alone", **line.looks()))
+    pressures = [case.ground.critical_pressure_mpa for case, _ in _cases(curves)]
+    if any(value > 0 for value in pressures):
+        told = " and ".join(number(value) for value in pressures)
+        made.append(handle(f"critical pressure {told} MPa: ground yields below", **_critical()))
+    for case, _ in _cases(curves):
+        filled, support = case is curves.governing, case.support
+        rest, moved = support.rest_pressure_mpa, support.rest_closure_mm
+        state = f"{megapascals(rest)}, {millimetres(moved)}" if moved == moved else "unknown"
+        which = f", {case.stress_case} stress" if len(curves.cases) > 1 else ""
+        made.append(handle(f"equilibrium{which}: {state}", **_rest(filled)))
+    support = curves.governing.support
+    for position, element in enumerate(support.elements):
+        made.append(handle(_of_element(element), **of_element(position).looks()))
+    if len(support.elements) > 1:
+        made.append(handle("all elements together", **OF_CLASS.looks()))
+    limit = f"{millimetres(curves.closure_limit_mm)}, {number(curves.closure_limit_pct)} % of R"
+    made.append(handle(f"closure limit {limit}", **{**OF_LIMIT.looks(), "color": ATTENTION}))
+    return made
+
+
+def _of_element(element: api.ReactionOfElement) -> str:
+    return (
+        f"{element.label}: from {millimetres(element.installation_closure_mm)}, capacity "
+        f"{megapascals(element.capacity_mpa)}, at rest {megapascals(element.rest_pressure_mpa)}"
+    )

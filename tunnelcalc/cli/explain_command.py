@@ -1,0 +1,42 @@
+"""`tunnelcalc explain`: the calculation sheet of one section of a run."""
+
+from __future__ import annotations
+
+import sys
+from pathlib import Path
+
+from tunnelcalc.cli.output_file import OutputFile
+from tunnelcalc.errors import ExitCode, InputError, Problem, Where
+from tunnelcalc.explain.sheet import explain as explained
+from tunnelcalc.outputs.sheet_text import FORMS, MARKS, sheet_text
+from tunnelcalc.plugin.registry import load_plugins
+
+
+def explain(run: Path, at: str, class_name: str | None, out: Path | None) -> ExitCode:
+    """Print the sheet, or write it. Ends with 5 where it does not agree with the run."""
+    file = None if out is None else _file(out)
+    sheet = explained(run, at, class_name, load_plugins())
+    if file is None:
+        sys.stdout.write(sheet_text(sheet))
+    else:
+        file.write(FORMS[file.path.suffix.lower()](sheet))
+        print(f"written: {out}")
+        for difference in sheet.differences:
+            print(f"difference: {difference}", file=sys.stderr)
+    return ExitCode.DIFFERENCE if sheet.differences else ExitCode.COMPLETE
+
+
+def _file(path: Path) -> OutputFile:
+    """The file of `--out`, whose ending says the form. Raises InputError."""
+    if path.suffix.lower() not in FORMS:
+        problem = Problem(
+            Where(str(path)),
+            "has an ending that says no form",
+            "give the file one of these endings",
+            name="--out",
+            allowed=" or ".join(FORMS),
+        )
+        raise InputError((problem,))
+    file = OutputFile(path, "--out", MARKS)
+    file.check()
+    return file

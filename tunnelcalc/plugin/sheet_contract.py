@@ -1,0 +1,59 @@
+"""What may stand beside the things that plugins offer, so that a calculation sheet shows formulas.
+
+All of it is optional: what has no `lines` is printed by its result alone, as given by its plugin.
+The result of each line is to come from the functions that computed the run; the formula is text,
+and the sheet tells where both disagree. `tunnelcalc.api.Working` puts lines together.
+
+`values` holds the columns of one section. What a run computed from the same thing is compared
+with the line of this symbol, if there is one:
+
+    kinds of support    K stiffness [MPa/m], pmax capacity [MPa]
+    checks              demand, capacity, in the unit of the check
+    closure profiles    share [-]
+    laws of the ground  X = Rp / R [-], u_R = u / R [-], and pcr where they have it
+    moduli              E_est [MPa]
+    strengths           those of the vocabulary: mb, s, a, phi, c, sc, st, scm
+
+The last line of a symbol counts.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import Protocol, runtime_checkable
+
+from tunnelcalc.calculation.line import SheetLine
+from tunnelcalc.plugin.contract import SectionValues
+from tunnelcalc.project import Element
+
+
+@runtime_checkable
+class ValueLines(Protocol):
+    """Strengths, moduli and checks of a class as a whole."""
+
+    def lines(self, values: SectionValues) -> Sequence[SheetLine]:
+        """The lines of one section."""
+
+
+@runtime_checkable
+class ProfileLines(Protocol):
+    """Closure profiles."""
+
+    def lines(self, values: SectionValues, distance_m: float) -> Sequence[SheetLine]:
+        """The lines at a distance behind the face, `share` the last."""
+
+
+@runtime_checkable
+class ReactionLines(Protocol):
+    """Laws of the ground."""
+
+    def lines(self, values: SectionValues, pressure_mpa: float) -> Sequence[SheetLine]:
+        """The state of the wall under a pressure, `u_R` the last."""
+
+
+@runtime_checkable
+class ElementLines(Protocol):
+    """Kinds of support, and checks of their elements."""
+
+    def lines(self, values: SectionValues, element: Element) -> Sequence[SheetLine]:
+        """The lines of an element."""
