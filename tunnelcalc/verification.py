@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
 from enum import StrEnum
@@ -49,6 +50,8 @@ class Verified:
     check: VerificationCheck
     expected: float
     computed: float
+    fault: str = ""
+    """What the check raised, where it has no numbers."""
 
     @property
     def difference(self) -> float:
@@ -61,5 +64,13 @@ class Verified:
 
 
 def verified(checks: Iterable[VerificationCheck]) -> tuple[Verified, ...]:
-    """Both numbers of every check, in order."""
-    return tuple(Verified(check, check.expected(), check.computed()) for check in checks)
+    """Both numbers of every check, in order; a check that raises has none and does not agree."""
+    return tuple(_verified(check) for check in checks)
+
+
+def _verified(check: VerificationCheck) -> Verified:
+    try:
+        return Verified(check, float(check.expected()), float(check.computed()))
+    except Exception as error:  # a stranger's check may raise anything
+        fault = f"{type(error).__name__}: {error}"
+        return Verified(check, math.nan, math.nan, " ".join(fault.split())[:300])

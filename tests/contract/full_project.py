@@ -10,6 +10,7 @@ from pathlib import Path
 from typing import Any
 
 import yaml
+from jsonschema import Draft202012Validator
 
 from tunnelcalc.errors import InputError, Problem
 from tunnelcalc.inputs.project_file import read_project
@@ -60,11 +61,16 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
                     "gsi": ["measured", "jcond89_rqd", "rmr89_dry", "q_prime", "block_volume"],
                     "intact_strength_mpa": ["laboratory", "point_load", "measured"],
                     "mi": ["measured", "laboratory"],
+                    "residual_gsi": ["measured", "cai_2007"],
                 },
+                "drainage": "drained",
                 "values": "cautious",
                 "cautious_rule": "mean_95",
             },
-            "methods": dict(DEFAULT_METHODS),
+            "methods": {
+                **DEFAULT_METHODS,
+                "strength": {"default": "hoek_brown_2002", "by_unit": {"clay": "mohr_coulomb"}},
+            },
             "plugins": [REGISTRY.sources[0].plugin],
             "support_classes": [
                 {
@@ -73,7 +79,11 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
                     "elements": [element(kind) for kind in KINDS],
                 }
             ],
-            "criteria": {"factor_of_safety": 1.5, "closure_pct": 1},
+            "criteria": {
+                "factor_of_safety": 1.5,
+                "closure_pct": 1,
+                "crown_dead_weight": "yes",
+            },
             "schedule": {"minimum_zone_m": 20, "carry_m": 5},
             "flags": {
                 "not_assessed": "outside",
@@ -144,18 +154,24 @@ def _entries(value: object) -> list[tuple[str | int, object]]:
 def schema_at(place: Place) -> dict[str, Any]:
     """The part of the schema that describes a place of the full project."""
     part = SCHEMA
+    value: Any = full_project(without_profiles="profiles" not in place)
     for step in place:
         if isinstance(step, int):
             part = part["items"]
             part = part["allOf"][step]["then"] if "allOf" in part else part
         else:
-            part = _of_keys(part).get("properties", {}).get(step) or part["additionalProperties"]
-    return _of_keys(part)
+            part = _branch(part, value)
+            part = part.get("properties", {}).get(step) or part["additionalProperties"]
+        value = value[step]
+    return _branch(part, value)
 
 
-def _of_keys(part: dict[str, Any]) -> dict[str, Any]:
-    """Where either a list or keys may stand, what holds for keys."""
-    return part if "properties" in part else part.get("else", part)
+def _branch(part: dict[str, Any], value: object) -> dict[str, Any]:
+    """Where one of two things may stand, what holds for the one that does."""
+    if "if" not in part or "properties" in part:
+        return part
+    holds = Draft202012Validator(part["if"]).is_valid(value)
+    return part["then" if holds else "else"]
 
 
 def problems_of(folder: Path, project: object) -> tuple[Problem, ...]:

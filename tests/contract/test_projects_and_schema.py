@@ -123,6 +123,19 @@ BROKEN = {
     "override-by-nobody": set_at(
         "flags", {"overrides": [{"flag": "portal", "from_m": 0, "to_m": 9, "reason": "x"}]}
     ),
+    "method-of-unit-unknown": set_at("methods", {"strength": {"by_unit": {"clay": "clayey"}}}),
+    "method-default-unknown": set_at(
+        "methods", {"strength": {"default": "x", "by_unit": {"clay": "mohr_coulomb"}}}
+    ),
+    "method-without-units": set_at("methods", {"strength": {"default": "mohr_coulomb"}}),
+    "method-of-units-with-more": set_at(
+        "methods", {"strength": {"by_unit": {"clay": "mohr_coulomb"}, "by": "me"}}
+    ),
+    "method-of-a-list": set_at("methods", {"strength": ["mohr_coulomb"]}),
+    "drainage-of-another-sort": set_at("ground", "drainage", "partly"),
+    "dead-weight-perhaps": set_at("criteria", "crown_dead_weight", "perhaps"),
+    "water-on-lining-by-choice": set_at("criteria", "water_on_lining", "yes"),
+    "residual-of-another": set_at("ground", "estimates", {"residual_gsi": ["rmr89_dry"]}),
     "plugin-unknown": set_at("plugins", ["no_such_plugin"]),
 }
 
@@ -148,6 +161,14 @@ SOUND = {
     "title-of-a-number": set_at("title", 2030),
     "installed-by-each-element": installed_by_each_element,
     "no-methods": removed("methods"),
+    "methods-by-unit": set_at(
+        "methods",
+        {"strength": {"by_unit": {"clay": "mohr_coulomb"}}, "closure_profile": "panet_1995"},
+    ),
+    "drained": set_at("ground", "drainage", "drained"),
+    "dead-weight-that-yaml-takes-for-a-truth": set_at("criteria", "crown_dead_weight", True),
+    "dead-weight-no": set_at("criteria", "crown_dead_weight", "no"),
+    "residual-estimated": set_at("ground", "estimates", {"residual_gsi": ["cai_2007"]}),
     "list-of-profiles": set_at(
         "opening",
         [

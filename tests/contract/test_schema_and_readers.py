@@ -17,10 +17,10 @@ from jsonschema import Draft202012Validator
 from tunnelcalc.inputs.support_classes import RESERVED_NAMES
 
 UNKNOWN = "no_such_key"
-FREE = ("ground", "aliases")
-"""A mapping whose keys are the user's."""
+FREE = (("ground", "aliases"), ("methods", "strength", "by_unit"))
+"""Mappings whose keys are the user's."""
 
-MAPPINGS = [place for place in mappings(full_project()) if place != FREE]
+MAPPINGS = [place for place in mappings(full_project()) if place not in FREE]
 LEAVES = dict.fromkeys([*leaves(full_project()), *leaves(full_project(without_profiles=True))])
 NUMBERS = [p for p in LEAVES if {"minimum", "exclusiveMinimum"} & set(schema_at(p))]
 CHOICES = [p for p in LEAVES if "enum" in schema_at(p)]
@@ -64,7 +64,8 @@ def test_the_schema_has_the_words_that_the_reader_has(tmp_path, place):
     project = project_with(place, UNKNOWN)
     problem = next(p for p in problems_of(tmp_path, project) if p.value == UNKNOWN)
     words = problem.allowed.replace(" or ", ", ").split(", ")
-    assert set(schema_at(place)["enum"]) == set(words)
+    # Beside its words the schema has what YAML makes of some of them.
+    assert {word for word in schema_at(place)["enum"] if isinstance(word, str)} == set(words)
 
 
 @pytest.mark.parametrize("name", RESERVED_NAMES)

@@ -30,7 +30,9 @@ def test_validate_says_what_a_project_holds_and_what_it_leaves_out(project: Path
 def test_plugins_lists_what_each_plugin_offers_with_units_and_ranges(project: Path):
     text = printed(project, "plugins")
     assert [line for line in text.splitlines() if not line.startswith(" ")] == [
-        sort for sort in SORTS if sort != "verification_check"  # they have a command of their own
+        sort
+        for sort in SORTS
+        if sort != "verification_check"  # they have a command of their own
     ]
     version = package.__version__
     for line in (

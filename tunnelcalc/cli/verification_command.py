@@ -40,6 +40,7 @@ def verification() -> ExitCode:
     screen.print(made)
     differing = [found for found in outcomes if not found.agrees]
     for found in differing:
-        screen.print(f"differs: {found.check.method}: {found.check.subject}", style="bold")
+        fault = f": {found.fault}" if found.fault else ""
+        screen.print(f"differs: {found.check.name}{fault}", style="bold")
     screen.print(f"{len(outcomes) - len(differing)} of {len(outcomes)} checks agree")
     return ExitCode.DIFFERENCE if differing else ExitCode.COMPLETE

@@ -109,21 +109,30 @@ class ChosenMethods:
     def idle_values(self, numbers: Mapping[str, Array], ground_units: Array) -> Iterator[str]:
         """Notes on values (i,) that are given where no chosen method reads them."""
         residual = self.needs_residual(ground_units)
+        nowhere = []
         for column in READ_BY_CHOICE:
             if column not in numbers:
                 continue
-            read = np.zeros(ground_units.shape, dtype=bool)
-            for step in self.choices:
-                for name, rows in self._rows(step, ground_units):
-                    if column in self.methods[step, name].needs:
-                        read |= rows
+            read = self._reads(column, ground_units)
             if column.startswith("residual_"):
                 read &= residual
             idle = ~np.isnan(numbers[column]) & ~read
-            if np.any(idle):
-                units = sorted({unit for unit in ground_units[idle].tolist() if unit})
-                where = f" for {', '.join(units)}" if units else ""
-                yield f"{column} is given{where}, but no method that the project chose reads it"
+            if np.any(idle) and not np.any(read):
+                nowhere.append(column)
+            elif np.any(idle):
+                units = ", ".join(sorted(set(ground_units[idle].tolist())))
+                yield f"{column} is given for {units}, where no chosen method reads it"
+        if nowhere:
+            yield f"given, but no method that the project chose reads it: {', '.join(nowhere)}"
+
+    def _reads(self, column: str, ground_units: Array) -> Array:
+        """Mask (i,) of the intervals of which some chosen method reads a column."""
+        read = np.zeros(ground_units.shape, dtype=bool)
+        for step in self.choices:
+            for name, rows in self._rows(step, ground_units):
+                if column in self.methods[step, name].needs:
+                    read |= rows
+        return read
 
     def needs_residual(self, ground_units: Array) -> Array:
         """(i,) whether the law of the ground of these units needs residual strength."""

@@ -192,10 +192,10 @@ class TestWhatAMethodRequires:
 
 
 class TestIdleValues:
-    def test_a_value_that_no_chosen_method_reads_is_noted_with_its_units(self, tmp_path: Path):
+    def test_a_value_that_no_chosen_method_reads_is_noted(self, tmp_path: Path):
         project = read(tmp_path, units(rmr89=("60", "", "20")))
         assert (
-            "rmr89 is given for gouge, sandstone, but no method that the project chose reads it"
+            "given, but no method that the project chose reads it: rmr89"
             in project.warnings
         )
 
@@ -204,7 +204,7 @@ class TestIdleValues:
         project = read(tmp_path, chosen, units(residual_gsi=("30", "", "8")))
         notes = [text for text in project.warnings if text.startswith("residual_gsi")]
         assert notes == [
-            "residual_gsi is given for sandstone, but no method that the project chose reads it"
+            "residual_gsi is given for sandstone, where no chosen method reads it"
         ]
 
     def test_a_thickness_that_no_law_knows_is_noted(self, tmp_path: Path):
