@@ -9,6 +9,8 @@ from unit.plugin.strangers import own_points
 
 from tunnelcalc.plugin.isolation import contained_spring
 from tunnelcalc.plugin.registry import load_plugins
+from tunnelcalc.sections import Sections
+from tunnelcalc.vocabulary import GROUND
 
 REGISTRY = load_plugins(own_points())
 CHECKS = [offer.thing for offer in REGISTRY.of_sort("support_check")]
@@ -34,6 +36,43 @@ def given(element, element_pressure_mpa=0.1):
     bare = sections_for_checks(element_pressure_mpa, 1.0)
     capacity = contained_spring(kind, bare, element).values[1]
     return bare.with_columns({"element_capacity_mpa": capacity})
+
+
+CLASS_CHECKS = [offer.thing for offer in REGISTRY.of_sort("class_check")]
+GIVEN_TO_CLASS_CHECKS = {
+    "radius_m": 4.0,
+    "unit_weight_kn_m3": 25.0,
+    "support_pressure_mpa": 0.2,
+    "supported_closure_mm": 10.0,
+    "supported_plastic_radius_m": 6.0,
+    "class_capacity_mpa": 1.2,
+    "ring_capacity_mpa": 0.9,
+    "lining_water_mpa": 0.3,
+}
+
+
+@pytest.mark.parametrize("check", CLASS_CHECKS, ids=lambda check: check.name)
+class TestHowACheckOfAClassEvaluates:
+    def test_it_says_what_it_compares_and_what_it_cannot_do_without(self, check):
+        assert check.name.isidentifier()
+        assert all((check.meaning, check.unit))
+        assert isinstance(check.carries_load, bool)
+        assert isinstance(check.by_choice, bool)
+        assert set(check.requires) <= set(GROUND)
+
+    def test_demand_and_capacity_are_one_number_a_section_from_what_it_is_promised(self, check):
+        growing = np.linspace(1.0, 1.4, 5)
+        columns = {name: value * growing for name, value in GIVEN_TO_CLASS_CHECKS.items()}
+        whole = Sections(columns)
+        before = bytes_of(whole)
+        evaluation = check.evaluate(whole)
+        singly = [check.evaluate(whole.take(slice(i, i + 1))) for i in range(5)]
+        for name in ("demand", "capacity"):
+            array = getattr(evaluation, name)
+            assert array.shape == (5,)
+            assert np.all(array > 0)
+            assert array.tobytes() == b"".join(getattr(one, name).tobytes() for one in singly)
+        assert bytes_of(whole) == before
 
 
 @pytest.mark.parametrize("check", CHECKS, ids=lambda check: check.name)

@@ -65,6 +65,10 @@ class TestWhatAKindSays:
         assert len(set(names)) == len(names)
         assert not {"kind", "installed_at_m"} & set(names)
 
+    @pytest.mark.parametrize("kind", KINDS, ids=lambda kind: kind.name)
+    def test_it_says_whether_water_presses_on_it(self, kind):
+        assert kind.is_ring is (kind.name in ("shotcrete", "steel_sets"))
+
     @pytest.mark.parametrize(("kind", "parameter"), PARAMETERS)
     def test_a_parameter_is_a_choice_or_a_number_with_unit_and_range(self, kind, parameter):
         assert parameter.meaning

@@ -49,7 +49,8 @@ def test_plugins_lists_what_each_plugin_offers_with_units_and_ranges(project: Pa
         f"  hoek_diederichs_2006  from methods (tunnelcalc {version})",
         f"  csv  from csv_reader (tunnelcalc {version})",
         "      files ending in .csv, .tsv, .txt",
-        "      cover under 10 R (common practice, no source)",
+        "      cover_m over radius_m: advisory below 10; outside below 4 (common practice, no "
+        "source)",
     ):
         assert f"\n{line}\n" in text
 

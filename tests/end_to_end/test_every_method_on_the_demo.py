@@ -19,8 +19,8 @@ GOOD_UNITS = ("massive granite", "blocky granite", "banded gneiss", "amphibolite
 POOR_UNITS = ("mica schist", "phyllite", "sheared phyllite", "fault breccia")
 BY_UNIT = {
     # Each of the two relations holds for one half of the ratings.
-    "serafim_pereira_1983": {u: "bieniawski_1978" for u in GOOD_UNITS},
-    "bieniawski_1978": {u: "serafim_pereira_1983" for u in POOR_UNITS},
+    "serafim_pereira_1983": dict.fromkeys(GOOD_UNITS, "bieniawski_1978"),
+    "bieniawski_1978": dict.fromkeys(POOR_UNITS, "serafim_pereira_1983"),
 }
 FITTING = {"mohr_coulomb": "mohr_coulomb_perfectly_plastic"}
 """A strength that the default law cannot use, and a law that can."""

@@ -82,20 +82,20 @@ CASES: dict[str, Case] = {
         'project.yaml:10:3: key "methods.deformation_modulus" holds "hoek_diedrichs_2006"',
         "  allowed: barton_2002 or bieniawski_1978 or hoek_2002 or hoek_diederichs_2006 or "
         "hoek_diederichs_2006_simplified or serafim_pereira_1983",
-        "  fix: did you mean hoek_diederichs_2006?",
+        "  fix: write hoek_diederichs_2006",
     ),
     "plugin-misspelt": (
         replaced("project.yaml", "support_classes:\n", "plugins: [shotcret]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "shotcret", a plugin that is not there',
-        "  allowed: ags_reader, csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
-        "steel_sets, validity_flags, xlsx_reader",
+        "  allowed: ags_reader, class_checks, csv_reader, methods, report, rock_bolts, "
+        "schedule_tables, shotcrete, steel_sets, validity_flags, verification_checks, xlsx_reader",
         '  fix: did you mean "shotcrete"?',
     ),
     "plugin-unknown": (
         replaced("project.yaml", "support_classes:\n", "plugins: [ice_lenses]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "ice_lenses", a plugin that is not there',
-        "  allowed: ags_reader, csv_reader, methods, rock_bolts, schedule_tables, shotcrete, "
-        "steel_sets, validity_flags, xlsx_reader",
+        "  allowed: ags_reader, class_checks, csv_reader, methods, report, rock_bolts, "
+        "schedule_tables, shotcrete, steel_sets, validity_flags, verification_checks, xlsx_reader",
         "  fix: install it, or remove the entry",
     ),
     "class-key-missing": (

@@ -19,6 +19,8 @@ from tunnelcalc.text import few, quoted, suggestion
 from tunnelcalc.vocabulary import Limits
 
 BY_UNIT = "by_unit"
+RING = {"ring_mb", "ring_s", "ring_a"}
+"""What a law of the ground needs that computes a disturbed ring."""
 MEASURED_MODULUS = "rock_mass_modulus_mpa"
 READ_BY_CHOICE = (
     "mb",
@@ -94,16 +96,14 @@ class ChosenMethods:
             for u in reversed(known)
         }
         for (strength, reaction), unit in pairs.items():
-            needs = set(self.methods["ground_reaction", reaction].needs) & set(STRENGTH_COLUMNS)
-            lacking = sorted(needs - set(self._strength(strength).gives))
+            law, given = self.methods["ground_reaction", reaction], self._strength(strength)
+            lacking = sorted(set(law.needs) & set(STRENGTH_COLUMNS) - set(given.gives))
             if lacking:
-                self.reader.problems.add(
-                    self.reader.place("methods"),
-                    f'is "{reaction}", which needs {", ".join(lacking)}; the strength "{strength}" '
-                    f"does not give it (ground unit {quoted(unit)})",
-                    name="the ground_reaction method",
-                    fix="choose a law of the ground that fits the strength, by ground unit if need "
-                    "be",
+                self._tell_misfit(reaction, strength, unit, f"needs {', '.join(lacking)}")
+            elif RING.issubset(law.needs) and "mass_disturbance" not in given.needs:
+                # Its ring would be as strong as the mass, whatever thickness is stated.
+                self._tell_misfit(
+                    reaction, strength, unit, "needs strength weakened by disturbance"
                 )
 
     def idle_values(self, numbers: Mapping[str, Array], ground_units: Array) -> Iterator[str]:
@@ -151,6 +151,15 @@ class ChosenMethods:
         numbers = self.numbers(step, ground_units)
         for number, name in enumerate(choice.names):
             yield name, numbers == number
+
+    def _tell_misfit(self, reaction: str, strength: str, unit: str, what: str) -> None:
+        self.reader.problems.add(
+            self.reader.place("methods"),
+            f'is "{reaction}", which {what}; the strength "{strength}" does not give it '
+            f"(ground unit {quoted(unit)})",
+            name="the ground_reaction method",
+            fix="choose a law of the ground that fits the strength, by ground unit if need be",
+        )
 
     def _tell_unknown_unit(self, step: str, unit: str, known: Sequence[str]) -> None:
         hint = suggestion(unit, known)

@@ -44,6 +44,7 @@ def write_manifest(
         "exit_code": exit_code,
         "options": dict(options),
         "methods": dict(result.methods),
+        "drainage": project.drainage or "not stated",
         "criteria": asdict(project.criteria),
         "schedule": asdict(project.schedule),
         "counts": {

@@ -185,7 +185,8 @@ def write_sections(
 ) -> None:
     """Write `sections.csv`."""
     ends = (CHAINAGE, "from_m", "to_m")
-    ground = [name for name in project.ground_columns if name not in SECTION_COLUMNS]
+    computed = {*SECTION_COLUMNS, *OPTIONAL_COLUMNS}
+    ground = [name for name in project.ground_columns if name not in computed]
     names = [*ends, *_profile_columns(sections), *ground, *_section_columns(sections)]
     written = {} if project.notation.is_plain else WRITTEN_ENDS
     header = (*names[:3], *written, *names[3:], "required_class", "scheduled_class", "flags")

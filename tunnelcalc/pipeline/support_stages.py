@@ -60,23 +60,28 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
         larger = larger_stress(steps.ground_reaction, sections)
         rows: list[ClassRow] = []
         checks: list[CheckRow] = []
+        failed: list[Array] = []
         cases: list[Array] = []
         for planned in plan:
             found = evaluate_class(planned, curve, steps.closure_profile, sections, criteria)
             row, of_class, case = found.row, found.checks, np.full(sections.count, MEAN)
+            fails = [check.outcome == Outcome.FAIL for check in of_class]
             if larger.positions.size:
                 other = evaluate_class(
                     planned, larger.curve, steps.closure_profile, larger.sections, criteria
                 )
                 row, of_class, case = _heavier(found, other, larger.positions)
+                for own, check in zip(fails, other.checks, strict=True):
+                    own[larger.positions] |= check.outcome == Outcome.FAIL
             rows.append(row)
             checks.extend(of_class)
+            failed.extend(fails)
             cases.append(case)
         return {
             **_side_by_side(CLASS_COLUMNS, rows, sections.count),
             **_side_by_side(CHECK_COLUMNS, checks, sections.count),
             **_side_by_side((STRESS_CASE,), [(case,) for case in cases], sections.count),
-            **_failing(lines, checks, sections.count),
+            **_failing(lines, failed, sections.count),
             "dead_weight_not_required": np.full(
                 sections.count, "crown_dead_weight" not in criteria.chosen_checks
             ),
@@ -140,13 +145,12 @@ def _replaced(values: Array, others: Array, positions: Array, taken: Array) -> A
     return mended
 
 
-def _failing(
-    lines: Sequence[CheckLine], checks: Sequence[CheckRow], count: int
-) -> dict[str, Array]:
+def _failing(lines: Sequence[CheckLine], failed: Sequence[Array], count: int) -> dict[str, Array]:
+    """By name of the check, whether it fails in some class and some stress case."""
     found: dict[str, Array] = {}
-    for line, row in zip(lines, checks, strict=True):
+    for line, fails in zip(lines, failed, strict=True):
         name = failing_column(line.check)
-        found[name] = found.get(name, np.zeros(count, dtype=bool)) | (row.outcome == Outcome.FAIL)
+        found[name] = found.get(name, np.zeros(count, dtype=bool)) | fails
     return found
 
 

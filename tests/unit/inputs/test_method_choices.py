@@ -92,6 +92,17 @@ class TestWhatMayBeChosen:
         first, *_ = told(tmp_path, wrong)
         assert "needs residual_cohesion_mpa, residual_friction_angle_deg" in first
 
+    def test_a_disturbed_ring_needs_a_strength_that_disturbance_weakens(self, tmp_path: Path):
+        wrong = of_gouge(
+            strength="hoek_brown_constants", ground_reaction="hoek_brown_disturbed_ring"
+        )
+        constants = {"mb": ("", "", "1.5"), "s": ("", "", "0.002"), "a": ("", "", "0.5")}
+        assert told(tmp_path, wrong, units(**constants, **MODULUS)) == [
+            'project.yaml:9:1: the ground_reaction method is "hoek_brown_disturbed_ring", which '
+            'needs strength weakened by disturbance; the strength "hoek_brown_constants" does not '
+            'give it (ground unit "gouge")'
+        ]
+
     def test_the_straight_line_law_takes_the_equivalent_line_of_the_curved_one(self, tmp_path):
         read(tmp_path, of_gouge(ground_reaction="mohr_coulomb_perfectly_plastic"))
 
@@ -194,18 +205,13 @@ class TestWhatAMethodRequires:
 class TestIdleValues:
     def test_a_value_that_no_chosen_method_reads_is_noted(self, tmp_path: Path):
         project = read(tmp_path, units(rmr89=("60", "", "20")))
-        assert (
-            "given, but no method that the project chose reads it: rmr89"
-            in project.warnings
-        )
+        assert "given, but no method that the project chose reads it: rmr89" in project.warnings
 
     def test_residual_strength_without_a_law_that_needs_it_is_noted(self, tmp_path: Path):
         chosen = of_gouge(ground_reaction="hoek_brown_brittle")
         project = read(tmp_path, chosen, units(residual_gsi=("30", "", "8")))
         notes = [text for text in project.warnings if text.startswith("residual_gsi")]
-        assert notes == [
-            "residual_gsi is given for sandstone, where no chosen method reads it"
-        ]
+        assert notes == ["residual_gsi is given for sandstone, where no chosen method reads it"]
 
     def test_a_thickness_that_no_law_knows_is_noted(self, tmp_path: Path):
         thickness = {"disturbed_thickness_m": ("1.5", "", "")}
@@ -215,7 +221,9 @@ class TestIdleValues:
 
     def test_what_is_read_is_not_noted(self, tmp_path: Path):
         project = read(tmp_path, STRAIGHT, units(**LINE, **MODULUS))
-        assert not any("no method that the project chose" in text for text in project.warnings)
+        assert not any(
+            text.endswith("reads it") or "reads it: " in text for text in project.warnings
+        )
 
 
 class TestResidualStrength:

@@ -17,6 +17,7 @@ from tunnelcalc.plugin.hooks import ENTRY_POINT_GROUP
 
 KINDS = "tunnelcalc_register_support_kinds"
 CHECKS = "tunnelcalc_register_support_checks"
+CLASS_CHECKS = "tunnelcalc_register_class_checks"
 FLAGS = "tunnelcalc_register_validity_flags"
 READERS = "tunnelcalc_register_ground_readers"
 WRITERS = "tunnelcalc_register_report_writers"
@@ -143,6 +144,34 @@ class Check:
         return True
 
     def evaluate(self, sections: api.Sections, element: api.Element) -> api.Evaluation:
+        return self._evaluate(sections)
+
+
+class ClassCheck:
+    """A check of a class as a whole; `evaluate(sections)` gives its evaluation."""
+
+    meaning = "invented"
+    unit = "MPa"
+    requires: Mapping[str, api.Limits] = {}
+
+    def __init__(
+        self,
+        name: str = "whole",
+        evaluate: Any = None,
+        carries_load: bool = True,
+        by_choice: bool = False,
+    ) -> None:
+        self.name = name
+        self.carries_load = carries_load
+        self.by_choice = by_choice
+        self._evaluate = evaluate or (
+            lambda sections: api.Evaluation(np.ones(sections.count), np.full(sections.count, 2.0))
+        )
+
+    def concerns(self, project: api.Project) -> bool:
+        return True
+
+    def evaluate(self, sections: api.Sections) -> api.Evaluation:
         return self._evaluate(sections)
 
 

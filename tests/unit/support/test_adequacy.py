@@ -62,8 +62,8 @@ def judged(checks, closure=1.0, limit=1.0):
     )
 
 
-def load(factor, outcome=PASS):
-    return (factor, outcome, True, True)
+def load(factor, outcome=PASS, *, counts=True):
+    return (factor, outcome, True, counts)
 
 
 def rule(outcome, *, counts=True):
@@ -85,6 +85,17 @@ CLASSES = [
     pytest.param(
         [load(2.0), rule(UNKNOWN, counts=False)], True, 2.0, 0, id="rule-left-out-does-not-count"
     ),
+    pytest.param(
+        [load(2.0), load(1.2, FAIL, counts=False)],
+        True,
+        2.0,
+        0,
+        id="load-that-does-not-count-has-no-part-in-the-factor",
+    ),
+    pytest.param(
+        [load(NAN, UNKNOWN, counts=False), load(2.0)], True, 2.0, 1, id="unknown-load-left-out"
+    ),
+    pytest.param([load(1.2, FAIL, counts=False)], True, NAN, 1, id="only-what-does-not-count"),
     pytest.param(
         [rule(UNKNOWN), rule(FAIL)], False, NAN, 0, id="unknown-before-failed-if-it-comes-first"
     ),
