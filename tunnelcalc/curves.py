@@ -53,7 +53,7 @@ def show_section(
     project = read_project(path, registry)
     curves = curves_at(project, registry, at, class_name)
     place = _own_place(project_folder(path), curves, class_name) if out is None else out
-    target = Target(project_folder(path), place)
+    target = Target(project_folder(path), place, by_option=out is not None)
     figures = registry.section_figures(project.plugins)
     missing = list(curves.unknown)
     with part_folder(target) as part:

@@ -150,7 +150,7 @@ def _of_ground() -> tuple[Quantity, ...]:
             "",
             "m",
             "thickness of the ring around the opening to which the disturbance is confined",
-            Limits(0, 100),
+            Limits(0, 100, above=True),
         ),
         Quantity("rmr89", "RMR89", "", "rock mass rating, actual water", rating),
         Quantity("rmr89_dry", "RMR89'", "", "rock mass rating, dry", rating),

@@ -16,6 +16,11 @@ from tunnelcalc_report.page import megapascals, millimetres, number, per_cent
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
+TITLE = "Closure along the drive"
+WHY_NOT = (
+    "The closure without support cannot be computed. So there is no closure along the drive to "
+    "draw, and none at which support is installed."
+)
 LEAST_RADII, MOST_RADII = 8.0, 30.0
 AHEAD_RADII = 2.5
 AHEAD_SHARE = 0.16
@@ -30,10 +35,11 @@ class ClosureProfileFigure:
     name = "closure_profile"
 
     def draw(self, curves: api.SectionCurves, folder: Path) -> Iterable[str]:
-        if not np.any(np.isfinite(curves.governing.profile.closure_mm)):
-            return ()
         with page.drawing():
-            return _drawn(curves, folder)
+            if np.any(np.isfinite(curves.governing.profile.closure_mm)):
+                return _drawn(curves, folder)
+            facts = (f"radius R {number(curves.radius_m)} m", curves.methods["closure_profile"])
+            return page.instead(TITLE, curves, facts, WHY_NOT, folder, self.name)
 
 
 def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
@@ -44,7 +50,7 @@ def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
         f"closure far behind the face {millimetres(case.ground.free_closure_mm)}",
         curves.methods["closure_profile"],
     )
-    figure = page.sheet("Closure along the drive", curves, facts)
+    figure = page.sheet(TITLE, curves, facts)
     handles = _handles(curves)
     bottom, legend_top = page.bottom_above_legend(len(handles))
     axes = figure.add_axes((page.LEFT, bottom, 0.94 - page.LEFT, page.TOP - bottom))

@@ -33,6 +33,7 @@ from tunnelcalc_report.views import (
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
+TITLE = "Ground and support"
 CLOSURE = "closure of the wall u [mm]"
 ABSURD_M = 1e5
 PRESSURE = "support pressure p [MPa]"
@@ -44,23 +45,42 @@ class GroundReactionFigure:
     name = "ground_reaction"
 
     def draw(self, curves: api.SectionCurves, folder: Path) -> Iterable[str]:
-        if not any(np.any(np.isfinite(case.ground.closure_mm)) for case in curves.cases):
-            return ()
         with page.drawing():
-            return _drawn(curves, folder)
+            if any(_is_curve(case.ground) for case in curves.cases):
+                return _drawn(curves, folder)
+            what, facts, name = TITLE, _facts(curves), self.name
+            return page.instead(what, curves, facts, _why_not(curves), folder, name)
 
 
-def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
-    facts = (
+def _is_curve(ground: api.ReactionOfGround) -> bool:
+    """Whether there is more than the one point without closure, at the in-situ stress."""
+    return int(np.count_nonzero(np.isfinite(ground.closure_mm))) > 1
+
+
+def _why_not(curves: api.SectionCurves) -> str:
+    told = " and ".join(megapascals(case.ground.in_situ_stress_mpa) for case in curves.cases)
+    return (
+        f"No closure of the wall can be computed under any support pressure below the in-situ "
+        f"stress of {told}. So there is no ground reaction to draw, and no equilibrium of ground "
+        "and support."
+    )
+
+
+def _facts(curves: api.SectionCurves) -> tuple[str, ...]:
+    return (
         f"class {curves.support_class}",
         f"radius R {number(curves.radius_m)} m",
         curves.methods["ground_reaction"],
         f"deformation modulus by {curves.methods['deformation_modulus']}",
     )
-    figure = page.sheet("Ground and support", curves, facts)
+
+
+def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
+    figure = page.sheet(TITLE, curves, _facts(curves))
     view, all_of_it = enlarged(curves), whole(curves)
     handles = _handles(curves)
-    bottom, legend_top = page.bottom_above_legend(len(handles))
+    notes = [*_notes(curves, view, all_of_it), *_notes_on_plastic_radius(curves)]
+    bottom, legend_top = page.bottom_above_legend(len(handles), notes)
     grid = figure.add_gridspec(
         2,
         2,
@@ -75,7 +95,7 @@ def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
     main, top, low = (figure.add_subplot(cell) for cell in (grid[:, 0], grid[0, 1], grid[1, 1]))
     _ground_and_support(main, curves, view)
     _whole_curve(top, curves, all_of_it, view)
-    notes = [*_notes(curves, view, all_of_it), *_plastic_radius(low, curves)]
+    _plastic_radius(low, curves)
     page.legend(figure, handles, legend_top)
     page.note(figure, notes)
     return page.saved(figure, folder, "ground_reaction")
@@ -157,23 +177,36 @@ def _whole_curve(axes: Axes, curves: api.SectionCurves, view: View, within: View
     page.label_axes(axes, CLOSURE, PRESSURE, title)
 
 
-def _plastic_radius(axes: Axes, curves: api.SectionCurves) -> list[str]:
-    """Draw it against the pressure; returns what must be said of it."""
-    radius, largest, top = curves.radius_m, curves.radius_m, 0.0
+def _plastic_radius(axes: Axes, curves: api.SectionCurves) -> None:
+    """Draw it against the pressure."""
+    radius, top = curves.radius_m, 0.0
     for case, line in _cases(curves):
         ground = case.ground
         axes.plot(ground.plastic_radius_m, ground.support_pressure_mpa, **line.looks())
-        largest = max(largest, *ground.plastic_radius_m[np.isfinite(ground.plastic_radius_m)])
         top = max(top, ground.in_situ_stress_mpa)
         filled = case is curves.governing
         at_rest = case.support.rest_plastic_radius_m, case.support.rest_pressure_mpa
         axes.plot(*([value] for value in at_rest), **_rest(filled), zorder=5)
-    right = min(largest, MOST_PLASTIC * radius)
+    right = min(_largest_plastic_m(curves), MOST_PLASTIC * radius)
     axes.set_xlim(0.95 * radius, radius + 1.08 * max(right - radius, 0.25 * radius))
     _set_pressures(axes, 1.04 * top)
     title = f"plastic radius (wall: {number(radius)} m)"
     page.label_axes(axes, "plastic radius Rp [m]", PRESSURE, title)
-    if largest > right:
+
+
+def _largest_plastic_m(curves: api.SectionCurves) -> float:
+    largest = curves.radius_m
+    for case in curves.cases:
+        plastic = case.ground.plastic_radius_m
+        largest = max(largest, *plastic[np.isfinite(plastic)].tolist())
+    return largest
+
+
+def _notes_on_plastic_radius(curves: api.SectionCurves) -> list[str]:
+    largest = _largest_plastic_m(curves)
+    if any(np.any(np.isinf(case.ground.plastic_radius_m)) for case in curves.cases):
+        return ["without support the plastic zone has no end"]
+    if largest > MOST_PLASTIC * curves.radius_m:
         told = f"{number(largest)} m" if largest < ABSURD_M else "more than 100 km"
         return [f"the plastic radius without support, {told}, is beyond its axis"]
     return []
@@ -188,12 +221,9 @@ def _notes(curves: api.SectionCurves, view: View, all_of_it: View) -> list[str]:
     elif max(free) > all_of_it.right:
         told = " and ".join(f"{millimetres(value)}" for value in free)
         notes.append(f"closure without support, {told}, is beyond the axis")
-    if not curves.closure_limit_mm <= view.right:
-        notes.append("the closure limit is beyond the axis at left")
     if view.left > 0:
         notes.append(f"the closure axis at left begins at {millimetres(view.left)}")
-    if capacity_pressure_mpa(support) > view.top:
-        notes.append("capacities are beyond the axis at left")
+    notes += _beyond_the_axes(curves, view)
     if len(curves.cases) > 1 and support.elements:
         notes.append(f"lines of elements are those of the {curves.governing_case} stress")
     water = sum(element.water_mpa for element in support.elements)
@@ -206,6 +236,39 @@ def _notes(curves: api.SectionCurves, view: View, all_of_it: View) -> list[str]:
     ]
     if support.rest_closure_mm != support.rest_closure_mm:
         notes.append("no equilibrium can be computed")
+    return notes
+
+
+def _beyond_the_axes(curves: api.SectionCurves, view: View) -> list[str]:
+    """By name, all that has a line or a mark, and not its place, in the enlarged drawing."""
+    support, limit = curves.governing.support, curves.closure_limit_mm
+    notes = []
+    if limit > view.right:
+        notes.append("the closure limit is beyond the axis at left")
+    elif limit < view.left:
+        notes.append("the closure limit lies before the axis at left")
+    late = [e.label for e in support.elements if e.installation_closure_mm > view.right]
+    if late:
+        notes.append(f"installed beyond the closure axis at left: {', '.join(late)}")
+    strong = [
+        element.label
+        for element in support.elements
+        if element.label not in late
+        and (element.capacity_mpa > view.top or element.capacity_closure_mm > view.right)
+    ]
+    if len(support.elements) > 1 and (
+        capacity_pressure_mpa(support) > view.top or support.first_capacity_closure_mm > view.right
+    ):
+        strong.append("all elements together")
+    if strong:
+        notes.append(f"capacity beyond the axes at left: {', '.join(strong)}")
+    others = [case for case in curves.cases if case is not curves.governing]
+    for case in others:
+        rest = case.support.rest_closure_mm, case.support.rest_pressure_mpa
+        if rest[0] < view.left or rest[0] > view.right or rest[1] > view.top:
+            notes.append(
+                f"the equilibrium of the {case.stress_case} stress is off the axes at left"
+            )
     return notes
 
 

@@ -27,6 +27,11 @@ LONGEST_PROJECT = 130
 LONGEST_FACTS = 150
 LONGEST_LABEL = 78
 LONGEST_NOTE = 170
+NOTE_LINES = 2
+"""Lines of a note for which every sheet has room."""
+NOTE_LINE = 0.0175
+"""Height of a further one, of the sheet's."""
+LONGEST_SENTENCE = 78
 
 STYLE: dict[str, Any] = {
     "font.family": ["DejaVu Sans"],
@@ -93,9 +98,33 @@ def sheet(what: str, curves: api.SectionCurves, facts: Sequence[str]) -> Figure:
 
 def note(figure: Figure, notes: Sequence[str]) -> None:
     """What a reader must know to read the figure, above the caution."""
-    text = "\n".join(textwrap.wrap("Note: " + "; ".join(notes) + ".", LONGEST_NOTE)[:2])
     if notes:
-        figure.text(LEFT, 0.055, text, fontsize=7.5, va="center")
+        middle = 0.055 + 0.5 * _room_for(notes)
+        figure.text(LEFT, middle, "\n".join(_note_lines(notes)), fontsize=7.5, va="center")
+
+
+def _note_lines(notes: Sequence[str]) -> list[str]:
+    return textwrap.wrap("Note: " + "; ".join(notes) + ".", LONGEST_NOTE) if notes else []
+
+
+def _room_for(notes: Sequence[str]) -> float:
+    """Height that a note needs beyond its usual lines: nothing of it is cut off."""
+    return NOTE_LINE * max(len(_note_lines(notes)) - NOTE_LINES, 0)
+
+
+def instead(
+    what: str,
+    curves: api.SectionCurves,
+    facts: Sequence[str],
+    sentence: str,
+    folder: Path,
+    name: str,
+) -> tuple[str, ...]:
+    """A sheet that says in words why there is nothing to draw."""
+    figure = sheet(what, curves, facts)
+    text = "\n".join(textwrap.wrap(sentence, LONGEST_SENTENCE))
+    figure.text(0.5, 0.5, text, fontsize=12, ha="center", va="center", linespacing=1.6)
+    return saved(figure, folder, name)
 
 
 def shortened(text: str, longest: int) -> str:
@@ -158,9 +187,10 @@ def legend(figure: Figure, handles: Sequence[Any], top: float) -> None:
     )
 
 
-def bottom_above_legend(entries: int) -> tuple[float, float]:
-    """Where drawings end, and where the legend of so many entries begins below them."""
-    top = FOOT + 0.012 + LEGEND_ROW * legend_rows(entries)
+def bottom_above_legend(entries: int, notes: Sequence[str] = ()) -> tuple[float, float]:
+    """Where drawings end, and where the legend of so many entries begins below them and above
+    the note."""
+    top = FOOT + 0.012 + _room_for(notes) + LEGEND_ROW * legend_rows(entries)
     return top + 0.085, top
 
 

@@ -28,6 +28,10 @@ NAMES = {
     "residual": "residual strength",
     "ring": "strength of the disturbed ring",
 }
+UNKNOWN = (
+    "Neither the constants of a curved criterion nor cohesion and friction angle are known here. "
+    "So there is no strength to draw."
+)
 
 
 class StrengthEnvelopeFigure:
@@ -52,10 +56,13 @@ def _draw(
     curves: api.SectionCurves, folder: Path, name: str, what: str, drawing: Any
 ) -> tuple[str, ...]:
     shown = [e for e in curves.envelopes if np.any(np.isfinite(e.major_stress_mpa))]
-    if not shown:
-        return ()
+    method = curves.methods["strength"]
     with page.drawing():
-        facts = (curves.methods["strength"], *_facts(shown[0]))
+        if not shown:
+            return page.instead(what, curves, (method,), UNKNOWN, folder, name)
+        facts = (method, *_facts(shown[0]))
+        if drawing is _shear and not any(_resists_shear(envelope) for envelope in shown):
+            return page.instead(what, curves, facts, _without_shear(shown[0]), folder, name)
         figure = page.sheet(what, curves, facts)
         handles = _handles(shown, with_circles=drawing is _shear)
         bottom, legend_top = page.bottom_above_legend(len(handles))
@@ -66,6 +73,15 @@ def _draw(
         return page.saved(figure, folder, name)
 
 
+def _resists_shear(envelope: api.StrengthEnvelope) -> bool:
+    return bool(np.any(envelope.shear_stress_mpa > 0))
+
+
+def _without_shear(envelope: api.StrengthEnvelope) -> str:
+    line = "" if envelope.curved else f", with {_line(envelope)}"
+    return f"The ground has no shear strength at any stress{line}. So there is nothing to draw."
+
+
 def _facts(envelope: api.StrengthEnvelope) -> tuple[str, ...]:
     top = f"confinement range to s3max {number(envelope.confinement_mpa)} MPa"
     return (top,) if envelope.curved else (f"shown to the in-situ stress {top.split()[-2]} MPa",)
@@ -73,7 +89,8 @@ def _facts(envelope: api.StrengthEnvelope) -> tuple[str, ...]:
 
 def _notes(envelope: api.StrengthEnvelope) -> list[str]:
     if not envelope.curved:
-        return ["the criterion is a straight line and knows no tensile strength"]
+        notes = ["the criterion is a straight line and knows no tensile strength"]
+        return notes if _resists_shear(envelope) else [*notes, "the ground has no shear strength"]
     difference = envelope.line_major_stress_mpa - envelope.major_stress_mpa
     notes = []
     for index, marks in envelope.marks.items():

@@ -8,6 +8,7 @@ from tunnelcalc import api
 from tunnelcalc_rock_bolts.checks import LengthBeyondPlasticZone, Tension
 from tunnelcalc_rock_bolts.kind import RockBolts
 from tunnelcalc_rock_bolts.pattern import PATTERN_RULES
+from tunnelcalc_rock_bolts.verification import BOLT_CHECKS
 
 
 @api.hookimpl
@@ -21,3 +22,11 @@ def tunnelcalc_register_support_checks(register: Callable[[api.SupportCheck], No
     register(LengthBeyondPlasticZone())
     for rule in PATTERN_RULES:
         register(rule)
+
+
+@api.hookimpl
+def tunnelcalc_register_verification_checks(
+    register: Callable[[api.VerificationCheck], None],
+) -> None:
+    for check in BOLT_CHECKS:
+        register(check)

@@ -17,6 +17,7 @@ from tunnelcalc_shotcrete.formulas import (
     ring_volume_m3_per_m,
 )
 from tunnelcalc_shotcrete.lines import reaction_lines, stress_lines
+from tunnelcalc_shotcrete.verification import RING_CHECKS
 
 
 class Shotcrete:
@@ -98,3 +99,11 @@ def tunnelcalc_register_support_kinds(register: Callable[[api.SupportKind], None
 @api.hookimpl
 def tunnelcalc_register_support_checks(register: Callable[[api.SupportCheck], None]) -> None:
     register(HoopStress())
+
+
+@api.hookimpl
+def tunnelcalc_register_verification_checks(
+    register: Callable[[api.VerificationCheck], None],
+) -> None:
+    for check in RING_CHECKS:
+        register(check)

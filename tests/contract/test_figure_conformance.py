@@ -46,7 +46,7 @@ def test_a_figure_writes_the_files_that_it_names_and_the_same_bytes_twice(figure
 
 
 @pytest.mark.parametrize("figure", FIGURES)
-def test_a_figure_of_nothing_is_not_drawn(figure, curves, tmp_path):
+def test_a_figure_of_nothing_is_not_drawn_or_says_so(figure, curves, tmp_path):
     nothing = []
     for case in curves.cases:
         ground, profile = (
@@ -55,8 +55,13 @@ def test_a_figure_of_nothing_is_not_drawn(figure, curves, tmp_path):
         )
         nothing.append(dataclasses.replace(case, ground=ground, profile=profile))
     empty = dataclasses.replace(curves, cases=tuple(nothing), envelopes=())
-    assert tuple(figure.draw(empty, tmp_path)) == ()
-    assert list(tmp_path.iterdir()) == []
+    names = tuple(figure.draw(empty, tmp_path))
+    assert sorted(path.name for path in tmp_path.iterdir()) == sorted(names)
+    for name in names:
+        if name.endswith("svg"):
+            text = (tmp_path / name).read_text(encoding="utf-8")
+            assert "So there is " in " ".join(text.split())
+            assert "unknown" not in text
 
 
 @pytest.mark.parametrize("figure", FIGURES)

@@ -22,6 +22,7 @@ from tunnelcalc.validity import Level
 from tunnelcalc.vocabulary import GROUND, Sort
 
 REGISTRY = load_plugins(own_points())
+RING_LAW = "hoek_brown_disturbed_ring"
 COUNT = 20
 STEPS = ("strength", "deformation_modulus", "ground_reaction", "closure_profile")
 
@@ -92,7 +93,8 @@ def ground(stressed):
         if name.endswith(("_deg", "_mpa")) and name in sections
     }
     sections = strength_stage(strength)(sections).with_columns(line)
-    return disturbed_ring_stage(strength, modulus)(sections)
+    law = Chosen("ground_reaction", (REGISTRY.method("ground_reaction", RING_LAW),))
+    return disturbed_ring_stage(strength, modulus, law)(sections)
 
 
 @pytest.mark.parametrize("method", METHODS)

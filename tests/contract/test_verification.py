@@ -7,6 +7,7 @@ import math
 import pytest
 from unit.plugin.strangers import own_points
 
+from tunnelcalc.inputs.estimates import ESTIMATORS
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.verification import Standing, VerificationCheck, verified
 
@@ -19,6 +20,27 @@ METHODS = [pytest.param(step, name, id=name) for step in STEPS for name in REGIS
 @pytest.mark.parametrize(("step", "name"), METHODS)
 def test_every_method_has_a_check(step, name):
     assert any(check.method == name for check in CHECKS)
+
+
+@pytest.mark.parametrize(
+    "name",
+    [
+        *(estimator.name for estimator in ESTIMATORS),
+        *("vertical_stress", "effective_stress", "second_stress_case", "water_on_lining"),
+        *("shear_strength", "line_error", "crown_dead_weight"),
+        *REGISTRY.names("support_kind"),
+    ],
+)
+def test_estimators_stresses_lines_and_support_kinds_have_checks(name):
+    assert any(check.method == name for check in CHECKS)
+
+
+def test_the_order_of_convergence_of_softening_is_observed():
+    orders = [check for check in CHECKS if "order of convergence" in check.subject]
+    assert {check.method for check in orders} == {"hoek_brown_softening"}
+    assert {found.expected for found in verified(orders)} == {2.0}
+    # An observed number, not the expected one told again.
+    assert all(found.computed != 2.0 for found in verified(orders))
 
 
 @pytest.mark.parametrize("check", CHECKS, ids=lambda check: check.name)

@@ -236,6 +236,50 @@ def test_nothing_is_overwritten(project: Path):
     assert files_of(project) == before
 
 
+def test_a_second_time_the_folder_itself_is_named(project: Path):
+    assert show_section(project, without_figures(), "20").exit_code == 0
+    before = files_of(project)
+    ended = tunnelcalc("curves", ".", "--at", "20", folder=project)
+    (folder,) = (project / "curves").iterdir()
+    assert (ended.returncode, ended.stderr) == (
+        2,
+        f"{folder.resolve()}: the folder to write is not empty\n"
+        "  allowed: a folder that is absent or empty\n"
+        "  fix: remove it, or name another folder with --out\n1 problem found\n",
+    )
+    assert files_of(project) == before
+
+
+def test_ground_without_strength_has_figures_that_say_so(project: Path):
+    replaced("units.csv", "gouge,22,,3,8,12,0,0.3,,200", "gouge,22,1,3,8,12,0,0.3,0,200,0,0")(
+        project
+    )
+    replaced("units.csv", "modulus_ratio\n", "modulus_ratio,cohesion_mpa,friction_angle_deg\n")(
+        project
+    )
+    for name in ("275", "350"):
+        text = (project / "units.csv").read_text()
+        (project / "units.csv").write_text(text.replace(f"{name}\n", f"{name},,\n"))
+    with (project / "project.yaml").open("a") as stream:
+        stream.write(
+            "methods:\n  strength: {by_unit: {gouge: mohr_coulomb}}\n"
+            "  ground_reaction: {by_unit: {gouge: mohr_coulomb_perfectly_plastic}}\n"
+        )
+    shown = show_section(project, load_plugins(), "135")
+    assert [what for what, _ in shown.missing] == ["ground reaction"]
+    assert {name for name in shown.files if not name.endswith("csv")} == FIGURES
+    said = {
+        "ground_reaction": "No closure of the wall can be computed",
+        "closure_profile": "The closure without support cannot be computed",
+        "shear_strength": "The ground has no shear strength",
+        "strength_envelope": "the ground has no shear strength",
+    }
+    for name, sentence in said.items():
+        text = (shown.folder / f"{name}.svg").read_text(encoding="utf-8")
+        assert sentence in " ".join(text.split()), name
+        assert "unknown" not in text
+
+
 def test_without_a_closure_the_rest_is_written_and_the_reason_told(project: Path):
     replaced("ground.csv", "gouge,200", "gouge,9000")(project)
     replaced("units.csv", "gouge,22,,3,8,12,0", "gouge,22,,0.2,4,5,1")(project)

@@ -341,6 +341,27 @@ def test_a_run_that_was_tampered_with_ends_with_5(tamper, told, run, capsys):
     assert told in " ".join(capsys.readouterr().out.split())
 
 
+@pytest.mark.parametrize("missing", [False, True], ids=["changed", "missing"])
+def test_every_output_of_a_run_is_compared_with_its_hash(missing, run, capsys):
+    """Each file of the run alone; every one of them is put back as it was."""
+    manifest = json.loads((run / "run.json").read_text("utf-8"))
+    outputs = [entry["path"] for entry in manifest["outputs"]]
+    # Without an input there is nothing to compute: that is refused, see below.
+    outputs = [name for name in outputs if not (missing and name.startswith("inputs/"))]
+    assert {"schedule.csv", "quantities.csv", "ground_values.csv", "flags.csv"} <= set(outputs)
+    for name in outputs:
+        before = (run / name).read_bytes()
+        if missing:
+            (run / name).unlink()
+        else:
+            (run / name).write_bytes(before + b"\n")
+        assert main(["explain", str(run), "--at", "10"]) == 5, name
+        told = f"{name} is missing" if missing else f"{name} is not as it was when the run ended"
+        assert " ".join(capsys.readouterr().out.split()).count(told) == 1
+        (run / name).write_bytes(before)
+    assert main(["explain", str(run), "--at", "10"]) == 0
+
+
 def test_another_version_is_told(run, capsys):
     manifest = json.loads((run / "run.json").read_text("utf-8"))
     manifest["program"]["version"] = "0.0.9"
@@ -393,6 +414,14 @@ def test_what_is_no_complete_run_is_refused(spoil, told, run, capsys):
     spoil(run)
     assert main(["explain", str(run), "--at", "10"]) == 2
     assert told in capsys.readouterr().err
+
+
+def test_a_file_that_the_run_has_lost_is_told_with_the_runs_path(run, capsys):
+    (run / "inputs/units.csv").unlink()
+    assert main(["explain", str(run), "--at", "10"]) == 2
+    told = capsys.readouterr().err
+    assert told.startswith(f"{run / 'inputs' / 'project.yaml'}:")
+    assert 'names "units.csv", which cannot be read: there is no such file' in told
 
 
 def test_another_file_is_never_overwritten(whole, tmp_path, capsys):

@@ -199,8 +199,8 @@ def test_each_value_says_where_it_came_from(arrived: Path):
         (row["quantity"], row["from_m"]): (row["value"], row["origin"], row["method"])
         for row in rows(arrived / "ground_values.csv")
     }
-    assert found["cover_m", "0"] == ("", "levels", "")
-    assert found["water_head_m", "0"] == ("", "levels", "")
+    assert found["cover_m", "0"] == ("", "levels", "axis.csv, terrain.csv")
+    assert found["water_head_m", "0"] == ("", "levels", "axis.csv, water.csv")
     assert found["block_width_m", "45"] == ("0.4", "table", "")
     assert found["poisson_ratio", "45"] == ("0.28", "unit", "")
     assert found["unit_weight_kn_m3", "45"] == ("26", "unit", "cautious, half_deviation")

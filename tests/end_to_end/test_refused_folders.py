@@ -29,6 +29,22 @@ def test_a_folder_without_project_file_is_refused(project: Path):
     assert files_of(project) == before
 
 
+@pytest.mark.parametrize(
+    "command", [("validate",), ("run",), ("curves", "--at", "20"), ("stages",)]
+)
+def test_for_the_folder_of_a_run_its_inputs_are_named(project: Path, command: tuple[str, ...]):
+    finished = project / "finished"
+    finished.mkdir()
+    (finished / "run.json").write_text("{}")
+    ended = tunnelcalc(command[0], "finished", *command[1:], folder=project)
+    assert (ended.returncode, ended.stdout + ended.stderr) == (
+        2,
+        "finished: holds no file project.yaml: it is the folder of a run\n"
+        "  fix: name finished/inputs, the project as that run kept it; for a command that "
+        "writes, with --out outside of it\n1 problem found\n",
+    )
+
+
 def test_a_file_in_place_of_the_project_is_refused(project: Path):
     ended = run(project / "ground.csv")
     assert ended.returncode == 2

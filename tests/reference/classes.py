@@ -111,7 +111,8 @@ def _class_checks(
     gamma = number(row, "unit_weight_kn_m3")
     thickness = (rest.plastic_ratio - 1) * radius
     weight = math.nan if gamma is None else gamma * thickness / 1000
-    found = [Check("crown_dead_weight", "MPa", rest.pressure + weight, capacity["all"], True)]
+    load = rest.pressure + weight + (water or 0.0)
+    found = [Check("crown_dead_weight", "MPa", load, capacity["all"], True)]
     if water is not None:
         found.append(Check("water_on_lining", "MPa", water, capacity["rings"], True))
     return [("class", _unless_unknown(check, rest)) for check in found]

@@ -18,8 +18,9 @@ class CrownDeadWeight:
 
     name = "crown_dead_weight"
     meaning = (
-        "pressure at rest and the weight of the plastic zone over the crown against the capacity "
-        "of all elements: Hoek & Brown (1980), Underground Excavations in Rock"
+        "pressure at rest, the water on a watertight lining and the weight of the plastic zone over "
+        "the crown against the capacity of all elements: Hoek & Brown (1980), Underground "
+        "Excavations in Rock"
     )
     unit = "MPa"
     carries_load = True
@@ -37,7 +38,7 @@ class CrownDeadWeight:
         )
         unknown = np.isnan(weight)
         return Evaluation(
-            sections["support_pressure_mpa"] + weight,
+            sections["support_pressure_mpa"] + weight + sections["lining_water_mpa"],
             sections["class_capacity_mpa"],
             unknown,
             "unit_weight_kn_m3 is not given",
@@ -50,14 +51,15 @@ class CrownDeadWeight:
             "Rps": "supported_plastic_radius_m",
             "R": "radius_m",
             "p": "support_pressure_mpa",
+            "uw": "lining_water_mpa",
             "pmax_class": "class_capacity_mpa",
         }
         work = _working(values, symbols)
         if work.known["gamma"] != work.known["gamma"]:
             return ()
         demand, capacity = float(found.demand[0]), float(found.capacity[0])
-        meaning = "pressure at rest and weight of the plastic zone over the crown"
-        work.add("demand", meaning, "p + gamma*(Rps - R)/1000", demand, "MPa")
+        meaning = "pressure at rest, water and weight of the plastic zone over the crown"
+        work.add("demand", meaning, "p + uw + gamma*(Rps - R)/1000", demand, "MPa")
         work.add("capacity", "capacity of all elements", "pmax_class", capacity, "MPa")
         return work.lines
 

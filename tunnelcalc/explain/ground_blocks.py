@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 
 from tunnelcalc.calculation.formula import renamed
@@ -12,6 +12,7 @@ from tunnelcalc.calculation.symbols import SYMBOLS
 from tunnelcalc.calculation.working import Working
 from tunnelcalc.explain.offered import differ, last, method_lines
 from tunnelcalc.explain.section import ComputedSection
+from tunnelcalc.inputs.estimates import ESTIMATED, FROM_LABORATORY, Estimator, estimator_told
 from tunnelcalc.pipeline.disturbed_ring_stage import OF_RING
 from tunnelcalc.pipeline.ground_stages import knows_ring
 from tunnelcalc.plugin.contract import STRENGTH_COLUMNS, SectionValues
@@ -58,6 +59,7 @@ def _geometry(section: ComputedSection) -> SheetBlock:
 
 def _ground(section: ComputedSection) -> SheetBlock:
     lines, absent = [], []
+    relations: dict[str, Estimator] = {}
     given = section.given
     for name, quantity in GROUND.items():
         if name not in given or given[name].dtype == object:
@@ -66,17 +68,40 @@ def _ground(section: ComputedSection) -> SheetBlock:
         if math.isnan(value):
             absent += [name] if name in section.project.ground_columns else []
             continue
-        origin = _origin(section, name)
+        word, method = _origin(section, name)
+        relation = estimator_told(method) if word == ESTIMATED_WORD else None
+        if relation is not None:
+            relations[name] = relation
+            continue
+        told = f"{_WORDS.get(word, word)}{f': {method}' if method else ''}"
+        if method == FROM_LABORATORY:
+            told += ", laboratory.csv"
         symbol = SYMBOLS.get(name, name)
-        lines.append(SheetLine(symbol, quantity.meaning, "", {}, value, quantity.unit, origin))
+        lines.append(SheetLine(symbol, quantity.meaning, "", {}, value, quantity.unit, told))
+    lines += _estimated(section, relations)
     notes = [f"ground unit: {given['ground_unit'][0]}"] if given["ground_unit"][0] else []
     if absent:
         notes.append(f"not given here: {', '.join(absent)}")
     return SheetBlock("Ground as given", tuple(lines), tuple(notes))
 
 
-def _origin(section: ComputedSection, quantity: str) -> str:
-    """Where a value came from."""
+def _estimated(section: ComputedSection, relations: Mapping[str, Estimator]) -> Sequence[SheetLine]:
+    """Quantities that follow from observations, each after what its relation needs."""
+    work = Working({})
+    for name in ESTIMATED:
+        if name not in relations:
+            continue
+        relation, quantity = relations[name], GROUND[name]
+        for need in relation.needs:
+            work.known.setdefault(SYMBOLS[need], float(section.given[need][0]))
+        value = float(section.given[name][0])
+        source = f"estimated: {relation.told}"
+        work.add(SYMBOLS[name], quantity.meaning, relation.formula, value, quantity.unit, source)
+    return work.lines
+
+
+def _origin(section: ComputedSection, quantity: str) -> tuple[str, str]:
+    """Where a value came from, and by what method or from which tables."""
     place = section.chainage_m
     for origins in section.project.origins:
         if origins.quantity != quantity:
@@ -85,14 +110,14 @@ def _origin(section: ComputedSection, quantity: str) -> str:
             origins.from_m, origins.to_m, origins.origin, origins.method, strict=True
         ):
             if start <= place <= end:
-                return f"{_WORDS.get(word, word)}{f': {method}' if method else ''}"
-    return "project"
+                return str(word), str(method)
+    return "project", ""
 
 
+ESTIMATED_WORD = "estimated"
 _WORDS: Mapping[str, str] = {
     "table": "ground table",
     "unit": "units table",
-    "estimated": "estimated",
     "levels": "from levels of ground, tunnel or water",
     "assumed": "assumed by the program, not given",
 }

@@ -17,9 +17,6 @@ from tunnelcalc.errors import InputError, Problem, Where
 from tunnelcalc.outputs.run_folder import INPUTS, MANIFEST
 from tunnelcalc.plugin.registry import Registry
 
-TABLES = ("sections.csv", "classes.csv", "checks.csv", "flags.csv")
-"""Tables that a sheet is set against."""
-
 
 @dataclass(frozen=True, slots=True)
 class Recorded:
@@ -47,18 +44,15 @@ class Recorded:
 
     def changed_files(self) -> Iterator[str]:
         """What is no longer as it was when the run ended."""
-        entries = [(self.inputs, entry) for entry in self.manifest.get("inputs", ())]
-        entries += [
-            (self.folder, entry)
-            for entry in self.manifest.get("outputs", ())
-            if entry["path"] in TABLES
-        ]
-        for folder, entry in entries:
-            path = folder / entry["path"]
-            name = path.relative_to(self.folder).as_posix()
+        inputs, outputs = self.manifest.get("inputs", ()), self.manifest.get("outputs", ())
+        recorded = [(f"{INPUTS}/{entry['path']}", entry["sha256"]) for entry in inputs]
+        recorded += [(entry["path"], entry["sha256"]) for entry in outputs]
+        # The copies of the inputs stand among the outputs too.
+        for name, digest in dict.fromkeys(recorded):
+            path = self.folder / name
             if not path.is_file():
                 yield f"{name} is missing"
-            elif _digest(path) != entry["sha256"]:
+            elif _digest(path) != digest:
                 yield f"{name} is not as it was when the run ended: its SHA-256 differs"
 
     def other_versions(self, registry: Registry) -> Iterator[str]:

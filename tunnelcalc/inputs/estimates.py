@@ -23,20 +23,32 @@ from tunnelcalc.vocabulary import GROUND
 MEASURED = "measured"
 """The quantity itself, as a table states it."""
 LABORATORY = "laboratory"
+FROM_LABORATORY = f"{LABORATORY}: regression of Hoek & Brown (1980)"
+"""What stands beside each value that was estimated from tests."""
 
 
 @dataclass(frozen=True, slots=True)
 class Estimator:
-    """A published relation from observations to a quantity."""
+    """A published relation from observations to a quantity.
+
+    `formula` is what `estimate` computes, as a calculation sheet writes it: in the symbols that
+    `SYMBOLS` gives the columns of `needs`.
+    """
 
     name: str
     quantity: str
     needs: tuple[str, ...]
     source: str
     allowed: str
+    formula: str
     estimate: Callable[..., Array]
     only_if_named: bool = False
     """Whether it is used only where the project names it among the sources."""
+
+    @property
+    def told(self) -> str:
+        """What stands beside each value that was estimated by it."""
+        return f"{self.name}: {self.source}"
 
 
 ESTIMATORS = (
@@ -46,6 +58,7 @@ ESTIMATORS = (
         ("jcond89", "rqd_pct"),
         "Hoek, Carter & Diederichs (2013), ARMA 13-672",
         "jcond89 0 to 30, rqd_pct 0 to 100",
+        "1.5*JCond89 + RQD/2",
         observations.gsi_from_jcond89_and_rqd,
     ),
     Estimator(
@@ -54,6 +67,7 @@ ESTIMATORS = (
         ("rmr89_dry",),
         "Hoek, Kaiser & Bawden (1995)",
         f"rmr89_dry {RMR89_DRY_RANGE.minimum:g} to {RMR89_DRY_RANGE.maximum:g}",
+        "RMR_dry - 5",
         observations.gsi_from_rmr89_dry,
     ),
     Estimator(
@@ -62,6 +76,7 @@ ESTIMATORS = (
         ("q_prime",),
         "Hoek, Kaiser & Bawden (1995)",
         "q_prime such that 9 ln(q_prime) + 44 lies between 0 and 100",
+        "9*ln(Q_prime) + 44",
         observations.gsi_from_q_prime,
     ),
     Estimator(
@@ -70,6 +85,7 @@ ESTIMATORS = (
         ("block_volume_cm3", "joint_condition"),
         "Cai & Kaiser (2006), Geotech. Geol. Eng. 24, 1089-1102",
         "block volume and joint condition that give an index between 0 and 100",
+        "(26.5 + 8.79*ln(Jc) + 0.9*ln(Vb))/(1 + 0.0151*ln(Jc) - 0.0253*ln(Vb))",
         observations.gsi_from_block_volume,
     ),
     Estimator(
@@ -78,6 +94,7 @@ ESTIMATORS = (
         ("point_load_mpa", "point_load_factor"),
         "factor of the project times point load index",
         "a product within the range of intact_strength_mpa",
+        "k_pl*Is50",
         observations.intact_strength_from_point_load_mpa,
     ),
     Estimator(
@@ -86,6 +103,7 @@ ESTIMATORS = (
         ("gsi",),
         "Cai et al. (2007), Int. J. Rock Mech. Min. Sci. 44, 247-265",
         f"gsi up to {RESIDUAL_GSI_RANGE.maximum:.4g}",
+        "GSI*exp(-0.0134*GSI)",
         observations.residual_gsi,
         only_if_named=True,
     ),
@@ -93,6 +111,11 @@ ESTIMATORS = (
 ESTIMATED = ("gsi", "intact_strength_mpa", "mi", "residual_gsi")
 SAME_VALUE = 1e-9
 """Sources that lie closer than this share of the larger value agree. [-]"""
+
+
+def estimator_told(told: str) -> Estimator | None:
+    """The relation that a value was estimated by, from what stands beside it."""
+    return next((e for e in ESTIMATORS if e.told == told), None)
 
 
 def source_names(quantity: str) -> tuple[str, ...]:
@@ -196,10 +219,10 @@ def _sources(
             values = estimator.estimate(*needed)
             if not preference or estimator.name in preference:
                 _tell_out_of_range(found, intervals, estimator, needed, values, rows)
-            sources[estimator.name] = (values, f"{estimator.name}: {estimator.source}")
+            sources[estimator.name] = (values, estimator.told)
     if quantity in FROM_TESTS and tests.by_unit:
         values = tests.values_of(quantity, found.texts["ground_unit"])
-        sources[LABORATORY] = (values, "laboratory: regression of Hoek & Brown (1980)")
+        sources[LABORATORY] = (values, FROM_LABORATORY)
     return sources
 
 

@@ -8,7 +8,6 @@ from dataclasses import dataclass
 import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M
-from tunnelcalc.errors import Where
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.contract import ValidityFlag
 from tunnelcalc.sections import Sections
@@ -38,10 +37,10 @@ KEY, NOT_ASSESSED, THRESHOLDS, OVERRIDES, ORIGIN = (
 
 @dataclass(frozen=True, slots=True)
 class ReadSettings:
-    """Settings, and where each override stands."""
+    """Settings, and the entry that each override was read from."""
 
     settings: FlagSettings
-    places: tuple[Where, ...]
+    entries: tuple[Reader, ...]
 
 
 def read_flag_settings(reader: Reader, flags: Sequence[ValidityFlag]) -> ReadSettings:
@@ -56,21 +55,42 @@ def read_flag_settings(reader: Reader, flags: Sequence[ValidityFlag]) -> ReadSet
     settings = FlagSettings(
         rule or NOT_ASSESSED_RULES[0], thresholds, tuple(override for override, _ in overrides)
     )
-    return ReadSettings(settings, tuple(where for _, where in overrides))
+    return ReadSettings(settings, tuple(entry for _, entry in overrides))
 
 
 def check_overrides(read: ReadSettings, sections: Sections, reader: Reader) -> None:
-    """Tell overrides in which no section lies: they would accept nothing."""
-    for override, where in zip(read.settings.overrides, read.places, strict=True):
+    """Tell overrides that leave the alignment, and those in which no section lies."""
+    for override, entry in zip(read.settings.overrides, read.entries, strict=True):
+        if _leaves(override, entry, sections):
+            continue
         numbers = override_numbers((override,), sections["from_m"], sections["to_m"])
         if np.all(numbers < 0):
             reader.problems.add(
-                where,
+                entry.where,
                 f"holds no section between {override.from_m:.10g} and {override.to_m:.10g} m",
                 name=f'override of "{override.flag}"',
                 allowed="ends between which at least one section lies wholly",
                 fix="widen it to whole sections, or remove it",
             )
+
+
+def _leaves(override: Override, entry: Reader, sections: Sections) -> bool:
+    """Tell an override that reaches beyond the alignment: it would accept what nobody has seen."""
+    first, last = float(sections["from_m"][0]), float(sections["to_m"][-1])
+    outside = {
+        "from_m": ("before the start", override.from_m < first - SAME_PLACE_M),
+        "to_m": ("beyond the end", override.to_m > last + SAME_PLACE_M),
+    }
+    begins, ends = entry.notation.ends(first, last)
+    for key, (side, leaves) in outside.items():
+        if leaves:
+            entry.complain(
+                key,
+                f"holds {quoted(entry.text(key) or '')}, which lies {side} of the alignment",
+                allowed=f"a chainage from {begins} to {ends}",
+                fix="correct it, or write the end of the alignment",
+            )
+    return any(leaves for _, leaves in outside.values())
 
 
 def editable(flag: ValidityFlag) -> Mapping[str, Threshold]:
@@ -154,7 +174,7 @@ def _check_order(entry: Reader, flag: ValidityFlag, found: Sequence[ThresholdSet
         return
 
 
-def _overrides(table: Reader, names: Sequence[str]) -> Iterator[tuple[Override, Where]]:
+def _overrides(table: Reader, names: Sequence[str]) -> Iterator[tuple[Override, Reader]]:
     before: list[Override] = []
     for entry in table.tables_of(OVERRIDES, required=False):
         flag = entry.choice("flag", names)
@@ -181,7 +201,7 @@ def _overrides(table: Reader, names: Sequence[str]) -> Iterator[tuple[Override, 
             )
         else:
             before.append(override)
-            yield override, entry.where
+            yield override, entry
 
 
 def _overlap(one: Override, other: Override) -> bool:

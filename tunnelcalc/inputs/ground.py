@@ -262,7 +262,7 @@ def _ground(
     return Ground(
         Sections(columns),
         written,
-        tuple(value_origins(written, columns, origins, found.methods, rows)),
+        tuple(value_origins(written, columns, origins, found.methods, rows, levels.tables)),
         tuple(tests.values()),
         tuple(sorted((gap for gap, _ in gaps), key=lambda gap: gap.from_m)),
         (

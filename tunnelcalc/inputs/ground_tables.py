@@ -10,6 +10,8 @@ from tunnelcalc.inputs.headers import understood
 from tunnelcalc.inputs.table_columns import CHAINAGE, TypedTable
 from tunnelcalc.inputs.typed_table import open_table, typed
 from tunnelcalc.inputs.values import Reader
+from tunnelcalc.pipeline.flags_stage import WORSE_UNDER_LARGER_STRESS
+from tunnelcalc.pipeline.stress_cases import larger_column
 from tunnelcalc.pipeline.support_stages import (
     CHECK_COLUMNS,
     CLASS_COLUMNS,
@@ -31,6 +33,7 @@ OWN_COLUMNS = (
     *CHECK_COLUMNS,
     *WORDS,
     *("flag_level", "height_m", "lining_water_mpa", "water_left_out", "profile_plastic_limit"),
+    *("finite_strain", *map(larger_column, WORSE_UNDER_LARGER_STRESS)),
     STRESS_CASE,
     *(f"{name}_spread" for name in GROUND),
     *(method_column(step) for step in DEFAULT_METHODS),

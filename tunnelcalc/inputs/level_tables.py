@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from itertools import pairwise
 
 import numpy as np
@@ -23,6 +23,12 @@ CHAINAGE, LEVEL, BASE, UNIT = "chainage_m", "level_m", "base_level_m", "ground_u
 LEVELS = Limits(-12000, 9000)
 AXIS, CROWN = "axis", "crown"
 TERRAIN, WATER, LAYERS = "terrain", "water_table", "layers"
+FOLLOWS_FROM: Mapping[str, tuple[str, ...]] = {
+    "cover_m": (AXIS, TERRAIN),
+    "water_head_m": (AXIS, WATER),
+    "vertical_stress_mpa": (AXIS, TERRAIN, LAYERS),
+}
+"""Tables from which each quantity follows. The axis is `opening: axis`."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,6 +37,8 @@ class TunnelLevel:
 
     line: Line
     level_of: str
+    table: str
+    """path of the table that it was read from"""
 
 
 @dataclass(frozen=True, slots=True)
@@ -41,6 +49,8 @@ class Levels:
     terrain: Line | None
     water: Line | None
     layers: tuple[Layer, ...]
+    tables: Mapping[str, str] = field(default_factory=dict)
+    """paths of the tables from which each column of `AtSections` follows"""
 
 
 @dataclass(frozen=True, slots=True)
@@ -63,7 +73,9 @@ def read_tunnel_level(
     level_of = reader.choice("level_of", (AXIS, CROWN))
     line = _line(reader, "table", folder, registry, required=True)
     reader.finish()
-    return None if line is None or level_of is None else TunnelLevel(line, level_of)
+    if line is None or level_of is None:
+        return None
+    return TunnelLevel(line, level_of, reader.text("table") or "")
 
 
 def read_levels(
@@ -88,7 +100,16 @@ def read_levels(
     layers = _layers(ground, unit_weights, folder, registry)
     if layers and not ground.has(TERRAIN):
         ground.complain(LAYERS, "has no use without terrain", fix="add ground: terrain")
-    return Levels(tunnel, terrain, water, layers)
+    read = {TERRAIN: terrain, WATER: water, LAYERS: layers}
+    # A key whose table was read holds a path: asking again tells no problem twice.
+    paths = {key: ground.text(key) or "" for key, lines in read.items() if lines}
+    if tunnel is not None:
+        paths[AXIS] = tunnel.table
+    tables = {
+        column: ", ".join(paths[key] for key in keys if key in paths)
+        for column, keys in FOLLOWS_FROM.items()
+    }
+    return Levels(tunnel, terrain, water, layers, tables)
 
 
 def at_sections(

@@ -54,11 +54,16 @@ class Requirement:
 
 @dataclass(frozen=True, slots=True)
 class ChosenMethods:
-    """The choice of each step, and the methods themselves by step and name."""
+    """The choice of each step, and the methods themselves by step and name.
+
+    `places` says where the choice of a step stands, by step and ground unit, and by step and ""
+    for all other units.
+    """
 
     choices: Mapping[str, MethodChoice]
     methods: Mapping[tuple[str, str], Method]
     reader: Reader
+    places: Mapping[tuple[str, str], Where]
 
     def requirements(self, ground_units: Array, measured_modulus: Array) -> Iterator[Requirement]:
         """What the methods ask of intervals of these ground units (i,).
@@ -91,11 +96,16 @@ class ChosenMethods:
             for unit in choice.by_unit:
                 if unit not in known:
                     self._tell_unknown_unit(step, unit, known)
+        # What is written once is told once, of the first ground unit that it concerns.
         pairs = {
-            (self.choices["strength"].of_unit(u), self.choices["ground_reaction"].of_unit(u)): u
+            (
+                self.choices["strength"].of_unit(u),
+                self.choices["ground_reaction"].of_unit(u),
+                self._place_of_pair(u),
+            ): u
             for u in reversed(known)
         }
-        for (strength, reaction), unit in pairs.items():
+        for (strength, reaction, _), unit in pairs.items():
             law, given = self.methods["ground_reaction", reaction], self._strength(strength)
             lacking = sorted(set(law.needs) & set(STRENGTH_COLUMNS) - set(given.gives))
             if lacking:
@@ -152,9 +162,17 @@ class ChosenMethods:
         for number, name in enumerate(choice.names):
             yield name, numbers == number
 
+    def _place_of_pair(self, unit: str) -> Where:
+        """Where law and strength of a unit are chosen: nearest to the unit, the law first."""
+        for named in (unit, ""):
+            for step in ("ground_reaction", "strength"):
+                if (step, named) in self.places:
+                    return self.places[step, named]
+        return self.reader.place("methods")
+
     def _tell_misfit(self, reaction: str, strength: str, unit: str, what: str) -> None:
         self.reader.problems.add(
-            self.reader.place("methods"),
+            self._place_of_pair(unit),
             f'is "{reaction}", which {what}; the strength "{strength}" does not give it '
             f"(ground unit {quoted(unit)})",
             name="the ground_reaction method",
@@ -164,7 +182,7 @@ class ChosenMethods:
     def _tell_unknown_unit(self, step: str, unit: str, known: Sequence[str]) -> None:
         hint = suggestion(unit, known)
         self.reader.problems.add(
-            self.reader.place("methods"),
+            self.places[step, unit],
             f"names the ground unit {quoted(unit)}, which no interval has",
             name=f'key "methods.{step}.{BY_UNIT}"',
             allowed=few(known),
@@ -176,8 +194,9 @@ def read_methods(reader: Reader, registry: Registry) -> ChosenMethods | None:
     """The key `methods`; None, with problems, where a method is not there."""
     chosen = reader.table_of("methods", required=False)
     choices = {}
+    places: dict[tuple[str, str], Where] = {}
     for step, default in DEFAULT_METHODS.items():
-        choices[step] = _choice(chosen, step, default, registry)
+        choices[step] = _choice(chosen, step, default, registry, places)
     if chosen is not None:
         chosen.finish()
     methods: dict[tuple[str, str], Method] = {}
@@ -196,21 +215,30 @@ def read_methods(reader: Reader, registry: Registry) -> ChosenMethods | None:
                 or "install the plugin that offers it, or name another method",
             )
     complete = len(methods) == sum(len(choice.names) for choice in choices.values())
-    return ChosenMethods(choices, methods, reader) if complete else None
+    return ChosenMethods(choices, methods, reader, places) if complete else None
 
 
-def _choice(chosen: Reader | None, step: str, default: str, registry: Registry) -> MethodChoice:
-    """A name, or `default` with `by_unit`."""
+def _choice(
+    chosen: Reader | None,
+    step: str,
+    default: str,
+    registry: Registry,
+    places: dict[tuple[str, str], Where],
+) -> MethodChoice:
+    """A name, or `default` with `by_unit`; adds where each is written to `places`."""
     if chosen is None or not chosen.has(step):
         if chosen is not None:
             chosen.choice(step, registry.names(step), required=False)
         return MethodChoice((default,))
     names = registry.names(step)
+    places[step, ""] = chosen.place(step)
     if not chosen.is_table(step):
         return MethodChoice((chosen.choice(step, names) or default,))
     table = chosen.table_of(step)
     assert table is not None
     first = table.choice("default", names, required=False) or default
+    if table.has("default"):
+        places[step, ""] = table.place("default")
     units = table.table_of(BY_UNIT)
     by_unit: dict[str, str] = {}
     for unit in units.table.entries if units is not None else ():
@@ -218,5 +246,6 @@ def _choice(chosen: Reader | None, step: str, default: str, registry: Registry) 
         name = units.choice(unit, names)
         if name is not None:
             by_unit[unit] = name
+            places[step, unit] = units.place(unit)
     table.finish()
     return MethodChoice(tuple(dict.fromkeys([first, *by_unit.values()])), by_unit)

@@ -16,6 +16,7 @@ from tunnelcalc.inputs.opening import read_profiles
 from tunnelcalc.inputs.support_classes import read_support_classes
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.inputs.yaml_tree import Table, parse
+from tunnelcalc.outputs.run_folder import INPUTS, MANIFEST
 from tunnelcalc.plugin.contract import ClassCheck
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import Criteria, Project, ScheduleRules
@@ -57,11 +58,18 @@ def project_folder(path: Path) -> Path:
     folder = path.parent if path.name == PROJECT_FILE and path.is_file() else path
     if (folder / PROJECT_FILE).is_file():
         return folder
+    fix = f"name a folder that holds {PROJECT_FILE}"
     if folder.is_dir():
         what = f"holds no file {PROJECT_FILE}"
+        if (folder / MANIFEST).is_file():
+            what = f"{what}: it is the folder of a run"
+            fix = (
+                f"name {folder / INPUTS}, the project as that run kept it; for a command that "
+                "writes, with --out outside of it"
+            )
     else:
         what = "is not a folder" if folder.exists() else "does not exist"
-    raise InputError((Problem(Where(str(path)), what, f"name a folder that holds {PROJECT_FILE}"),))
+    raise InputError((Problem(Where(str(path)), what, fix),))
 
 
 def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:

@@ -45,10 +45,12 @@ def value_origins(
     origins: Mapping[str, Array],
     methods: Mapping[str, Array],
     rows: Array,
+    level_tables: Mapping[str, str],
 ) -> Iterator[ValueOrigins]:
     """By quantity, each value over the stretch on which it and its origin stay the same.
 
-    What follows from levels changes with every section: only its origin is told.
+    What follows from levels changes with every section: its origin is told, and the tables
+    that it follows from.
     """
     apart = columns["from_m"][1:] - columns["to_m"][:-1] > SAME_PLACE_M
     for name in written:
@@ -58,6 +60,7 @@ def value_origins(
         values = np.where(codes == Origin.LEVELS, np.nan, columns[name])
         method = methods[name][rows] if name in methods else np.full(rows.size, "", dtype=object)
         method = np.where(np.isin(codes, WITH_METHOD), method, "")
+        method = np.where(codes == Origin.LEVELS, level_tables.get(name, ""), method)
         new = np.ones(rows.size, dtype=bool)
         new[1:] = (codes[1:] != codes[:-1]) | (method[1:] != method[:-1]) | apart
         new[1:] |= (values[1:] != values[:-1]) & ~(np.isnan(values[1:]) & np.isnan(values[:-1]))

@@ -21,10 +21,14 @@ PART_SUFFIX = ".part"
 
 @dataclass(slots=True)
 class Target:
-    """Where a run goes: a numbered folder of the project, or one that the user named."""
+    """Where a run goes: a numbered folder of the project, or one that the user named.
+
+    `by_option` is False where the program chose the folder `out` and not the user.
+    """
 
     project_folder: Path
     out: Path | None
+    by_option: bool = True
 
     def __post_init__(self) -> None:
         if self.out is not None:
@@ -35,7 +39,7 @@ class Target:
         return self.project_folder / RUNS if self.out is None else self.out.parent
 
     def check(self) -> None:
-        """Raise InputError unless the named folder is absent or empty."""
+        """Raise InputError unless the folder is absent or empty."""
         what = ""
         if self.out is None:
             return
@@ -44,11 +48,14 @@ class Target:
         elif self.out.exists() or any(above.is_file() for above in self.out.parents):
             what = "is not a folder"
         if what:
+            fix, name = "name another folder: a run never overwrites anything", "--out"
+            if not self.by_option:
+                fix, name = "remove it, or name another folder with --out", "the folder to write"
             problem = Problem(
                 Where(str(self.out)),
                 what,
-                "name another folder: a run never overwrites anything",
-                name="--out",
+                fix,
+                name=name,
                 allowed="a folder that is absent or empty",
             )
             raise InputError((problem,))

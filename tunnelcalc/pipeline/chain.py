@@ -47,7 +47,8 @@ def section_stages(
     """The stages that look at each section by itself, with the project's methods."""
     steps = chosen_steps(project, registry)
     has_ring = any(knows_ring(method) for method in steps.ground_reaction.methods)
-    ring = [disturbed_ring_stage(steps.strength, steps.deformation_modulus)] if has_ring else []
+    laws = (steps.strength, steps.deformation_modulus, steps.ground_reaction)
+    ring = [disturbed_ring_stage(*laws)] if has_ring else []
     return (
         in_situ_stress_stage(project.drainage),
         mass_disturbance_stage(steps.ground_reaction),

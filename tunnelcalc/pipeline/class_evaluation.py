@@ -26,6 +26,7 @@ from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import class_outcome, load_check, rule_check
 from tunnelcalc.support.equilibrium import Equilibrium, equilibrium
 
+DOES_NOT_COUNT = "does not count: the project does not ask for it under criteria"
 UNRESOLVED = "ground and support have no equilibrium that can be computed"
 
 
@@ -177,6 +178,8 @@ def _row(
     demand[standing], capacity[standing] = found.values
     reason = unresolved.copy()
     reason[standing] = found.reason
+    if not must_pass:
+        reason[reason == NO_REASON] = DOES_NOT_COUNT
     counting = np.full(count, must_pass)
     counting[standing] &= ~left_out
     if carries_load:

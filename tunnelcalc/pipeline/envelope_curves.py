@@ -25,11 +25,12 @@ LARGEST, LARGEST_RELATIVE = "largest_difference", "largest_relative_difference"
 
 def envelopes(section: Sections) -> tuple[StrengthEnvelope, ...]:
     """The envelopes of a computed section: peak, then residual and of the disturbed ring where
-    there are any."""
+    there are any. A ring as strong as the mass is none."""
     found = []
+    peak = _constants(section, CURVED[PEAK])
     for of, prefix in CURVED.items():
-        constants = [_value(section, f"{prefix}{name}") for name in ("mb", "s", "a")]
-        if np.all(np.isfinite(constants)):
+        constants = _constants(section, prefix)
+        if np.all(np.isfinite(constants)) and not (of == RING and constants == peak):
             found.append(_curved(section, of, *constants))
     if found:
         return tuple(found)
@@ -38,6 +39,10 @@ def envelopes(section: Sections) -> tuple[StrengthEnvelope, ...]:
         if np.all(np.isfinite(line)):
             found.append(_straight(section, of, *line))
     return tuple(found)
+
+
+def _constants(section: Sections, prefix: str) -> list[float]:
+    return [_value(section, f"{prefix}{name}") for name in ("mb", "s", "a")]
 
 
 def _value(section: Sections, name: str) -> float:

@@ -10,6 +10,7 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.stage import Stage
+from tunnelcalc.pipeline.stress_cases import larger_column
 from tunnelcalc.pipeline.support_stages import failing_column
 from tunnelcalc.plugin.contract import ValidityFlag
 from tunnelcalc.plugin.isolation import NO_REASON, Contained, contained
@@ -30,6 +31,13 @@ FLAG_LEVEL = "flag_level"
 """Column (n, f) int8: number of the level of each flag."""
 ENDS = ("from_m", "to_m")
 CHECK_FAILS = failing_column("")
+WORSE_UNDER_LARGER_STRESS = (
+    "closure_pct",
+    "plastic_radius_m",
+    "squeezing_strain_pct",
+    "face_strain_pct",
+)
+"""Columns of which flags see the worse of the two stress cases."""
 
 
 def screening_lines(
@@ -107,11 +115,26 @@ def flag_counts(lines: Sequence[ScreeningLine], sections: Sections) -> tuple[Fla
 
 
 def with_optional_columns(sections: Sections, flags: Iterable[ValidityFlag]) -> Sections:
-    """The sections with what flags read and no table gives: nothing, or a check that no class
-    has and so never fails. Such a column takes no memory."""
+    """The sections as flags see them.
+
+    What a flag reads and no table gives is there: nothing, or a check that no class has and so
+    never fails; such a column takes no memory. Where a section is run a second time with the
+    larger stress, the worse of the two states stands.
+    """
+    sections = sections.with_columns(_worse_state(sections))
     absent = [n for n in _reads(flags) if n not in sections and _is_optional(n)]
     shape = (sections.count,)
     return sections.with_columns({name: np.broadcast_to(_nothing(name), shape) for name in absent})
+
+
+def _worse_state(sections: Sections) -> dict[str, Array]:
+    found = {}
+    for name in WORSE_UNDER_LARGER_STRESS:
+        larger = sections.get(larger_column(name))
+        if larger is not None and name in sections:
+            second = ~np.isnan(sections["larger_stress_mpa"])
+            found[name] = np.where(second, np.maximum(sections[name], larger), sections[name])
+    return found
 
 
 def _nothing(name: str) -> Array:

@@ -186,13 +186,16 @@ def ground_reaction_stage(chosen: Chosen[GroundReactionMethod]) -> Stage:
     """The opening without support, far from the face."""
 
     def compute(sections: Sections) -> Mapping[str, Array]:
-        return unsupported(chosen, sections)
+        finite = np.zeros(sections.count, dtype=bool)
+        for method, positions in chosen.positions(sections):
+            finite[positions] = method.finite_strain
+        return {**unsupported(chosen, sections), "finite_strain": finite}
 
     return Stage(
         "ground_reaction",
         f"unsupported opening by {chosen.names}",
         tuple(dict.fromkeys((*chosen.needs, "radius_m"))),
-        ("critical_pressure_mpa", "plastic_radius_m", "closure_mm", "closure_pct"),
+        ("critical_pressure_mpa", "plastic_radius_m", "closure_mm", "closure_pct", "finite_strain"),
         compute,
     )
 

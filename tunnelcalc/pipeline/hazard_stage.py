@@ -26,7 +26,10 @@ def hazard_stage() -> Stage:
         horizontal = sections["effective_horizontal_stress_mpa"]
         strength = squeezing_strength_mpa(sci, sections["mi"], sections["gsi"])
         wall = 3 * np.maximum(vertical, horizontal) - np.minimum(vertical, horizontal)
+        larger = sections["larger_stress_mpa"]
         return {
+            "larger_squeezing_strain_pct": squeezing_strain_pct(strength, larger),
+            "larger_face_strain_pct": face_strain_pct(strength, larger, np.zeros_like(p0)),
             "squeezing_strength_mpa": strength,
             "squeezing_strain_pct": squeezing_strain_pct(strength, p0),
             "face_strain_pct": face_strain_pct(strength, p0, np.zeros_like(p0)),
@@ -43,6 +46,7 @@ def hazard_stage() -> Stage:
             "gsi",
             "radius_m",
             "in_situ_stress_mpa",
+            "larger_stress_mpa",
             "effective_vertical_stress_mpa",
             "effective_horizontal_stress_mpa",
         ),
@@ -51,6 +55,8 @@ def hazard_stage() -> Stage:
             "squeezing_strain_pct",
             "face_strain_pct",
             "spalling_depth_m",
+            "larger_squeezing_strain_pct",
+            "larger_face_strain_pct",
         ),
         compute,
     )

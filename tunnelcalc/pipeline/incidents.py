@@ -13,6 +13,10 @@ from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import Outcome
 
 
+NO_CLOSURE = "no closure that can be computed"
+ENDLESS_RING = "no closure that can be computed: without support the plastic zone has no end"
+
+
 @dataclass(slots=True)
 class Incidents:
     """Counts what could not be evaluated, while chunks are finished."""
@@ -29,7 +33,9 @@ class Incidents:
         """Sections of a chunk without a closure, and checks that a class misses."""
         chainage = chunk["chainage_m"]
         unknown = ~np.isfinite(chunk["closure_mm"])
-        self.add("ground reaction", "no closure that can be computed", chainage[unknown])
+        endless = unknown & np.isinf(chunk["plastic_radius_m"])
+        self.add("ground reaction", NO_CLOSURE, chainage[unknown & ~endless])
+        self.add("ground reaction", ENDLESS_RING, chainage[endless])
         missed = (chunk["check_outcome"] == Outcome.NOT_EVALUATED) & chunk["check_counts"]
         missed = missed.astype(bool) & ~unknown[:, None]
         for position in np.flatnonzero(np.any(missed, axis=0)).tolist():

@@ -18,6 +18,7 @@ from tunnelcalc.pipeline.curve_points import distances_m, pressures_mpa, section
 from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, M, closure_share, curves
 from tunnelcalc.pipeline.envelope_curves import envelopes
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
+from tunnelcalc.pipeline.incidents import ENDLESS_RING, NO_CLOSURE
 from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.pipeline.stress_cases import MEAN, larger_stress
 from tunnelcalc.pipeline.support_stages import STRESS_CASE
@@ -191,7 +192,8 @@ def _together_mpa(elements: Sequence[ReactionOfElement], closure_mm: Array) -> A
 def _unknown(planned: PlannedClass, found: Evaluated, section: Sections) -> Iterator[Unknown]:
     """What could not be computed, in the words of a run."""
     if not np.isfinite(section["closure_mm"][0]):
-        yield "ground reaction", "no closure that can be computed"
+        endless = np.isinf(section["plastic_radius_m"][0])
+        yield "ground reaction", ENDLESS_RING if endless else NO_CLOSURE
         return
     name = planned.support_class.name
     faults = [

@@ -17,6 +17,11 @@ from tunnelcalc.sections import Sections
 MEAN, LARGER = (STRESS_CASES.index(name) for name in ("mean", "larger"))
 
 
+def larger_column(name: str) -> str:
+    """The column beside `name` that holds it under the larger stress, NaN where none is run."""
+    return f"larger_{name}"
+
+
 @dataclass(frozen=True, slots=True)
 class LargerStress:
     """Sections under the larger in-plane stress, with their positions among all."""

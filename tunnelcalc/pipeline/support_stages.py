@@ -11,7 +11,13 @@ from tunnelcalc.pipeline.class_evaluation import CheckRow, ClassRow, Evaluated, 
 from tunnelcalc.pipeline.dispatch import ChosenSteps, curves
 from tunnelcalc.pipeline.plan import PlannedClass, check_lines
 from tunnelcalc.pipeline.stage import Stage
-from tunnelcalc.pipeline.stress_cases import LARGER, MEAN, larger_stress
+from tunnelcalc.pipeline.stress_cases import (
+    LARGER,
+    MEAN,
+    LargerStress,
+    larger_column,
+    larger_stress,
+)
 from tunnelcalc.project import Criteria
 from tunnelcalc.results import CheckLine
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, required_classes
@@ -40,6 +46,9 @@ CHECK_COLUMNS = (
     "check_reason",
 )
 """Columns (n, k): one value a section and check line, in the order of `CheckRow`."""
+
+STATE_WITHOUT_SUPPORT = ("closure_pct", "plastic_radius_m")
+"""What is kept of the second run besides the classes: flags look at it."""
 
 STRESS_CASE = "class_stress_case"
 """Column (n, c): number of the stress case that a class is told of."""
@@ -86,6 +95,7 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
                 sections.count, "crown_dead_weight" not in criteria.chosen_checks
             ),
             "profile_plastic_limit": _profile_limit(steps, sections),
+            **_larger_state(larger, sections.count),
         }
 
     own = ("radius_m", "closure_mm", "plastic_radius_m", "larger_stress_mpa", "lining_water_mpa")
@@ -103,6 +113,7 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
             *failing,
             "dead_weight_not_required",
             "profile_plastic_limit",
+            *(larger_column(name) for name in STATE_WITHOUT_SUPPORT),
         ),
         compute,
     )
@@ -151,6 +162,17 @@ def _failing(lines: Sequence[CheckLine], failed: Sequence[Array], count: int) ->
     for line, fails in zip(lines, failed, strict=True):
         name = failing_column(line.check)
         found[name] = found.get(name, np.zeros(count, dtype=bool)) | fails
+    return found
+
+
+def _larger_state(larger: LargerStress, count: int) -> dict[str, Array]:
+    """The opening without support under the larger stress, NaN where it is not run."""
+    found = {}
+    for name in STATE_WITHOUT_SUPPORT:
+        column = np.full(count, np.nan)
+        if larger.positions.size:
+            column[larger.positions] = larger.sections[name]
+        found[larger_column(name)] = column
     return found
 
 

@@ -270,6 +270,10 @@ class ModulusMethod(Method, Protocol):
 class GroundReactionMethod(Method, Protocol):
     """The law of the ground around a circular opening."""
 
+    @property
+    def finite_strain(self) -> bool:
+        """Whether it holds for large closures too."""
+
     def curve(self, sections: Sections) -> GroundCurve:
         """Ground reaction curves of the sections."""
 
@@ -368,5 +372,6 @@ class SectionFigure(Protocol):
     def name(self) -> str: ...
 
     def draw(self, curves: SectionCurves, folder: Path) -> Iterable[str]:
-        """Write into `folder`; returns the names of the files written, none where the curves
-        that it draws are not known. The same curves give the same bytes."""
+        """Write into `folder`; returns the names of the files written: none, or a sheet that
+        says so, where the curves that it draws are not known. The same curves give the same
+        bytes."""

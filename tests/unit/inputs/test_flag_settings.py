@@ -150,6 +150,23 @@ def lines_of(tmp_path: Path, damage) -> str:
             'override of "shallow_cover" holds no section between 100 and 100.5 m',
             id="override-of-no-section",
         ),
+        pytest.param(
+            accepted({"to_m": 150.5}),
+            'key "flags.overrides[1].to_m" holds "150.5", which lies beyond the end of the '
+            "alignment",
+            id="override-beyond-the-end",
+        ),
+        pytest.param(
+            accepted({"from_m": -20}),
+            'key "flags.overrides[1].from_m" holds "-20", which lies before the start of the '
+            "alignment",
+            id="override-before-the-start",
+        ),
+        pytest.param(
+            accepted({"from_m": 900, "to_m": 950}),
+            'key "flags.overrides[1].to_m" holds "950", which lies beyond the end of the alignment',
+            id="override-wholly-beyond-is-told-once",
+        ),
     ],
 )
 def test_what_is_wrong_is_told_with_its_place(tmp_path: Path, damage, expected: str):
@@ -163,6 +180,11 @@ def test_a_person_and_a_reason_are_required(tmp_path: Path):
         "flags.overrides[1].person",
         "flags.overrides[1].reason",
     ]
+
+
+def test_an_override_may_end_where_the_alignment_ends(tmp_path: Path):
+    (override,) = read(tmp_path, accepted({"from_m": 0, "to_m": 150})).flags.overrides
+    assert (override.from_m, override.to_m) == (0, 150)
 
 
 def test_the_same_stretch_may_be_accepted_for_two_flags_and_stretches_may_meet(tmp_path: Path):

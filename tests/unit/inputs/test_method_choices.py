@@ -75,17 +75,46 @@ class TestWhatMayBeChosen:
     def test_a_unit_that_nobody_has_is_told_with_the_nearest_name(self, tmp_path: Path):
         wrong = methods(deformation_modulus="{by_unit: {goudge: hoek_2002}}")
         assert told(tmp_path, wrong) == [
-            'project.yaml:9:1: key "methods.deformation_modulus.by_unit" names the ground unit '
+            'project.yaml:10:35: key "methods.deformation_modulus.by_unit" names the ground unit '
             '"goudge", which no interval has'
+        ]
+
+    def test_units_that_nobody_has_are_told_each_in_its_line(self, tmp_path: Path):
+        named = (
+            "\n    by_unit:\n      gouge: hoek_2002\n      clay: hoek_2002\n      marl: hoek_2002"
+        )
+        found = told(tmp_path, methods(deformation_modulus=named))
+        assert [line.split(" ", 1)[0] for line in found] == [
+            "project.yaml:13:7:",
+            "project.yaml:14:7:",
         ]
 
     def test_a_law_that_the_strength_of_its_unit_does_not_serve_is_refused(self, tmp_path: Path):
         wrong = of_gouge(strength="mohr_coulomb")
         assert told(tmp_path, wrong, units(**LINE, **MODULUS)) == [
-            'project.yaml:9:1: the ground_reaction method is "hoek_brown_perfectly_plastic", '
+            'project.yaml:10:24: the ground_reaction method is "hoek_brown_perfectly_plastic", '
             'which needs a, mb, s; the strength "mohr_coulomb" does not give it '
             '(ground unit "gouge")'
         ]
+
+    @pytest.mark.parametrize(
+        ("law", "place"),
+        [
+            ("mohr_coulomb_brittle", "10:3"),
+            ("{default: mohr_coulomb_brittle, by_unit: {gouge: elastic}}", "10:21"),
+            ("{by_unit: {gouge: mohr_coulomb_brittle}}", "10:31"),
+        ],
+    )
+    def test_a_law_that_does_not_fit_is_told_where_it_is_chosen(self, tmp_path, law, place):
+        first, *_ = told(tmp_path, methods(ground_reaction=law))
+        assert first.startswith(f"project.yaml:{place}: the ground_reaction method is")
+
+    def test_laws_of_two_units_that_do_not_fit_are_told_each_in_its_line(self, tmp_path: Path):
+        lines = (f"\n      {unit}: mohr_coulomb_brittle" for unit in ("gouge", "sandstone"))
+        named = f"\n    by_unit:{''.join(lines)}"
+        found = told(tmp_path, methods(ground_reaction=named))
+        misfits = [line.split(" ", 1)[0] for line in found if "does not give it" in line]
+        assert misfits == ["project.yaml:12:7:", "project.yaml:13:7:"]
 
     def test_a_residual_straight_line_is_not_given_by_the_curved_criterion(self, tmp_path: Path):
         wrong = of_gouge(ground_reaction="mohr_coulomb_brittle")
@@ -97,8 +126,9 @@ class TestWhatMayBeChosen:
             strength="hoek_brown_constants", ground_reaction="hoek_brown_disturbed_ring"
         )
         constants = {"mb": ("", "", "1.5"), "s": ("", "", "0.002"), "a": ("", "", "0.5")}
-        assert told(tmp_path, wrong, units(**constants, **MODULUS)) == [
-            'project.yaml:9:1: the ground_reaction method is "hoek_brown_disturbed_ring", which '
+        thickness = {"disturbed_thickness_m": ("", "", "1")}
+        assert told(tmp_path, wrong, units(**constants, **thickness, **MODULUS)) == [
+            'project.yaml:11:31: the ground_reaction method is "hoek_brown_disturbed_ring", which '
             'needs strength weakened by disturbance; the strength "hoek_brown_constants" does not '
             'give it (ground unit "gouge")'
         ]

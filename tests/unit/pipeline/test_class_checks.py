@@ -110,6 +110,18 @@ class TestCrownDeadWeight:
         assert not found["check_counts"][0, at]
 
 
+    def test_the_water_on_a_watertight_lining_is_part_of_the_demand(self):
+        wet = sections_of(gsi=25.0, water_head_m=20.0)
+        found, (at,) = of_check(
+            wet, MIXED, "crown_dead_weight", chosen_checks=self.YES, drainage="watertight"
+        )
+        dry = sections_of(gsi=25.0, vertical_stress_mpa=5.0 - 0.1962)
+        before, (at_dry,) = of_check(dry, MIXED, "crown_dead_weight", chosen_checks=self.YES)
+        added = found["check_demand"][0, at] - before["check_demand"][0, at_dry]
+        # 20 m of water of 9.81 kN/m3.
+        assert added == pytest.approx(0.1962, rel=1e-9)
+
+
 class TestWaterOnTheLining:
     def test_rings_share_the_water_by_stiffness_beside_what_the_ground_brings(self):
         wet = sections_of(water_head_m=20.0)

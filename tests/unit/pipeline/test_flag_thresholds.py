@@ -181,7 +181,10 @@ CASES = {
         "face_strain_pct",
         [(1.0560, CLEAR), (1.0566, ADVISORY), (3.8123, ADVISORY), (3.8130, OUTSIDE)],
     ),
-    "large_closure": rising("closure_pct", 10.0),
+    "large_closure": [
+        *rising("closure_pct", 10.0, finite_strain=False),
+        *of("closure_pct", [(40.0, CLEAR)], finite_strain=True),
+    ],
     "beyond_small_strain": rising("closure_pct", 100.0),
     "deep_plastic_zone": of(
         "plastic_radius_m", [(103.9, CLEAR), (104.0, CLEAR), (104.1, ADVISORY)], radius_m=5.2

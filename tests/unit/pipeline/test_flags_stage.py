@@ -14,6 +14,7 @@ from unit.pipeline.screening import (
 from tunnelcalc.errors import StageError
 from tunnelcalc.pipeline.flags_stage import (
     FLAG_LEVEL,
+    WORSE_UNDER_LARGER_STRESS,
     flag_counts,
     flag_value,
     screening_lines,
@@ -246,3 +247,15 @@ def test_a_flag_is_counted_at_each_level():
     (count,) = flag_counts(screening_lines([flag], settings), sections)
     assert (count.name, count.clear, count.advisory, count.outside) == ("a", 3, 1, 2)
     assert (count.not_assessed, count.overridden, count.raised) == (2, 1, 4)
+
+
+@pytest.mark.parametrize("column", WORSE_UNDER_LARGER_STRESS)
+def test_where_a_section_is_run_twice_a_flag_sees_the_worse_state(column):
+    columns = {
+        column: [0.5, 0.5, 1.5, 0.5, 0.5],
+        f"larger_{column}": [NAN, 1.5, 0.5, 0.9, NAN],
+        "larger_stress_mpa": [NAN, 4.0, 4.0, 4.0, 4.0],
+    }
+    got = screened([of_column("worse", column)], columns)
+    # A state under the larger stress that cannot be computed is never read as clear.
+    assert words(got) == [CLEAR, ADVISORY, ADVISORY, CLEAR, NOT_ASSESSED]

@@ -205,6 +205,19 @@ def test_residual_strength_and_a_disturbed_ring_have_envelopes_of_their_own(tmp_
     assert all(np.all(np.isnan(e.line_major_stress_mpa)) for e in envelopes[1:])
 
 
+def test_a_ring_as_strong_as_the_mass_is_not_shown(tmp_path):
+    folder = write_project(tmp_path / "project")
+    with (folder / "project.yaml").open("a") as stream:
+        stream.write("methods:\n  ground_reaction: hoek_brown_disturbed_ring\n")
+    text = (folder / "units.csv").read_text().splitlines()
+    more = ("disturbed_thickness_m", "1", "1", "1")
+    units = "\n".join(f"{line},{new}" for line, new in zip(text, more, strict=True))
+    # The sandstone is not disturbed, the siltstone is.
+    (folder / "units.csv").write_text(units.replace("7,35,0,", "7,35,0.8,") + "\n")
+    assert [e.of for e in curves_of(folder, SANDSTONE).envelopes] == [PEAK]
+    assert [e.of for e in curves_of(folder, SILTSTONE).envelopes] == [PEAK, RING]
+
+
 def test_a_straight_criterion_is_its_own_line(tmp_path):
     folder = write_project(tmp_path / "project")
     with (folder / "project.yaml").open("a") as stream:

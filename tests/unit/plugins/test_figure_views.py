@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 import warnings
+from dataclasses import replace
 
 import numpy as np
 import pytest
@@ -88,7 +89,58 @@ def test_capacity_is_in_the_enlarged_view_unless_it_is_far():
     assert enlarged(curves(capacity=0.8)).top > 0.8
     far = curves(capacity=50.0)
     assert enlarged(far).top < 5
-    assert "capacities are beyond the axis at left" in _notes(far, *both(far))
+    assert "capacity beyond the axes at left: ring" in _notes(far, *both(far))
+
+
+def with_elements(of: api.SectionCurves, *elements: api.ReactionOfElement) -> api.SectionCurves:
+    (case,) = of.cases
+    support = replace(case.support, elements=(*case.support.elements, *elements))
+    return replace(of, cases=(replace(case, support=support),))
+
+
+def element(label: str, start_mm: float, capacity: float) -> api.ReactionOfElement:
+    """20 MPa/m, like the ring."""
+    at = start_mm + np.array([0, 1, 1.2]) * capacity / 20 * 1000
+    pressure = np.array([0, 1, 1.2]) * capacity
+    return api.ReactionOfElement(label, 2.0, start_mm, 20.0, capacity, 0.0, 0.0, at, pressure)
+
+
+def test_all_that_lies_off_the_enlarged_axes_is_named():
+    crowded = with_elements(
+        curves(free_mm=900.0), *(element(f"late_{n}", 500.0 + n, 0.5) for n in range(3))
+    )
+    crowded = with_elements(crowded, element("strong", 12.0, 4.0), element("weak", 12.0, 0.2))
+    crowded = replace(crowded, closure_limit_pct=9.0)
+    view = enlarged(crowded)
+    assert view.right < 50  # where the ring would reach its capacity; the closure limit: 270
+    notes = _notes(crowded, view, whole(crowded))
+    assert "the closure limit is beyond the axis at left" in notes
+    assert "installed beyond the closure axis at left: late_0, late_1, late_2" in notes
+    assert "capacity beyond the axes at left: ring, strong" in notes
+
+
+def test_a_closure_limit_before_the_enlarged_axis_is_told():
+    late = curves(free_mm=2000.0, rest_mm=1000.0, start_mm=990.0)
+    assert enlarged(late).left > late.closure_limit_mm
+    notes = _notes(late, *both(late))
+    assert "the closure limit lies before the axis at left" in notes
+    assert not any("closure limit" in note for note in _notes(curves(), *both(curves())))
+
+
+def test_a_long_note_is_shown_to_its_last_word_above_the_caution():
+    from matplotlib.backends.backend_agg import FigureCanvasAgg
+    from matplotlib.figure import Figure
+
+    notes = [f"capacity beyond the axes at left: {'a long name, ' * 60}the last"]
+    figure = Figure(figsize=(page.WIDTH_IN, page.HEIGHT_IN))
+    page.note(figure, notes)
+    (text,) = figure.texts
+    assert text.get_text().endswith("the last.")
+    assert text.get_text().count("\n") > 2
+    on_sheet = text.get_window_extent(FigureCanvasAgg(figure).get_renderer())
+    box = on_sheet.transformed(figure.transFigure.inverted())
+    _, legend_top = page.bottom_above_legend(1, notes)
+    assert 0.03 < box.y0 < box.y1 < legend_top - page.LEGEND_ROW
 
 
 def test_an_element_beyond_its_capacity_is_told():

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from tunnelcalc.api import PRACTICE, Array, Flag, Sections
+from tunnelcalc.api import PRACTICE, Array, Condition, Flag, Sections
 from tunnelcalc.builtin.flags.parts import (
     advisory_above,
     column,
@@ -78,8 +78,12 @@ FLAGS = (
                 "Vrakas & Anagnostou (2014), Int. J. Numer. Anal. Methods Geomech. 38, 1131-1148",
             ),
         ),
-        ("closure_pct",),
+        ("closure_pct", "finite_strain"),
         column("closure_pct"),
+        applies=Condition(
+            "the law of the ground is one of small strain",
+            lambda sections: ~sections["finite_strain"].astype(bool),
+        ),
     ),
     Flag(
         "beyond_small_strain",

@@ -49,6 +49,7 @@ class Law:
     requires: Mapping[str, Limits]
     curve_of: Callable[[Sections], api.GroundCurve]
     lines_of: Callable[[SectionValues, float, str], Sequence[SheetLine]]
+    finite_strain: bool = False
 
     def curve(self, sections: Sections) -> api.GroundCurve:
         return self.curve_of(sections)
@@ -134,7 +135,7 @@ PLASTIC = (
         "perfectly plastic Hoek-Brown ground as in Carranza-Torres (2004), with a ring of lower "
         f"strength and modulus around the opening; {HOOKE}",
         (*HOEK_BROWN, *RING, "disturbed_thickness_m", "radius_m"),
-        POISSON,
+        {**POISSON, "disturbed_thickness_m": UNLIMITED},
         _disturbed_ring,
         _lines_of_ring,
     ),
@@ -173,6 +174,7 @@ def _of_finite_strain(law: Law) -> Law:
         law.requires,
         curve_of,
         lines_of,
+        finite_strain=True,
     )
 
 

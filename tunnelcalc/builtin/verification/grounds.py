@@ -56,7 +56,7 @@ class Case:
     def brittle(self) -> GroundCurve:
         return HoekBrownCurve.of_ground(**self.arguments(), residual=self.residue())
 
-    def softening(self, strain: float) -> GroundCurve:
+    def softening(self, strain: float, annuli: int = 200) -> GroundCurve:
         mb, s, a = self.residue()
         return SofteningCurve.of_ground(
             **self.arguments(),
@@ -64,6 +64,7 @@ class Case:
             residual_s=s,
             residual_a=a,
             critical_shear_strain=np.array([strain]),
+            annuli=annuli,
         )
 
     def softening_apart(self, strain: float) -> SofteningGround:

@@ -78,6 +78,35 @@ def _softening() -> Iterator[VerificationCheck]:
             )
 
 
+def _order(strain: float, pressure: float) -> float:
+    """Observed order of convergence: halving the annuli's thickness divides what is still missing
+    by 2^order, so that two successive changes of the result have that ratio.
+
+    Holds where softening is gradual. Close to a sudden drop annuli cannot be thin enough, and the
+    small errors that are left fall more slowly.
+    """
+    coarse, middle, fine = (
+        wall_value(partial(SOFTER.softening, strain, annuli), pressure, "closure_ratio")
+        for annuli in (50, 100, 200)
+    )
+    return math.log2((middle - coarse) / (fine - middle))
+
+
+def _convergence() -> Iterator[VerificationCheck]:
+    for strain, pressure in ((0.01, 0.5), (0.05, 0.5)):
+        yield check(
+            "hoek_brown_softening",
+            f"critical strain {strain:g}, pi {pressure:g} MPa: order of convergence of u / R, "
+            "50, 100, 200 annuli",
+            f"error of second order in the thickness of the annuli; {SOFTENING}",
+            APART,
+            "",
+            0.15,
+            2.0,
+            partial(_order, strain, pressure),
+        )
+
+
 TABLE = (
     # dilation, small-strain u / R, finite-strain u / R
     (0, 0.10, 0.0871),
@@ -158,4 +187,9 @@ def _conserved(make: Callable[[], GroundCurve], pressure: float) -> float:
     return float(brentq(excess, 0, 1 - 1e-9, xtol=1e-15))
 
 
-SOFTENING_AND_FINITE_STRAIN_CHECKS = (*_limits(), *_softening(), *_finite_strain())
+SOFTENING_AND_FINITE_STRAIN_CHECKS = (
+    *_limits(),
+    *_softening(),
+    *_convergence(),
+    *_finite_strain(),
+)
