@@ -12,7 +12,6 @@ from tunnelcalc.results import CheckLine, Incident
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import Outcome
 
-
 NO_CLOSURE = "no closure that can be computed"
 ENDLESS_RING = "no closure that can be computed: without support the plastic zone has no end"
 

@@ -109,7 +109,6 @@ class TestCrownDeadWeight:
         assert found["check_reason"][0, at] == "unit_weight_kn_m3 is not given"
         assert not found["check_counts"][0, at]
 
-
     def test_the_water_on_a_watertight_lining_is_part_of_the_demand(self):
         wet = sections_of(gsi=25.0, water_head_m=20.0)
         found, (at,) = of_check(
