@@ -14,14 +14,17 @@ from tunnelcalc.outputs.cells import number_text, write_table
 from tunnelcalc.plugin.contract import (
     Amount,
     ClassCheck,
+    ClassCheckWithOptions,
     ClosureProfileMethod,
     Evaluation,
     GroundReactionMethod,
     GroundReader,
+    LiningCheck,
     Misfit,
     ModulusMethod,
     Parameter,
     ReportWriter,
+    RingKind,
     SectionFigure,
     SectionValues,
     SheetReader,
@@ -30,7 +33,7 @@ from tunnelcalc.plugin.contract import (
     SupportKind,
     ValidityFlag,
 )
-from tunnelcalc.plugin.flag import Condition, Flag
+from tunnelcalc.plugin.flag import Condition, Flag, NumberOfFlag
 from tunnelcalc.plugin.hooks import hookimpl
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project, SupportClass
@@ -43,6 +46,7 @@ from tunnelcalc.section_curves import (
     ReactionOfGround,
     SectionCurves,
     StrengthEnvelope,
+    ThrustAndMoment,
 )
 from tunnelcalc.sections import Sections, one_section
 from tunnelcalc.support.reaction import (
@@ -52,6 +56,7 @@ from tunnelcalc.support.reaction import (
     PressureOfClosure,
     Reaction,
 )
+from tunnelcalc.support.ring_section import RingSection
 from tunnelcalc.text import decoded
 from tunnelcalc.validity import PRACTICE, YES_OR_NO, Level, Side, Threshold
 from tunnelcalc.verification import Standing, VerificationCheck
@@ -66,6 +71,7 @@ __all__ = [
     "Array",
     "CaseCurves",
     "ClassCheck",
+    "ClassCheckWithOptions",
     "ClosureAlongDrive",
     "ClosureProfileMethod",
     "Condition",
@@ -82,8 +88,10 @@ __all__ = [
     "Level",
     "Limits",
     "LinearSpring",
+    "LiningCheck",
     "Misfit",
     "ModulusMethod",
+    "NumberOfFlag",
     "Parameter",
     "PressureOfClosure",
     "Problem",
@@ -95,6 +103,8 @@ __all__ = [
     "ReactionOfElement",
     "ReactionOfGround",
     "ReportWriter",
+    "RingKind",
+    "RingSection",
     "RunResult",
     "SectionCurves",
     "SectionFigure",
@@ -111,6 +121,7 @@ __all__ = [
     "SupportClass",
     "SupportKind",
     "Threshold",
+    "ThrustAndMoment",
     "ValidityFlag",
     "VerificationCheck",
     "Where",

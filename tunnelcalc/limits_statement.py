@@ -13,13 +13,24 @@ LIMITS = (
     "the law says otherwise. Stresses are effective only where a water head and the drainage of "
     "the lining are stated; seepage forces are always left out. The weight of the plastic zone "
     "counts only where the project says so.",
-    "Support elements are linear, act in parallel and never yield or break; each starts from the "
-    "closure of the unsupported opening at its own distance from the face. The effect of elements "
-    "installed earlier is neglected, and stiff support near the face carries more than is "
-    "computed. A factor of safety means something only while every element of the class holds.",
-    "Shotcrete is a ring closed through the invert, at the stated strength and stiffness from the "
-    "start: neither early age nor bending under unequal stress is checked. End-anchored bolts are "
-    "springs fixed in still ground, which overstates their load and relieves the other elements.",
+    "Support elements act in parallel, each from its own distance behind the face. They are linear "
+    "and never yield or break unless the project says so. Elements that do not age start from the "
+    "closure of the unsupported opening there: the effect of elements installed earlier is "
+    "neglected, and stiff support near the face carries more than is computed. Where an element "
+    "hardens with age, all count from the wall as it then stands. No creep or shrinkage: load is "
+    "overstated, closure understated. A factor of safety means something only while every element "
+    "of the class holds.",
+    "Shotcrete is a ring closed through the invert, from the start unless the project says where "
+    "it is closed, and at the stated strength and stiffness unless it names a law of hardening. "
+    "End-anchored bolts are springs fixed in still ground, which overstates their load and "
+    "relieves the other elements, unless their anchor is said to move. Fully grouted bolts make "
+    "the ground stronger in a ring from their installation on and carry nothing at the wall; "
+    "elements placed after them still start from the closure without them.",
+    "Bending of the lining under unequal stress is checked only where the project asks for it: as "
+    "a thin elastic ring of all parts at once, placed before the ground moves and brought to the "
+    "thrust at rest, so that the unequal load is assumed to fall as the mean does. Against an "
+    "elastic annulus of 0.06 of its radius the thin ring gave, bonded to the ground, 10 % less "
+    "swing of thrust and 5 % more moment, and with full slip 2.7 % less of both.",
     "Screened by flags, and not computed: blocks and wedges, face stability, spalling and rock "
     "burst, squeezing in time, swelling, portals, neighbouring openings, faults. Not examined at "
     "all: settlement, junctions, earthquakes, gas.",

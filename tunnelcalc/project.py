@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
@@ -9,6 +10,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.chainage import Notation
 from tunnelcalc.rock_mass.laboratory import IntactTests
 from tunnelcalc.sections import Sections
+from tunnelcalc.support.ring_section import RingSection
 from tunnelcalc.validity import FlagSettings
 
 DEFAULT_METHODS: Mapping[str, str] = {
@@ -54,6 +56,8 @@ class Element:
     label: str
     installed_at_m: float
     values: Mapping[str, float | str] = field(repr=False)
+    section: RingSection | None = field(default=None, repr=False)
+    """Of a ring, what its kind tells of its section; known once the checks are planned."""
 
     def number(self, parameter: str) -> float:
         """Value of a numeric parameter, in the parameter's unit."""
@@ -76,6 +80,8 @@ class SupportClass:
 
     name: str
     elements: tuple[Element, ...]
+    advance_m_per_day: float = math.nan
+    """Rate at which the face moves on; NaN where the project does not say."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -86,6 +92,8 @@ class Criteria:
     closure_pct: float
     chosen_checks: Mapping[str, bool] = field(default_factory=dict)
     """Checks of a class that count only by choice, where the project says yes or no."""
+    options: Mapping[str, float | str] = field(default_factory=dict)
+    """Options of the checks that were chosen, by name."""
 
 
 @dataclass(frozen=True, slots=True)

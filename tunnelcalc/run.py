@@ -16,7 +16,13 @@ from tunnelcalc.outputs.run_folder import Target, copy_inputs, part_folder, sync
 from tunnelcalc.outputs.tables import ChunkTables, write_sections
 from tunnelcalc.pipeline.chain import build_stages, kept_columns
 from tunnelcalc.pipeline.collect import item_totals, zones
-from tunnelcalc.pipeline.flags_stage import flag_counts, flag_value, screening_lines
+from tunnelcalc.pipeline.flags_stage import (
+    flag_counts,
+    flag_numbers,
+    flag_value,
+    flags_of,
+    screening_lines,
+)
 from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.pipeline.stage import check_chain, run_stages
@@ -80,7 +86,7 @@ def compute(
     """Compute a checked project and write its tables into an empty folder."""
     copy_inputs(folder, project.files)
     plan = plan_classes(project, registry)
-    flags = registry.flags(project.plugins)
+    flags = flags_of(project, registry)
     lines = screening_lines(flags, project.flags)
     flag_names = [flag.name for flag in flags]
     incidents = Incidents()
@@ -105,7 +111,14 @@ def compute(
     finally:
         tables.abandon()
     write_sections(folder, project, sections, flag_names)
-    write_flags(folder, project, sections, lines, lambda k: flag_value(flags[k], sections))
+    write_flags(
+        folder,
+        project,
+        sections,
+        lines,
+        lambda k: flag_value(flags[k], sections),
+        lambda k: flag_numbers(flags[k], sections),
+    )
     write_provenance(folder, project)
     quantities = item_totals(project, plan, sections, incidents)
     return write_reports(

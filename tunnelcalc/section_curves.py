@@ -91,6 +91,22 @@ class ReactionOfClass:
 
 
 @dataclass(frozen=True, slots=True)
+class ThrustAndMoment:
+    """Forces of a lining at angles from the springline to the crown, and what its section bears.
+
+    `angle_deg`, `thrust_mn_per_m` and `moment_mnm_per_m` (m,); `limit_thrust_mn_per_m` (k,),
+    rising, and `limit_moment_mnm_per_m` (k,), the moment that the section bears with it, of either
+    sign, without a factor of safety; straight in between.
+    """
+
+    angle_deg: Array
+    thrust_mn_per_m: Array
+    moment_mnm_per_m: Array
+    limit_thrust_mn_per_m: Array
+    limit_moment_mnm_per_m: Array
+
+
+@dataclass(frozen=True, slots=True)
 class CaseCurves:
     """Ground and support under one in-plane stress, one of `results.STRESS_CASES`."""
 
@@ -98,6 +114,8 @@ class CaseCurves:
     ground: ReactionOfGround
     profile: ClosureAlongDrive
     support: ReactionOfClass
+    lining: ThrustAndMoment | None = None
+    """Of a class whose lining is checked for thrust and moment."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -171,6 +171,21 @@ def _of_ground() -> tuple[Quantity, ...]:
         Quantity("water_head_m", "hw", "m", "water head above the axis", _NOT_NEGATIVE),
         Quantity("inflow_l_min_10m", "", "L/min/10m", "water inflow", _NOT_NEGATIVE),
         Quantity("joint_set_count", "", "", "number of joint sets", Limits(0, 20, whole=True)),
+        Quantity("joint_set_number", "Jn", "", "joint set number of the Q system", Limits(0.5, 20)),
+        Quantity(
+            "joint_roughness_number",
+            "Jr",
+            "",
+            "joint roughness number of the Q system",
+            Limits(0.5, 5),
+        ),
+        Quantity(
+            "excavation_support_ratio",
+            "ESR",
+            "",
+            "excavation support ratio of the Q system, by the use of the opening",
+            Limits(0.5, 5),
+        ),
         Quantity("joint_spacing_m", "", "m", "spacing of joints", _POSITIVE),
         Quantity("block_width_m", "", "m", "width of critical blocks", _POSITIVE),
         _choice("swelling_minerals", "swelling minerals", *_NONE_OR_PRESENT),
@@ -269,6 +284,26 @@ def _of_results() -> tuple[Quantity, ...]:
         Quantity("supported_closure_mm", "us", "mm", "closure with support"),
         Quantity("supported_closure_pct", "us/R", "%", "closure with support"),
         Quantity("supported_plastic_radius_m", "Rps", "m", "plastic radius with support"),
+        Quantity(
+            "first_failure_pressure_mpa",
+            "",
+            "MPa",
+            "of all elements, when the first is at its limit",
+        ),
+        Quantity(
+            "first_failure_closure_mm", "", "mm", "closure at which the first is at its limit"
+        ),
+        Quantity(
+            "full_mobilisation_pressure_mpa", "", "MPa", "greatest pressure that the class can give"
+        ),
+        Quantity("full_mobilisation_closure_mm", "", "mm", "closure at which it gives it"),
+        Quantity(
+            "missing_pressure_mpa",
+            "",
+            "MPa",
+            "what the class lacks, with its factor, of the pressure needed at the closure limit",
+        ),
+        Quantity("limit_pressure_mpa", "", "MPa", "pressure that the closure limit needs"),
         Quantity("factor_of_safety", "FS", "", "least capacity over demand of the load checks"),
         Quantity("needed_pressure_mpa", "", "MPa", "pressure at which closure meets its limit"),
         Quantity("length_m", "L", "m", "length of a zone"),
@@ -288,6 +323,16 @@ def _of_curves() -> tuple[Quantity, ...]:
         Quantity("face_distance_m", "x", "m", "distance from the face, positive behind it"),
         Quantity("profile_closure_mm", "", "mm", "closure without support, so far from the face"),
         Quantity("closure_share", "", "", "share of the closure far behind the face"),
+        Quantity("springline_angle_deg", "", "deg", "angle from the springline; 90 is the crown"),
+        Quantity(
+            "lining_thrust_mn_per_m", "N", "MN/m", "thrust of the lining, compression positive"
+        ),
+        Quantity(
+            "lining_moment_mnm_per_m",
+            "M",
+            "MN m/m",
+            "moment of the lining, positive with tension at the rock side",
+        ),
         Quantity("minor_stress_mpa", "s3", "MPa", "minor principal stress"),
         Quantity("major_stress_mpa", "s1", "MPa", "major principal stress at failure"),
         Quantity("line_major_stress_mpa", "", "MPa", f"major principal stress by {line}"),
@@ -342,6 +387,7 @@ WORDS = {
     "flag": "name of a flag on validity",
     "level": "clear, advisory, outside, not_assessed or overridden",
     "threshold": "where the levels of a flag begin",
+    "numbers": "the numbers behind the value of a flag, at chainage_m",
     "threshold_source": "publication, common practice or project setting",
     "meaning": "what a raised flag means",
     "remedy": "what to do about it",

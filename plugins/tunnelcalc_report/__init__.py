@@ -11,6 +11,7 @@ from tunnelcalc import api
 from tunnelcalc_report.closure_profile import ClosureProfileFigure
 from tunnelcalc_report.ground_reaction import GroundReactionFigure
 from tunnelcalc_report.strength import ShearStrengthFigure, StrengthEnvelopeFigure
+from tunnelcalc_report.thrust_moment import ThrustMomentFigure
 
 
 @api.hookimpl
@@ -19,3 +20,4 @@ def tunnelcalc_register_section_figures(register: Callable[[api.SectionFigure], 
     register(GroundReactionFigure())
     register(ShearStrengthFigure())
     register(StrengthEnvelopeFigure())
+    register(ThrustMomentFigure())

@@ -14,7 +14,12 @@ import numpy as np
 
 from tunnelcalc import api
 from tunnelcalc.api import Array, Element, Sections
-from tunnelcalc_rock_bolts.kind import EM_1110_1_2907, RockBolts
+from tunnelcalc_rock_bolts.parts import (
+    EM_1110_1_2907,
+    FRICTION_BOLTS,
+    GROUTED_BOLTS,
+    ROCK_BOLTS,
+)
 from tunnelcalc_rock_bolts.pattern_lines import rule_lines
 
 SPACINGS_IN_LENGTH = 2.0
@@ -41,7 +46,7 @@ class PatternRule:
     compare: Callable[[Sections, Element], api.Evaluation]
     formulas: Callable[[api.SectionValues], tuple[str, str]]
     """of demand and capacity on a calculation sheet"""
-    applies_to: tuple[str, ...] = (RockBolts.name,)
+    applies_to: tuple[str, ...] = (ROCK_BOLTS, FRICTION_BOLTS, GROUTED_BOLTS)
     unit: str = "m"
     carries_load: bool = False
 

@@ -122,11 +122,11 @@ def largest(values: np.ndarray, expected: np.ndarray) -> float:
     return float(np.max(np.abs(values / expected - 1)))
 
 
-def whole_run(sections: int, classes: int) -> tuple[float, float]:
+def whole_run(sections: int, classes: int, hardening: bool = False) -> tuple[float, float]:
     """Time [s] and peak memory [MB] of the command line on a project, files written."""
     with tempfile.TemporaryDirectory() as folder:
         project = Path(folder) / "project"
-        write_project(project, sections, classes)
+        write_project(project, sections, classes, hardening)
         command = [sys.executable, "-m", "tunnelcalc", "run", str(project)]
         start = time.perf_counter()
         with subprocess.Popen(command, stdout=subprocess.DEVNULL) as process:

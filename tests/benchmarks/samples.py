@@ -35,7 +35,9 @@ def curve(ground: dict[str, np.ndarray]) -> HoekBrownCurve:
     return HoekBrownCurve.of_ground(**ground)
 
 
-def write_project(folder: Path, sections: int, classes: int = CLASS_COUNT) -> None:
+def write_project(
+    folder: Path, sections: int, classes: int = CLASS_COUNT, hardening: bool = False
+) -> None:
     """A project of sections of 10 m; beyond 10,000 intervals each is cut into several."""
     folder.mkdir(parents=True)
     intervals = min(sections, 10_000)
@@ -64,22 +66,24 @@ def write_project(folder: Path, sections: int, classes: int = CLASS_COUNT) -> No
         "support_classes:",
     ]
     for number in range(classes):
-        lines += _support_class(number)
+        lines += _support_class(number, hardening)
     (folder / "project.yaml").write_text("\n".join(lines) + "\n", encoding="utf-8")
 
 
-def _support_class(number: int) -> list[str]:
+def _support_class(number: int, hardening: bool) -> list[str]:
+    age = ", hardening: chang_stille_1993" if hardening else ""
     spacing = 1.8 - 0.15 * number
     return [
         f"  - name: C{number + 1}",
         f"    installed_at_m: {3 - 0.4 * number}",
+        *(["    advance_m_per_day: 3"] if hardening else []),
         "    elements:",
         f"      - {{kind: rock_bolts, diameter_mm: 25, length_m: {4 + number}, "
         f"spacing_around_m: {spacing}, spacing_along_m: {spacing}, capacity_kn: 200, "
         "steel_modulus_gpa: 200, anchor_deformation_m_per_mn: 0.04, anchorage_length_m: 1, "
         "pattern_rules: em_1110_1_2907}",
         f"      - {{kind: shotcrete, thickness_mm: {80 + 60 * number}, strength_mpa: 30, "
-        "modulus_gpa: 10, poisson_ratio: 0.2}",
+        f"modulus_gpa: 10, poisson_ratio: 0.2{age}}}",
         "      - {kind: steel_sets, installed_at_m: 8, section_area_mm2: 4300, "
         "section_inertia_mm4: 14500000, section_depth_mm: 140, yield_strength_mpa: 355, "
         f"steel_modulus_gpa: 200, spacing_m: {1.5 - 0.1 * number}, contact: embedded}}",

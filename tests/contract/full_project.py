@@ -83,6 +83,9 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
                 "factor_of_safety": 1.5,
                 "closure_pct": 1,
                 "crown_dead_weight": "yes",
+                "composite_lining": "yes",
+                "lining_interface": "full_slip",
+                "lining_tensile_strength_mpa": 2,
             },
             "schedule": {"minimum_zone_m": 20, "carry_m": 5},
             "flags": {
@@ -105,11 +108,12 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
 
 
 def element(kind_name: str) -> dict[str, Any]:
-    """An element with every parameter, at the middle of its range; the last choice is made."""
+    """An element at the middle of every range; the last choice is made that leaves room for
+    further parameters. What has no use with the choices is left out."""
     made: dict[str, Any] = {"kind": kind_name, "installed_at_m": 1}
     for parameter in REGISTRY.support_kind(kind_name).parameters:
         if parameter.only_if is not None:
-            made[parameter.only_if[0]] = parameter.only_if[1]
+            made[parameter.only_if[0]] = parameter.only_if[1][-1]
         limits = parameter.limits
         made[parameter.name] = made.get(
             parameter.name,
@@ -117,6 +121,11 @@ def element(kind_name: str) -> dict[str, Any]:
             if parameter.choices
             else (max(limits.minimum, 0) + min(limits.maximum, 1e6)) / 2,
         )
+    for parameter in REGISTRY.support_kind(kind_name).parameters:
+        if parameter.only_if is not None:
+            other, words = parameter.only_if
+            if made.get(other) not in words:
+                del made[parameter.name]
     return made
 
 

@@ -23,6 +23,12 @@ PNG = b"\x89PNG\r\n\x1a\n"
 def curves(tmp_path_factory):
     folder = write_project(tmp_path_factory.mktemp("figures") / "project")
     replaced("units.csv", "siltstone,25.5,0.9", "siltstone,25.5,1.6")(folder)
+    lining = (
+        "  closure_pct: 1.0\n  composite_lining: yes\n  lining_interface: no_slip\n"
+        "  lining_tensile_strength_mpa: 2\n"
+    )
+    replaced("project.yaml", "  closure_pct: 1.0\n", lining)(folder)
+    replaced("units.csv", "gouge,22,,", "gouge,22,1,")(folder)
     return curves_at(read_project(folder, REGISTRY), REGISTRY, "57")
 
 
@@ -53,7 +59,7 @@ def test_a_figure_of_nothing_is_not_drawn_or_says_so(figure, curves, tmp_path):
             dataclasses.replace(part, **{name: np.full_like(getattr(part, name), np.nan)})
             for part, name in ((case.ground, "closure_mm"), (case.profile, "closure_mm"))
         )
-        nothing.append(dataclasses.replace(case, ground=ground, profile=profile))
+        nothing.append(dataclasses.replace(case, ground=ground, profile=profile, lining=None))
     empty = dataclasses.replace(curves, cases=tuple(nothing), envelopes=())
     names = tuple(figure.draw(empty, tmp_path))
     assert sorted(path.name for path in tmp_path.iterdir()) == sorted(names)

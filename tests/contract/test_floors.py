@@ -33,7 +33,10 @@ FLOORS = (
     ("project", "results", "section_curves"),
     ("plugin", "pipeline", "outputs"),
     ("inputs", "api"),
-    ("run", "curves", "one_section", "explain", "schema", "starter", "builtin", *PLUGINS),
+    (
+        *("run", "curves", "one_section", "explain", "schema", "starter", "testing", "tune"),
+        *("builtin", *PLUGINS),
+    ),
     ("cli", "__main__"),
 )
 FLOOR_OF = {room: floor for floor, rooms in enumerate(FLOORS) for room in rooms}
@@ -106,6 +109,7 @@ def test_a_numerical_room_knows_no_file_screen_or_plugin(module):
         pytest.param("yaml", {"inputs"}, id="yaml"),
         pytest.param("pluggy", {"plugin"}, id="pluggy"),
         pytest.param("matplotlib", {"tunnelcalc_report"}, id="matplotlib"),
+        pytest.param("pytest", {"testing"}, id="pytest"),
     ],
 )
 def test_a_library_is_known_to_one_room_alone(library, rooms):
@@ -123,5 +127,6 @@ def test_a_plugin_imports_of_ours_the_api_and_its_own_package_alone(module):
 
 def test_the_program_needs_no_library_beyond_those_it_declares():
     declared = {"matplotlib", "numpy", "openpyxl", "pluggy", "python_ags4", "rich", "scipy", "yaml"}
-    needed = set().union(*(outside(module) for module in IMPORTS))
+    # `tunnelcalc.testing` is for test suites, which have their pytest.
+    needed = set().union(*(outside(module) for module in IMPORTS)) - {"pytest"}
     assert needed - sys.stdlib_module_names == declared

@@ -134,6 +134,8 @@ BROKEN = {
     "method-of-a-list": set_at("methods", {"strength": ["mohr_coulomb"]}),
     "drainage-of-another-sort": set_at("ground", "drainage", "partly"),
     "dead-weight-perhaps": set_at("criteria", "crown_dead_weight", "perhaps"),
+    "lining-without-its-options": set_at("criteria", "composite_lining", "yes"),
+    "options-of-a-lining-that-is-not-chosen": set_at("criteria", "lining_interface", "no_slip"),
     "water-on-lining-by-choice": set_at("criteria", "water_on_lining", "yes"),
     "residual-of-another": set_at("ground", "estimates", {"residual_gsi": ["rmr89_dry"]}),
     "plugin-unknown": set_at("plugins", ["no_such_plugin"]),

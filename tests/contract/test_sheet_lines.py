@@ -6,16 +6,18 @@ import textwrap
 
 import numpy as np
 import pytest
-from contract.elements import elements_of, sections_for_checks
 from contract.test_developers_example import printed_block
-from unit.plugin.strangers import own_points
 
-from tunnelcalc import api
-from tunnelcalc.plugin.isolation import contained_spring
-from tunnelcalc.plugin.registry import load_plugins
-from tunnelcalc.plugin.sheet_contract import ElementLines, ValueLines
+from tunnelcalc import api, testing
+from tunnelcalc.plugin.sheet_contract import ClassLines, ElementLines
+from tunnelcalc.testing.class_checks import applies, ways_of
+from tunnelcalc.testing.reactions import capacity_of
 
-REGISTRY = load_plugins(own_points())
+CHECKED = testing.CheckConformance()
+CHECKED.offers = testing.offers_of("tunnelcalc")
+OF_CLASSES = testing.ClassCheckConformance()
+OF_CLASSES.offers = CHECKED.offers
+REGISTRY = CHECKED.offers.registry
 SECTION = 2
 """One of the radii, neither the smallest nor the largest."""
 
@@ -28,24 +30,31 @@ def named(offered, element):
 ELEMENTS = [
     pytest.param(offer.thing, element, id=named(offer.thing, element))
     for offer in REGISTRY.of_sort("support_kind")
-    for element in elements_of(offer.thing)
+    for element in CHECKED.elements_of(offer.thing)
 ]
 CHECKS = [
-    pytest.param(offer.thing, element, id=named(offer.thing, element))
-    for offer in REGISTRY.of_sort("support_check")
-    for kind in offer.thing.applies_to
-    for element in elements_of(REGISTRY.support_kind(kind))
-    if offer.thing.concerns(element)
+    pytest.param(check, element, id=named(check, element)) for check, element in CHECKED.pairs()
 ]
+OF_CLASS = [
+    pytest.param(check, members, id=f"{check.name}-{number}-{place}")
+    for offer in REGISTRY.of_sort("class_check")
+    for number, check in enumerate(ways_of(offer.thing))
+    for place, members in enumerate(OF_CLASSES.classes())
+    if applies(check, members)
+]
+
+
+def values_of(section):
+    return {
+        name: column[0] if column.dtype == object else float(column[0])
+        for name, column in section.items()
+    }
 
 
 def one(element):
     """One section at rest, and its values."""
-    sections = sections_for_checks(0.1, 1.0)
-    spring = contained_spring(REGISTRY.support_kind(element.kind), sections, element)
-    sections = sections.with_columns({"element_capacity_mpa": spring.values[1]})
-    section = sections.take(np.array([SECTION]))
-    return section, {name: float(column[0]) for name, column in section.items()}
+    section = CHECKED.given(element).take(np.array([SECTION]))
+    return section, values_of(section)
 
 
 def last(lines, symbol):
@@ -61,9 +70,10 @@ def test_the_lines_of_a_kind_give_its_stiffness_and_capacity(kind, element):
     section, values = one(element)
     assert isinstance(kind, ElementLines)
     lines = kind.lines(values, element)
-    spring = kind.reaction(section, element)
-    assert last(lines, "K") == spring.stiffness_mpa_per_m[0]
-    assert last(lines, "pmax") == spring.capacity_mpa[0]
+    reaction = kind.reaction(section, element)
+    if isinstance(reaction, api.LinearSpring):
+        assert last(lines, "K") == reaction.stiffness_mpa_per_m[0]
+    assert last(lines, "pmax") == capacity_of(reaction)[0]
     assert agree(lines)
     assert all(line.formula and line.source for line in lines)
 
@@ -83,26 +93,27 @@ def test_the_lines_of_a_check_give_its_demand_and_capacity(check, element):
 @pytest.mark.parametrize("span_m", [1.0, 5.999, 6.0, 11.0, 18.0, 18.001, 30.0])
 def test_the_rule_on_span_has_a_formula_for_every_span(span_m):
     rule = REGISTRY.find("support_check", "pattern_length_by_span")
-    (element,) = [e for e in elements_of(REGISTRY.support_kind("rock_bolts")) if rule.concerns(e)]
+    element = next(e for check, e in CHECKED.pairs() if check is rule)
     values = {**one(element)[1], "span_m": span_m}
     assert agree(rule.lines(values, element))
 
 
 def test_a_rule_that_leaves_a_section_out_has_no_lines():
     rule = REGISTRY.find("support_check", "pattern_length_by_block")
-    (element,) = [e for e in elements_of(REGISTRY.support_kind("rock_bolts")) if rule.concerns(e)]
+    element = next(e for check, e in CHECKED.pairs() if check is rule)
     assert rule.lines({**one(element)[1], "block_width_m": np.nan}, element) == ()
 
 
-@pytest.mark.parametrize("offer", list(REGISTRY.of_sort("class_check")), ids=lambda o: o.name)
-def test_the_lines_of_a_check_of_a_class_give_its_demand_and_capacity(offer):
-    section = sections_for_checks(0.1, 1.0).take(np.array([SECTION]))
-    more = {"class_capacity_mpa": 0.7, "ring_capacity_mpa": 0.4, "lining_water_mpa": 0.3}
-    section = section.with_columns({name: np.array([value]) for name, value in more.items()})
-    values = {name: float(column[0]) for name, column in section.items()}
-    assert isinstance(offer.thing, ValueLines)
-    lines = offer.thing.lines(values)
-    found = offer.thing.evaluate(section)
+@pytest.mark.parametrize(("check", "members"), OF_CLASS)
+def test_the_lines_of_a_check_of_a_class_give_its_demand_and_capacity(check, members):
+    section = OF_CLASSES.given(members).take(np.array([SECTION]))
+    section = section.with_columns({"lining_water_mpa": np.array([0.3])})
+    assert isinstance(check, ClassLines)
+    lines = check.lines(values_of(section), members)
+    found = check.evaluate(section, members)
+    if found.left_out is not None and found.left_out[0]:
+        assert lines == ()
+        return
     assert last(lines, "demand") == found.demand[0]
     assert last(lines, "capacity") == found.capacity[0]
     assert agree(lines)

@@ -10,6 +10,7 @@ from tunnelcalc.outputs.curve_tables import (
     GROUND_REACTION_HEADER,
     STRENGTH_ENVELOPE_HEADER,
     SUPPORT_REACTION_HEADER,
+    THRUST_MOMENT_HEADER,
 )
 from tunnelcalc.outputs.flags_table import FLAGS_HEADER
 from tunnelcalc.outputs.tables import CHECK_HEADER, CLASS_HEADER, OPTIONAL_COLUMNS, SECTION_COLUMNS
@@ -27,6 +28,7 @@ OUTPUT = {
     "ground_reaction.csv": GROUND_REACTION_HEADER,
     "closure_profile.csv": CLOSURE_PROFILE_HEADER,
     "support_reaction.csv": SUPPORT_REACTION_HEADER,
+    "thrust_moment.csv": THRUST_MOMENT_HEADER,
     "strength_envelope.csv": STRENGTH_ENVELOPE_HEADER,
 }
 COLUMNS = sorted({name for header in OUTPUT.values() for name in header})
@@ -40,6 +42,8 @@ UNITS = {
     "_pct": "%",
     "_mm": "mm",
     "_cm3": "cm3",
+    "_mn_per_m": "MN/m",
+    "_mnm_per_m": "MN m/m",
     "_m": "m",
 }
 """The unit at the end of a name."""
@@ -84,6 +88,9 @@ GROUND_COLUMNS = {
     "water_head_m",
     "inflow_l_min_10m",
     "joint_set_count",
+    "joint_set_number",
+    "joint_roughness_number",
+    "excavation_support_ratio",
     "joint_spacing_m",
     "block_width_m",
     "swelling_minerals",

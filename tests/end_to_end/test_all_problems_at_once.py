@@ -26,7 +26,8 @@ ALL = [
         'project.yaml:26:9: key "support_classes[2].elements[1].kind" names "shotcreet", '
         "a kind of support that no plugin handles"
     ),
-    "  allowed: rock_bolts or shotcrete or steel_sets",
+    "  allowed: friction_bolts or grouted_rock_bolts or lattice_girders or rock_bolts or "
+    "shotcrete or steel_sets",
     '  fix: did you mean "shotcrete"?',
     'project.yaml:41:3: key "criteria.closure_pct" holds "1,0", which is not a number',
     "  allowed: a number above 0, at most 100, in %",

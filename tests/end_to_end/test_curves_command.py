@@ -57,7 +57,7 @@ def project(tmp_path: Path) -> Path:
     return write_project(tmp_path / "project")
 
 
-def without_figures() -> Registry:
+def without_figures(**_: object) -> Registry:
     """The installed plugins but the one that draws: tables alone take no time."""
     return load_plugins(
         [point for point in entry_points(group="tunnelcalc") if point.name != "report"]

@@ -87,16 +87,18 @@ CASES: dict[str, Case] = {
     "plugin-misspelt": (
         replaced("project.yaml", "support_classes:\n", "plugins: [shotcret]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "shotcret", a plugin that is not there',
-        "  allowed: ags_reader, class_checks, csv_reader, methods, report, rock_bolts, "
-        "schedule_tables, shotcrete, steel_sets, validity_flags, verification_checks, xlsx_reader",
+        "  allowed: ags_reader, class_checks, composite_lining, csv_reader, empirical, methods, "
+        "report, rock_bolts, schedule_tables, shotcrete, steel_sets, validity_flags, "
+        "verification_checks, xlsx_reader",
         '  fix: did you mean "shotcrete"?',
     ),
     "plugin-unknown": (
         replaced("project.yaml", "support_classes:\n", "plugins: [ice_lenses]\nsupport_classes:\n"),
         'project.yaml:9:11: key "plugins" names "ice_lenses", a plugin that is not there',
-        "  allowed: ags_reader, class_checks, csv_reader, methods, report, rock_bolts, "
-        "schedule_tables, shotcrete, steel_sets, validity_flags, verification_checks, xlsx_reader",
-        "  fix: install it, or remove the entry",
+        "  allowed: ags_reader, class_checks, composite_lining, csv_reader, empirical, methods, "
+        "report, rock_bolts, schedule_tables, shotcrete, steel_sets, validity_flags, "
+        "verification_checks, xlsx_reader",
+        "  fix: install it, name its file with --plugin-file, or remove the entry",
     ),
     "class-key-missing": (
         replaced("project.yaml", "        capacity_kn: 150\n", ""),
@@ -110,7 +112,8 @@ CASES: dict[str, Case] = {
             'project.yaml:26:9: key "support_classes[2].elements[1].kind" names '
             '"shotcreet", a kind of support that no plugin handles'
         ),
-        "  allowed: rock_bolts or shotcrete or steel_sets",
+        "  allowed: friction_bolts or grouted_rock_bolts or lattice_girders or rock_bolts or "
+        "shotcrete or steel_sets",
         '  fix: did you mean "shotcrete"?',
     ),
     "kind-unknown": (
@@ -119,7 +122,8 @@ CASES: dict[str, Case] = {
             'project.yaml:26:9: key "support_classes[2].elements[1].kind" names "timber", '
             "a kind of support that no plugin handles"
         ),
-        "  allowed: rock_bolts or shotcrete or steel_sets",
+        "  allowed: friction_bolts or grouted_rock_bolts or lattice_girders or rock_bolts or "
+        "shotcrete or steel_sets",
         "  fix: install the plugin that offers it",
     ),
     "embedded-set-with-blocks": (
@@ -220,7 +224,7 @@ CASES: dict[str, Case] = {
         "  allowed: a list",
         "  fix: add it",
         'project.yaml:25:5: key "support_classes[2].parts" is unknown',
-        "  allowed: name, installed_at_m, elements",
+        "  allowed: name, installed_at_m, advance_m_per_day, elements",
         "  fix: remove it, or correct its name",
     ),
 }

@@ -36,7 +36,7 @@ def test_a_project_that_names_a_removed_kind_is_told_which(project: Path):
     assert problems_without("steel_sets", project) == [
         'project.yaml:31:9: key "support_classes[2].elements[2].kind" names "steel_sets", a kind '
         "of support that no plugin handles\n"
-        "  allowed: rock_bolts or shotcrete\n"
+        "  allowed: friction_bolts or grouted_rock_bolts or rock_bolts or shotcrete\n"
         "  fix: install the plugin that offers it"
     ]
 

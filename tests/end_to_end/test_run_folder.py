@@ -66,7 +66,12 @@ def test_the_manifest_says_with_what_and_how_the_run_was_made(finished: Path):
         "closure_profile",
     }
     assert told["options"] == {"strict": False, "chunk_sections": 2048}
-    assert told["criteria"] == {"factor_of_safety": 1.5, "closure_pct": 1.0, "chosen_checks": {}}
+    assert told["criteria"] == {
+        "factor_of_safety": 1.5,
+        "closure_pct": 1.0,
+        "chosen_checks": {},
+        "options": {},
+    }
     assert told["schedule"] == {"minimum_zone_m": 20.0, "carry_m": 5.0}
     assert told["counts"]["sections"] == 16
     assert told["counts"]["sections_without_adequate_class"] == 3

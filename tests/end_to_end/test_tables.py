@@ -30,6 +30,8 @@ HEADERS = {
     "classes.csv": (
         "chainage_m,support_class,stress_case,installation_closure_mm,support_pressure_mpa,"
         "supported_closure_mm,supported_closure_pct,supported_plastic_radius_m,"
+        "first_failure_pressure_mpa,first_failure_closure_mm,full_mobilisation_pressure_mpa,"
+        "full_mobilisation_closure_mm,missing_pressure_mpa,"
         "factor_of_safety,governing_check,adequate"
     ),
     "checks.csv": (

@@ -30,7 +30,7 @@ class CrownDeadWeight:
     def concerns(self, project: Project) -> bool:
         return True
 
-    def evaluate(self, sections: Sections) -> Evaluation:
+    def evaluate(self, sections: Sections, elements: tuple[api.Element, ...]) -> Evaluation:
         weight = plastic_zone_weight_mpa(
             sections["unit_weight_kn_m3"],
             sections["supported_plastic_radius_m"],
@@ -44,8 +44,10 @@ class CrownDeadWeight:
             "unit_weight_kn_m3 is not given",
         )
 
-    def lines(self, values: api.SectionValues) -> Sequence[api.SheetLine]:
-        found = self.evaluate(api.one_section(values))
+    def lines(
+        self, values: api.SectionValues, elements: tuple[api.Element, ...]
+    ) -> Sequence[api.SheetLine]:
+        found = self.evaluate(api.one_section(values), elements)
         symbols = {
             "gamma": "unit_weight_kn_m3",
             "Rps": "supported_plastic_radius_m",
@@ -80,10 +82,12 @@ class WaterOnLining:
     def concerns(self, project: Project) -> bool:
         return project.drainage == WATERTIGHT
 
-    def evaluate(self, sections: Sections) -> Evaluation:
+    def evaluate(self, sections: Sections, elements: tuple[api.Element, ...]) -> Evaluation:
         return Evaluation(sections["lining_water_mpa"], sections["ring_capacity_mpa"])
 
-    def lines(self, values: api.SectionValues) -> Sequence[api.SheetLine]:
+    def lines(
+        self, values: api.SectionValues, elements: tuple[api.Element, ...]
+    ) -> Sequence[api.SheetLine]:
         work = _working(values, {"uw": "lining_water_mpa", "pmax_rings": "ring_capacity_mpa"})
         demand, capacity = work.known["uw"], work.known["pmax_rings"]
         work.add("demand", "water pressure on the lining", "uw", demand, "MPa")

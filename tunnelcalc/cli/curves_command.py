@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from pathlib import Path
 
 from tunnelcalc.cli.screen import console, metres, rounded, row, table
@@ -19,9 +20,16 @@ NUMERIC = (
 )
 
 
-def curves(project: Path, at: str, class_name: str | None, out: Path | None) -> ExitCode:
+def curves(
+    project: Path,
+    at: str,
+    class_name: str | None,
+    out: Path | None,
+    plugin_files: Sequence[Path] = (),
+) -> ExitCode:
     """Write the curves of a section, and tell what they come to."""
-    shown = show_section(project, load_plugins(), at, class_name=class_name, out=out)
+    registry = load_plugins(files=plugin_files)
+    shown = show_section(project, registry, at, class_name=class_name, out=out)
     _print(shown)
     return shown.exit_code
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import sys
+from collections.abc import Sequence
 from dataclasses import replace
 from pathlib import Path
 
@@ -15,11 +16,17 @@ from tunnelcalc.outputs.sheet_text import FORMS, MARKS, sheet_text
 from tunnelcalc.plugin.registry import load_plugins
 
 
-def explain(run: Path, at: str, class_name: str | None, out: Path | None) -> ExitCode:
+def explain(
+    run: Path,
+    at: str,
+    class_name: str | None,
+    out: Path | None,
+    plugin_files: Sequence[Path] = (),
+) -> ExitCode:
     """Print the sheet, or write it. Ends with 5 where it does not agree with the run."""
     file = None if out is None else _file(out)
     try:
-        sheet = explained(run, at, class_name, load_plugins())
+        sheet = explained(run, at, class_name, load_plugins(files=plugin_files))
     except InputError as error:
         raise InputError(tuple(_in_run(run, problem) for problem in error.problems)) from error
     if file is None:

@@ -88,6 +88,25 @@ def build_parser() -> argparse.ArgumentParser:
         help="write it there, as .md, .csv or .json; an earlier sheet is replaced",
     )
 
+    tune = commands.add_parser(
+        "tune", help="find what would make a class adequate where none is, within your bounds"
+    )
+    tune.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+    tune.add_argument(
+        "--vary",
+        action="append",
+        required=True,
+        metavar="ELEMENT.PARAMETER=LOW:HIGH",
+        help="a parameter and its bounds, as shotcrete.thickness_mm=150:500; installed_at_m=0.5:8 "
+        "moves the whole class; may be given several times",
+    )
+    tune.add_argument(
+        "--class", dest="class_name", metavar="NAME", help="the class; without it the heaviest"
+    )
+    tune.add_argument(
+        "--out", type=Path, metavar="DIR", help="folder for the tables; must be absent or empty"
+    )
+
     curves = commands.add_parser(
         "curves", help="write the curves of one section as tables and figures"
     )
@@ -110,7 +129,23 @@ def build_parser() -> argparse.ArgumentParser:
 
     stages = commands.add_parser("stages", help="explain the chain of stages of a project")
     stages.add_argument("project", type=Path, metavar="PROJECT", help="folder with project.yaml")
+
+    for name, command in commands.choices.items():
+        if name != "new":
+            _add_plugin_files(command)
     return parser
+
+
+def _add_plugin_files(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "--plugin-file",
+        type=Path,
+        action="append",
+        default=[],
+        metavar="FILE",
+        help="load this Python file as a plugin, named by its stem; it runs with your rights, so "
+        "name only a file that you trust; may be given again",
+    )
 
 
 def _add_report_options(command: argparse.ArgumentParser) -> None:
@@ -189,14 +224,15 @@ def _reported(options: argparse.Namespace) -> ExitCode:
 
 
 def _command(options: argparse.Namespace, report: Report) -> ExitCode:
+    files: Sequence[Path] = getattr(options, "plugin_file", ())
     if options.command == "run":
         from tunnelcalc.cli.run_command import run
 
-        return run(options.project, options.out, options.strict, options.chunk, report)
+        return run(options.project, options.out, options.strict, options.chunk, report, files)
     if options.command == "validate":
         from tunnelcalc.cli.validate_command import validate
 
-        return validate(options.project, report)
+        return validate(options.project, report, files)
     if options.command == "new":
         from tunnelcalc.cli.new_command import new
 
@@ -204,23 +240,27 @@ def _command(options: argparse.Namespace, report: Report) -> ExitCode:
     if options.command == "schema":
         from tunnelcalc.cli.schema_command import schema
 
-        return schema(options.out)
+        return schema(options.out, files)
+    if options.command == "tune":
+        from tunnelcalc.cli.tune_command import advise
+
+        return advise(options.project, options.vary, options.class_name, options.out, files)
     if options.command == "curves":
         from tunnelcalc.cli.curves_command import curves
 
-        return curves(options.project, options.at, options.class_name, options.out)
+        return curves(options.project, options.at, options.class_name, options.out, files)
     if options.command == "verification":
         from tunnelcalc.cli.verification_command import verification
 
-        return verification()
+        return verification(files)
     if options.command == "explain":
         from tunnelcalc.cli.explain_command import explain
 
-        return explain(options.run, options.at, options.class_name, options.out)
+        return explain(options.run, options.at, options.class_name, options.out, files)
     if options.command == "stages":
         from tunnelcalc.cli.stages_command import stages
 
-        return stages(options.project)
+        return stages(options.project, files)
     from tunnelcalc.cli.plugins_command import plugins
 
-    return plugins()
+    return plugins(files)

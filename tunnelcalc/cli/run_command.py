@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import os
 import sys
+from collections.abc import Sequence
 from contextlib import nullcontext
 from pathlib import Path
 from typing import Any
@@ -30,10 +31,15 @@ WIDE_SCREEN = 100
 
 
 def run(
-    project: Path, out: Path | None, strict: bool, chunk: int | None, report: Report
+    project: Path,
+    out: Path | None,
+    strict: bool,
+    chunk: int | None,
+    report: Report,
+    plugin_files: Sequence[Path] = (),
 ) -> ExitCode:
     """Run a project; the summary goes to standard output, progress to standard error."""
-    registry = load_plugins()
+    registry = load_plugins(files=plugin_files)
     bar = Progress(
         TextColumn("sections"),
         BarColumn(),

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from pathlib import Path
 
 from tunnelcalc.errors import ExitCode
@@ -13,9 +14,9 @@ from tunnelcalc.pipeline.stage import check_chain
 from tunnelcalc.plugin.registry import load_plugins
 
 
-def stages(path: Path) -> ExitCode:
+def stages(path: Path, plugin_files: Sequence[Path] = ()) -> ExitCode:
     """Print each stage with what it needs and gives, after proving that the chain holds."""
-    registry = load_plugins()
+    registry = load_plugins(files=plugin_files)
     project = read_project(path, registry)
     chain = build_stages(project, registry, plan_classes(project, registry), Incidents())
     check_chain(chain, project.ground)

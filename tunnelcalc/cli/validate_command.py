@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from pathlib import Path
 
 from tunnelcalc.cli.problem_report import Report
@@ -10,9 +11,9 @@ from tunnelcalc.inputs.project_file import read_project
 from tunnelcalc.plugin.registry import load_plugins
 
 
-def validate(path: Path, report: Report) -> ExitCode:
+def validate(path: Path, report: Report, plugin_files: Sequence[Path] = ()) -> ExitCode:
     """Say what a project holds. Raises `InputError` with its problems."""
-    project = read_project(path, load_plugins())
+    project = read_project(path, load_plugins(files=plugin_files))
     outcome = {
         "sections": project.ground.count,
         "support_classes": list(project.class_names),

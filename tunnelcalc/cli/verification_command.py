@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+from pathlib import Path
+
 from tunnelcalc.cli.screen import console, row, table
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.verification import verified
 
 
-def verification() -> ExitCode:
+def verification(plugin_files: Sequence[Path] = ()) -> ExitCode:
     """Print the table; a difference beyond its tolerance ends with its own exit code."""
-    registry = load_plugins()
+    registry = load_plugins(files=plugin_files)
     screen = console()
     numeric = ("expected", "computed", "difference")
     made = table(

@@ -9,7 +9,13 @@ from typing import Any
 
 from tunnelcalc.calculation.line import SheetBlock, SheetLine
 from tunnelcalc.calculation.working import Working
-from tunnelcalc.explain.class_sums import DEFINITION, add_capacities, add_water
+from tunnelcalc.explain.class_sums import (
+    DEFINITION,
+    add_capacities,
+    add_water,
+    manner,
+    share_formula,
+)
 from tunnelcalc.explain.offered import Lines, differ, last, lines_of, method_lines, plugin_of
 from tunnelcalc.explain.section import ComputedSection, StressCase
 from tunnelcalc.outputs.cells import number_text
@@ -18,17 +24,26 @@ from tunnelcalc.pipeline.class_evaluation import (
     CheckRow,
     Evaluated,
     class_capacities,
+    element_columns,
     element_water_mpa,
+    ring_pressure_mpa,
 )
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass, PlannedElement
 from tunnelcalc.plugin.contract import ClassCheck, SectionValues, SupportCheck
+from tunnelcalc.support.reaction import GroundRing
 
 SPRINGS = (
     "elements in parallel, each from its own closure at installation: Hoek & Brown (1980), "
     "Carranza-Torres & Fairhurst (2000)"
 )
 ZERO_PRESSURE = 0.0
+
+
+RING_NOTE = (
+    "bolts change the ground in a ring from their installation on: its curve is that of the law "
+    "with the ring, less the movement before; only its results stand here"
+)
 
 
 @dataclass(slots=True)
@@ -114,18 +129,25 @@ class CaseBlocks:
         kind = item.kind
         who = f"plugin {plugin_of(self.section, 'support_kind', kind.name)}, {kind.meaning}"
         lines, more = lines_of(kind, who, lambda thing: thing.lines(values, element))
-        stiffness, capacity = (float(row[0]) for row in found.springs[position].values)
+        stiffness, capacity = (
+            float(row[0])
+            for row in (
+                found.responses[position].stiffness_mpa_per_m,
+                found.responses[position].capacity_mpa,
+            )
+        )
         what = f"{planned.support_class.name}, {element.label}"
-        self._compare(lines, "K", stiffness, f"stiffness of {what}")
+        if math.isfinite(stiffness):
+            self._compare(lines, "K", stiffness, f"stiffness of {what}")
         self._compare(lines, "pmax", capacity, f"capacity of {what}")
         shown = [*lines]
         for symbol, meaning, value, unit in (
             ("K", "stiffness", stiffness, "MPa/m"),
             ("pmax", "capacity", capacity, "MPa"),
         ):
-            if last(lines, symbol) is None:
+            if last(lines, symbol) is None and math.isfinite(value):
                 shown.append(SheetLine(symbol, meaning, "", {}, value, unit, who))
-        reason = str(found.springs[position].reason[0])
+        reason = str(found.responses[position].reason[0])
         notes = (*notes, *more, *((reason,) if reason else ()))
         title = f"Class {what}, installed {number_text(element.installed_at_m)} m behind the face"
         return SheetBlock(title + self.title, (x, *share_lines, *work.lines, *shown), notes)
@@ -140,6 +162,8 @@ class CaseBlocks:
                 title, (), ("ground and support have no equilibrium that can be computed",)
             )
         lines, notes = self._law(pressure, "at rest")
+        if any(isinstance(r.reaction, GroundRing) for r in found.responses):
+            lines, notes = (), (RING_NOTE,)
         start = SheetLine(
             "p_i",
             "support pressure at rest, root of the last line",
@@ -157,12 +181,16 @@ class CaseBlocks:
         terms = []
         for position, item in enumerate(planned.elements):
             own = f"_{position + 1}"
-            stiffness = float(found.springs[position].values[0, 0])
-            installed = float(found.installed_m[position, 0]) * MM_PER_M
-            work.known |= {f"K{own}": stiffness, f"u_i{own}": installed}
+            acting = float(found.acting_m[position, 0]) * MM_PER_M
+            formula = share_formula(found.responses[position], own)
+            work.known |= {
+                f"K{own}": float(found.responses[position].stiffness_mpa_per_m[0]),
+                f"pmax{own}": float(found.responses[position].capacity_mpa[0]),
+                f"u_i{own}": acting,
+            }
             share = float(rest.element_pressure_mpa[position, 0])
-            formula = f"K{own}*max(us - u_i{own}, 0)/1000"
-            work.add(f"p{own}", f"pressure on {item.element.label}", formula, share, "MPa")
+            meaning = f"pressure on {item.element.label}, which {manner(found, position)}"
+            work.add(f"p{own}", meaning, formula, share, "MPa")
             terms.append(f"p{own}")
         equation = f"p = {' + '.join(terms)}" if terms else "p = 0"
         work.add("p", "equilibrium: ground and elements, root p", equation, pressure, "MPa")
@@ -173,14 +201,12 @@ class CaseBlocks:
     def _checks(self, planned: PlannedClass, found: Evaluated) -> Iterator[SheetBlock]:
         rows = iter(found.checks)
         supported = self._supported(found)
-        water = element_water_mpa(planned, found.springs, self.case.sections)
+        water = element_water_mpa(planned, found.responses, self.case.sections)
         for position, item in enumerate(planned.elements):
-            values = supported | {
-                "element_pressure_mpa": float(
-                    found.rest.element_pressure_mpa[position, 0] + water[position, 0]
-                ),
-                "element_capacity_mpa": float(found.springs[position].values[1, 0]),
-            }
+            columns = element_columns(
+                found.rest, found.responses[position], position, water[position]
+            )
+            values = supported | {name: float(column[0]) for name, column in columns.items()}
             for check in item.checks:
                 element = item.element
                 yield self._check(
@@ -191,15 +217,17 @@ class CaseBlocks:
                     lambda thing, v=values, e=element: thing.lines(v, e),  # type: ignore[misc]
                     float(water[position, 0]),
                 )
-        capacities = class_capacities(planned, found.springs, 1)
+        capacities = class_capacities(planned, found.credited_mpa)
+        capacities["ring_pressure_mpa"] = ring_pressure_mpa(planned, found.rest, water)
         values = supported | {name: float(row[0]) for name, row in capacities.items()}
+        members = tuple(item.element for item in planned.elements)
         for class_check in planned.class_checks:
             yield self._check(
                 planned,
                 f"class:{class_check.name}",
                 class_check,
                 ("class_check", next(rows)),
-                lambda thing, v=values: thing.lines(v),  # type: ignore[misc]
+                lambda thing, v=values, e=members: thing.lines(v, e),  # type: ignore[misc]
                 0.0,
             )
 

@@ -6,7 +6,7 @@ import csv
 import hashlib
 import json
 from collections.abc import Iterator, Mapping
-from dataclasses import dataclass
+from dataclasses import asdict, dataclass
 from pathlib import Path
 from typing import Any
 
@@ -68,9 +68,11 @@ class Recorded:
             name, version = plugin["plugin"], plugin["version"]
             source = now.get(name)
             if source is None:
-                yield f"plugin {name} {version} is not there any more"
+                yield f"plugin {name} {version} is not there any more".replace("  ", " ")
             elif source.version != version:
                 yield f"plugin {name} was {version} in the run and is {source.version}"
+            elif "files" in plugin and plugin["files"] != [asdict(file) for file in source.files]:
+                yield f"plugin {name} consists of other files than in the run"
 
 
 def read_run(folder: Path) -> Recorded:

@@ -12,22 +12,28 @@ from tunnelcalc.calculation.line import SheetBlock, SheetLine
 from tunnelcalc.explain.recorded import Recorded
 from tunnelcalc.explain.section import ComputedSection
 from tunnelcalc.explain.tables import section_row
+from tunnelcalc.outputs.cells import number_text
 from tunnelcalc.outputs.flags_table import FLAGS_FILE
 from tunnelcalc.outputs.tables import flag_texts
 from tunnelcalc.pipeline.flags_stage import (
     FLAG_LEVEL,
+    flag_numbers,
     flag_value,
+    flags_of,
     flags_stage,
     missing,
     screening_lines,
     with_optional_columns,
 )
 from tunnelcalc.pipeline.incidents import Incidents
+from tunnelcalc.plugin.contract import ValidityFlag
+from tunnelcalc.schedule.selection import NONE_ADEQUATE
 from tunnelcalc.sections import Sections
 from tunnelcalc.validity import YES_OR_NO, Level, ScreeningLine, is_raised
 
 BY_ZONING = "rule_not_applied"
-"""A column that follows from the whole alignment: taken from the run."""
+SCHEDULED = "scheduled_class"
+"""Columns that follow from the whole alignment: taken from the run."""
 ORDER = (Level.OUTSIDE, Level.ADVISORY, Level.OVERRIDDEN, Level.NOT_ASSESSED, Level.CLEAR)
 
 
@@ -38,6 +44,7 @@ class Screened:
     lines: tuple[ScreeningLine, ...]
     levels: tuple[Level, ...]
     values: tuple[float, ...]
+    numbers: tuple[str, ...]
     sections: Sections
 
     def block(self) -> SheetBlock:
@@ -60,7 +67,9 @@ class Screened:
     def _notes(self, number: int) -> Iterator[str]:
         line, level = self.lines[number], self.levels[number]
         if level in (Level.OUTSIDE, Level.ADVISORY):
-            yield f"{line.name}, {level.word}: {line.meaning}; {line.remedy}"
+            numbers = self.numbers[number]
+            parts = (line.meaning, *((numbers,) if numbers else ()), line.remedy)
+            yield f"{line.name}, {level.word}: {'; '.join(parts)}"
         if level is Level.OVERRIDDEN:
             middle = float(self.sections["chainage_m"][0])
             for override in line.overrides:
@@ -71,15 +80,28 @@ class Screened:
 def screened(run: Recorded, section: ComputedSection) -> Screened:
     """Every flag on the section, by the functions of the run."""
     project = section.project
-    flags = section.registry.flags(project.plugins)
+    flags = flags_of(project, section.registry)
     raised_in_run = section_row(run, section).get("flags", "").split(";")
-    zoned = {BY_ZONING: np.array([BY_ZONING in raised_in_run])}
+    scheduled = section_row(run, section).get("scheduled_class", "")
+    names = project.class_names
+    zoned = {
+        BY_ZONING: np.array([BY_ZONING in raised_in_run]),
+        SCHEDULED: np.array([names.index(scheduled) if scheduled in names else NONE_ADEQUATE]),
+    }
     sections = flags_stage(flags, project.flags, Incidents())(section.sections.with_columns(zoned))
     return Screened(
         screening_lines(flags, project.flags),
         tuple(Level(int(code)) for code in sections[FLAG_LEVEL][0]),
         tuple(float(flag_value(flag, sections)[0]) for flag in flags),
+        tuple(_numbers(flag, sections) for flag in flags),
         with_optional_columns(sections, flags),
+    )
+
+
+def _numbers(flag: ValidityFlag, sections: Sections) -> str:
+    return "; ".join(
+        f"{number.meaning} {number_text(float(values[0]))} {number.unit}"
+        for number, values in flag_numbers(flag, sections)
     )
 
 

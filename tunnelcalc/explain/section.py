@@ -58,7 +58,7 @@ class ComputedSection:
         """The mean stress, and the larger one where the section is run with it too."""
         mean, larger = STRESS_CASES
         cases = [StressCase(mean, self.sections)]
-        other = larger_stress(self.steps.ground_reaction, self.sections)
+        other = larger_stress(self.steps.ground_reaction, self.sections, self.project.criteria)
         if other.positions.size:
             cases.append(StressCase(larger, other.sections))
         return tuple(cases)
@@ -66,8 +66,7 @@ class ComputedSection:
     def evaluated(self, case: StressCase, planned: PlannedClass) -> Evaluated:
         """A class in a stress case."""
         curve = curves(self.steps.ground_reaction, case.sections)
-        profile, criteria = self.steps.closure_profile, self.project.criteria
-        return evaluate_class(planned, curve, profile, case.sections, criteria)
+        return evaluate_class(planned, curve, self.steps, case.sections, self.project.criteria)
 
 
 def values_of(sections: Sections) -> dict[str, float | str]:

@@ -31,9 +31,9 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import CurvePoint
 from tunnelcalc.ground_reaction.flow_rule import LARGEST_EXPONENT, ring_exponent
 from tunnelcalc.ground_reaction.hoek_brown import HoekBrownCurve, critical_number
-from tunnelcalc.ground_reaction.ring_integral import ring_integral_mpa
+from tunnelcalc.ground_reaction.ring_laws import RingZones
 from tunnelcalc.ground_reaction.ring_zones import (
-    RingZones,
+    AnyZones,
     drop_beside_yielded_mass,
     elastic_drop,
     surplus_slopes,
@@ -45,10 +45,10 @@ ROUNDING = 1e-12
 
 
 @dataclass(frozen=True, slots=True)
-class DisturbedRingCurve:
-    """Ground reaction curves of n sections with a disturbed ring. All fields are (n,)."""
+class RingCurve:
+    """Ground reaction curves of n sections with a ring of other ground. All fields are (n,)."""
 
-    zones: RingZones
+    zones: AnyZones
     critical_pressure_mpa: Array
     """Support pressure below which the wall begins to yield. [MPa]  The mass beyond the ring may
     have yielded at a higher one."""
@@ -56,7 +56,57 @@ class DisturbedRingCurve:
     @property
     def in_situ_stress_mpa(self) -> Array:
         """(n,) p0. [MPa]"""
-        return self.zones.mass.in_situ_stress_mpa
+        found: Array = self.zones.mass.in_situ_stress_mpa
+        return found
+
+    def take(self, index: Array) -> Self:
+        """The curves of the sections at `index`."""
+        return type(self)(self.zones.take(index), self.critical_pressure_mpa[index])
+
+    def at(self, support_pressure_mpa: Array) -> CurvePoint:
+        """Plastic radius, closure and slope of the curve under a support pressure.
+
+        Parameters
+        ----------
+        support_pressure_mpa : (n,) pi, 0 <= pi <= p0. [MPa]
+
+        Returns
+        -------
+        CurvePoint.  The plastic ratio is that of the outermost ground that has yielded; where the
+        mass has, that lies beyond the ring, though the ring's outer part may still be elastic.
+        Where the closure leaves the range of a double it is NaN, never a number.
+
+        Limits
+        ------
+        As `ground_reaction` in `hoek_brown`; the ring is of one thickness all round. The slope
+        has a step, and the plastic ratio may have one, where the mass begins to yield. Closures
+        are not above those of ground that is all ring; a soft ring of strongly dilating ground
+        may move less than ground that is all mass, since more of its strain is elastic.
+
+        Source
+        ------
+        Derivations at the heads of this module and of `ring_zones`.
+        """
+        result = CurvePoint(*(np.full(support_pressure_mpa.shape, np.nan) for _ in range(3)))
+        known = ~np.isnan(self.critical_pressure_mpa + support_pressure_mpa)
+        layered = known & (self.zones.log_ratio > 0)
+        yields = support_pressure_mpa < self.critical_pressure_mpa
+        for chosen, state in (
+            (known & ~layered, _without_ring),
+            (layered & ~yields, _elastic_ring),
+            (layered & yields, _yielded_ring),
+        ):
+            index = np.flatnonzero(chosen)
+            if index.size:
+                point = state(self.zones.take(index), support_pressure_mpa[index])
+                for column, values in zip(result, point, strict=True):
+                    column[index] = values
+        return result
+
+
+@dataclass(frozen=True, slots=True)
+class DisturbedRingCurve(RingCurve):
+    """Ground reaction curves of n sections with a disturbed ring. All fields are (n,)."""
 
     @classmethod
     def of_ground(
@@ -114,50 +164,6 @@ class DisturbedRingCurve:
         critical[layered] = _wall_yields_at(zones.take(layered))
         return cls(zones, critical)
 
-    def take(self, index: Array) -> Self:
-        """The curves of the sections at `index`."""
-        return type(self)(self.zones.take(index), self.critical_pressure_mpa[index])
-
-    def at(self, support_pressure_mpa: Array) -> CurvePoint:
-        """Plastic radius, closure and slope of the curve under a support pressure.
-
-        Parameters
-        ----------
-        support_pressure_mpa : (n,) pi, 0 <= pi <= p0. [MPa]
-
-        Returns
-        -------
-        CurvePoint.  The plastic ratio is that of the outermost ground that has yielded; where the
-        mass has, that lies beyond the ring, though the ring's outer part may still be elastic.
-        Where the closure leaves the range of a double it is NaN, never a number.
-
-        Limits
-        ------
-        As `ground_reaction` in `hoek_brown`; the ring is of one thickness all round. The slope
-        has a step, and the plastic ratio may have one, where the mass begins to yield. Closures
-        are not above those of ground that is all ring; a soft ring of strongly dilating ground
-        may move less than ground that is all mass, since more of its strain is elastic.
-
-        Source
-        ------
-        Derivations at the heads of this module and of `ring_zones`.
-        """
-        result = CurvePoint(*(np.full(support_pressure_mpa.shape, np.nan) for _ in range(3)))
-        known = ~np.isnan(self.critical_pressure_mpa + support_pressure_mpa)
-        layered = known & (self.zones.log_ratio > 0)
-        yields = support_pressure_mpa < self.critical_pressure_mpa
-        for chosen, state in (
-            (known & ~layered, _without_ring),
-            (layered & ~yields, _elastic_ring),
-            (layered & yields, _yielded_ring),
-        ):
-            index = np.flatnonzero(chosen)
-            if index.size:
-                point = state(self.zones.take(index), support_pressure_mpa[index])
-                for column, values in zip(result, point, strict=True):
-                    column[index] = values
-        return result
-
 
 def _weaker(ring: HoekBrownCurve, mass: HoekBrownCurve) -> Array:
     """Whether the ring is nowhere stronger than the mass, for radial stresses from 0 to p0.
@@ -191,12 +197,12 @@ def _wall_yields_at(zones: RingZones) -> Array:
     return zones.critical_pressure_mpa(np.maximum(sci * (number - ring.s) / mb, 0))
 
 
-def _without_ring(zones: RingZones, pressure: Array) -> CurvePoint:
+def _without_ring(zones: AnyZones, pressure: Array) -> CurvePoint:
     """A ring without thickness: the mass alone."""
     return zones.mass.at(pressure)
 
 
-def _elastic_ring(zones: RingZones, pressure: Array) -> CurvePoint:
+def _elastic_ring(zones: AnyZones, pressure: Array) -> CurvePoint:
     """The wall of a ring that has not yielded, around a mass that may have."""
     p0, double = zones.ring.in_situ_stress_mpa, 2 * zones.ring.shear_modulus_mpa
     released = p0 - pressure
@@ -213,15 +219,15 @@ def _elastic_ring(zones: RingZones, pressure: Array) -> CurvePoint:
     return CurvePoint(np.where(np.isnan(closure), np.nan, outermost), closure, slope)
 
 
-def _yielded_ring(zones: RingZones, pressure: Array) -> CurvePoint:
+def _yielded_ring(zones: AnyZones, pressure: Array) -> CurvePoint:
     """The wall of a ring that has yielded there, or all over, around a mass that may have."""
     ring = zones.ring
     p0, nu, dilation = ring.in_situ_stress_mpa, ring.poisson_ratio, ring.dilation
     double = 2 * ring.shear_modulus_mpa
-    power = zones.wall_power(pressure)
-    depth, wholly = zones.front(power)
-    edge_power = power + (1 - ring.a) * ring.mb * depth
-    edge = zones.edge(edge_power, depth)
+    place = zones.wall_place(pressure)
+    depth, wholly = zones.front(place)
+    edge_place = zones.place_at(place, depth)
+    edge = zones.edge(edge_place, depth)
     interface = zones.interface(edge.drop_mpa)
     mass = interface.mass
     yielded = p0 - edge.drop_mpa < zones.mass.critical_pressure_mpa
@@ -231,17 +237,7 @@ def _yielded_ring(zones: RingZones, pressure: Array) -> CurvePoint:
     growth = np.exp(exponent)
 
     at_edge = edge.half_strength * (1 - edge.relief) / double + mass.closure_ratio
-    every = np.ones(pressure.shape, dtype=bool)
-    weighted = ring_integral_mpa(
-        exponent,
-        every,
-        ring.intact_strength_mpa,
-        ring.mb,
-        ring.a,
-        dilation,
-        edge_power,
-        ring.s == 0,
-    )
+    weighted = zones.weighted_strength_mpa(exponent, place, edge_place, depth)
     driving = double * at_edge + (1 - 2 * nu) * (p0 - edge.radial_mpa)
     dilating = (dilation - 1) * (1 - nu) * weighted
     closure = growth * (driving - dilating) - (1 - 2 * nu) * (p0 - pressure)
@@ -257,7 +253,7 @@ def _yielded_ring(zones: RingZones, pressure: Array) -> CurvePoint:
     edge_by_stress = give / double + mass.slope * (2 * edge.half_strength + give)
     edge_by_place = -2 * edge.relief * edge.half_strength * (1 / double + mass.slope)
     at_front = forcing(edge.radial_mpa, 2 * edge.half_strength) - (dilation + 1) * at_edge
-    strength = ring.intact_strength_mpa * (power ** (ring.a / (1 - ring.a)))
+    strength = zones.strength_mpa(place)
     change = forcing(pressure, strength) - (dilation + 1) * closure
     change = change + growth * (moves * (edge_by_stress - at_front) + (moves - 1) * edge_by_place)
     with np.errstate(divide="ignore"):

@@ -1,4 +1,4 @@
-"""A ring of weaker, softer ground around an opening, and the mass beyond it.
+"""A ring of other ground around an opening, and the mass beyond it.
 
 Compression and inward movement are positive; G and nu as usual, the index d for the ring and u
 for the mass. D = p0 - sr at the ring's outer edge r_d, and V(D) = u / r there, which is the
@@ -21,19 +21,29 @@ In the plastic part N = mb sr / sci + s has N^(1-a) = N_wall^(1-a) + (1 - a) mb 
 as in `hoek_brown`. At its edge T = sci N^a / 2, which gives D = p0 - sr - T (1 - k) and leaves one
 equation, k T = B(D): its left side grows with y, D falls, and so there is one root at most. None
 in the ring means that all of it has yielded; k = 1 and D then follow without any root.
+
+All this holds for a ring of any strength, stronger than the mass too, and for any strength H(sr)
+that grows with sr. What only a ring that is no stronger than the mass has are two bounds: its
+wall yields, and its plastic part ends, no later than in ground that is all ring. Beside a
+stronger ring the mass yields first and leaves the ring with more than that.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import NamedTuple, Self
+from typing import Any, Generic, NamedTuple, Self, TypeVar
 
 import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import CurvePoint
 from tunnelcalc.ground_reaction.hoek_brown import HoekBrownCurve
+from tunnelcalc.ground_reaction.mohr_coulomb import MohrCoulombCurve
 from tunnelcalc.root_finding import increasing_roots
+
+Ground = TypeVar("Ground", HoekBrownCurve, MohrCoulombCurve)
+AnyZones = Any
+"""`Zones` of either law."""
 
 
 class Edge(NamedTuple):
@@ -61,11 +71,14 @@ class Interface(NamedTuple):
 
 
 @dataclass(frozen=True, slots=True)
-class RingZones:
-    """Two grounds and the ring's outer radius. All (n,)."""
+class Zones(Generic[Ground]):
+    """Two grounds of one law and the ring's outer radius. All (n,).
 
-    mass: HoekBrownCurve
-    ring: HoekBrownCurve
+    `place` is what a law follows its plastic part by: N^(1-a), or the radial stress.
+    """
+
+    mass: Ground
+    ring: Ground
     log_ratio: Array
     """ln(r_d / R), >= 0"""
 
@@ -81,22 +94,35 @@ class RingZones:
         change = ((1 - 2 * nu) - double * mass.slope) / (2 * (1 - nu))
         return Interface(deviator, change, mass)
 
-    def edge(self, power: Array, depth: Array) -> Edge:
-        """The edge of the plastic part, from N^(1-a) there and y = ln(c / R)."""
-        ring = self.ring
-        number = power ** (1 / (1 - ring.a))
-        radial = ring.intact_strength_mpa * (number - ring.s) / ring.mb
-        half = 0.5 * ring.intact_strength_mpa * number**ring.a
-        relief = np.exp(2 * (depth - self.log_ratio))
-        drop = ring.in_situ_stress_mpa - radial - half * (1 - relief)
-        change = ring.a * ring.mb * half / np.where(power == 0, 1, power)
-        return Edge(radial, half, change, relief, drop)
+    def wall_place(self, support_pressure_mpa: Array) -> Array:
+        """Place of ring ground that has yielded at the wall."""
+        raise NotImplementedError
 
-    def wall_power(self, support_pressure_mpa: Array) -> Array:
-        """N^(1-a) of ring ground that has yielded at the wall."""
-        ring = self.ring
-        number = ring.mb * support_pressure_mpa / ring.intact_strength_mpa + ring.s
-        return number ** (1 - ring.a)
+    def place_at(self, wall_place: Array, depth: Array) -> Array:
+        """Place at y = ln(r / R) in the plastic part."""
+        raise NotImplementedError
+
+    def edge(self, place: Array, depth: Array) -> Edge:
+        """The edge of the plastic part, from its place and y = ln(c / R)."""
+        raise NotImplementedError
+
+    def strength_mpa(self, place: Array) -> Array:
+        """st - sr of yielded ring ground."""
+        raise NotImplementedError
+
+    def weighted_strength_mpa(
+        self, exponent: Array, wall_place: Array, edge_place: Array, depth: Array
+    ) -> Array:
+        """J / X^(K+1) of the plastic part: see `hoek_brown`."""
+        raise NotImplementedError
+
+    def highest_critical_mpa(self) -> Array:
+        """A pressure at which the wall does not yield."""
+        return self.ring.in_situ_stress_mpa
+
+    def deepest(self, wall_place: Array) -> Array:
+        """A depth y that the plastic part does not pass."""
+        return self.log_ratio
 
     def surplus(self, edge: Edge) -> tuple[Array, Interface]:
         """k T - B(D), which is positive where ring ground beyond the edge is still elastic."""
@@ -109,7 +135,7 @@ class RingZones:
         """Pressure at which the wall begins to yield, from that beside an elastic mass."""
         p0, critical = self.ring.in_situ_stress_mpa, np.array(begin)
         nowhere = np.zeros(np.shape(begin))
-        edge = self.edge(self.wall_power(begin), nowhere)
+        edge = self.edge(self.wall_place(begin), nowhere)
         # Where the wall does not yield even without support, D is that of the elastic ring.
         unsupported, _ = elastic_drop(self, p0)
         drop = np.where(begin > 0, edge.drop_mpa, unsupported)
@@ -118,8 +144,8 @@ class RingZones:
 
         def surplus(shifted: Array, index: Array) -> tuple[Array, Array]:
             chosen = zones.take(index)
-            power = chosen.wall_power(shifted - chosen.ring.in_situ_stress_mpa)
-            at = chosen.edge(power, nowhere[: index.size])
+            place = chosen.wall_place(shifted - chosen.ring.in_situ_stress_mpa)
+            at = chosen.edge(place, nowhere[: index.size])
             value, found = chosen.surplus(at)
             rate = at.change / np.where(at.half_strength == 0, 1, 2 * at.half_strength)
             slope = rate * at.relief + found.change * (1 + rate * (1 - at.relief))
@@ -127,7 +153,7 @@ class RingZones:
 
         # Roots are found to a relative 1e-12 of the unknown: p0 is added, so that rounding of
         # stresses beside a small unknown is not taken for lack of convergence.
-        low, high = p0[open_] + begin[open_], p0[open_] + self.ring.critical_pressure_mpa[open_]
+        low, high = p0[open_] + begin[open_], p0[open_] + self.highest_critical_mpa()[open_]
         needed = surplus(low, np.arange(open_.size))[0] < 0
         index = np.flatnonzero(needed)
         found = increasing_roots(
@@ -137,26 +163,23 @@ class RingZones:
         critical[open_[index]] = np.maximum(roots, 0)
         return critical
 
-    def front(self, power: Array) -> tuple[Array, Array]:
+    def front(self, wall_place: Array) -> tuple[Array, Array]:
         """y at the edge of the plastic part of a ring that has yielded at the wall, and whether
-        all of the ring has yielded (bool), from N^(1-a) at the wall."""
-        ring = self.ring
-        # The plastic part is never deeper than without a mass beyond that is stiffer.
-        alone = np.maximum((ring.critical_power - power) / ((1 - ring.a) * ring.mb), 0)
-        wholly = np.zeros(power.shape, dtype=bool)
+        all of the ring has yielded (bool)."""
+        alone = self.deepest(wall_place)
+        wholly = np.zeros(wall_place.shape, dtype=bool)
         reached = np.flatnonzero(self.log_ratio <= alone)
         inside = self.take(reached)
-        outermost = inside.log_ratio
-        at_interface = power[reached] + (1 - inside.ring.a) * inside.ring.mb * outermost
-        wholly[reached] = inside.surplus(inside.edge(at_interface, outermost))[0] <= 0
+        at_interface = inside.place_at(wall_place[reached], inside.log_ratio)
+        wholly[reached] = inside.surplus(inside.edge(at_interface, inside.log_ratio))[0] <= 0
 
         depth = np.where(wholly, self.log_ratio, np.nan)
         partly = np.flatnonzero(~wholly)
-        zones, start = self.take(partly), power[partly]
+        zones, start = self.take(partly), wall_place[partly]
 
         def surplus(shifted: Array, index: Array) -> tuple[Array, Array]:
             chosen, y = zones.take(index), shifted - 1
-            at = chosen.edge(start[index] + (1 - chosen.ring.a) * chosen.ring.mb * y, y)
+            at = chosen.edge(chosen.place_at(start[index], y), y)
             value, found = chosen.surplus(at)
             slope, _ = surplus_slopes(at, found)
             return value, np.where(np.isfinite(value), slope, 1)
@@ -191,7 +214,7 @@ def surplus_slopes(edge: Edge, found: Interface) -> tuple[Array, Array]:
     return both, k * twice * (1 - found.change)
 
 
-def elastic_drop(zones: RingZones, relief_mpa: Array) -> tuple[Array, Array]:
+def elastic_drop(zones: AnyZones, relief_mpa: Array) -> tuple[Array, Array]:
     """Drop of the radial stress at the interface of an elastic ring and an elastic mass.
 
     Parameters
@@ -214,7 +237,7 @@ def elastic_drop(zones: RingZones, relief_mpa: Array) -> tuple[Array, Array]:
     return relief_mpa * k / (k + share * (1 - k)), k
 
 
-def drop_beside_yielded_mass(zones: RingZones, relief_mpa: Array) -> Array:
+def drop_beside_yielded_mass(zones: AnyZones, relief_mpa: Array) -> Array:
     """Drop of the radial stress at the interface of an elastic ring and a mass that has yielded.
 
     Parameters

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from pathlib import Path
 
 from tunnelcalc.errors import InputError, Problem, Problems, Where
@@ -13,11 +13,11 @@ from tunnelcalc.inputs.level_tables import read_tunnel_level
 from tunnelcalc.inputs.method_choices import read_methods
 from tunnelcalc.inputs.notation import read_notation
 from tunnelcalc.inputs.opening import read_profiles
-from tunnelcalc.inputs.support_classes import read_support_classes
+from tunnelcalc.inputs.support_classes import parameter_value, read_support_classes
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.inputs.yaml_tree import Table, parse
 from tunnelcalc.outputs.run_folder import INPUTS, MANIFEST
-from tunnelcalc.plugin.contract import ClassCheck
+from tunnelcalc.plugin.contract import ClassCheck, ClassCheckWithOptions
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import Criteria, Project, ScheduleRules
 from tunnelcalc.text import decoded, quoted, suggestion
@@ -25,6 +25,10 @@ from tunnelcalc.vocabulary import Limits
 
 YES_OR_NO = ("yes", "no", "true", "false")
 """Some editors and programs write yes as true."""
+TRUE = ("yes", "true")
+
+
+INSTALL_IT = "install it, name its file with --plugin-file, or remove the entry"
 
 
 def read_project(path: Path, registry: Registry) -> Project:
@@ -145,7 +149,7 @@ def _plugins(reader: Reader, registry: Registry) -> tuple[str, ...]:
             continue
         failed = [str(f) for f in registry.failures if f.source.plugin == text]
         hint = suggestion(text, known)
-        other = f'did you mean "{hint}"?' if hint else "install it, or remove the entry"
+        other = f'did you mean "{hint}"?' if hint else INSTALL_IT
         reader.problems.add(
             where,
             f"names {quoted(text)}, a plugin that is not there",
@@ -167,11 +171,32 @@ def _criteria(reader: Reader, of_classes: Sequence[ClassCheck]) -> Criteria | No
         for check in of_classes
         if check.by_choice
     }
+    chosen = {name: word in TRUE for name, word in said.items() if word is not None}
+    options = _options(table, of_classes, chosen)
     table.finish()
     if factor is None or closure is None:
         return None
-    chosen = {name: word in ("yes", "true") for name, word in said.items() if word is not None}
-    return Criteria(factor, closure, chosen)
+    return Criteria(factor, closure, chosen, options)
+
+
+def _options(
+    table: Reader, of_classes: Sequence[ClassCheck], chosen: Mapping[str, bool]
+) -> dict[str, float | str]:
+    """The options of the checks that are chosen; of the others they have no use."""
+    found: dict[str, float | str] = {}
+    for check in of_classes:
+        if not isinstance(check, ClassCheckWithOptions):
+            continue
+        for option in check.options:
+            if chosen.get(check.name, False):
+                value = parameter_value(table, option)
+                found |= {} if value is None else {option.name: value}
+                continue
+            if table.has(option.name):
+                fix = f"remove it, or write {check.name}: yes"
+                table.complain(option.name, f"has no use without {check.name}", fix=fix)
+            table.known[option.name] = None
+    return found
 
 
 def class_demands(

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections import Counter
 from types import MappingProxyType
 
@@ -10,11 +11,12 @@ from tunnelcalc.plugin.contract import Parameter, SupportKind
 from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.project import Element, SupportClass
 from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
-from tunnelcalc.support.reaction import FORMS, SOLVED_FORMS
+from tunnelcalc.support.reaction import FORMS, AdvanceIncrements, GroundRing
 from tunnelcalc.text import quoted, suggestion
 from tunnelcalc.vocabulary import Limits
 
 INSTALLED_AT = Limits(0, 10000)
+ADVANCE = Limits(0, 100, above=True)
 RESERVED_NAMES = (NONE_ADEQUATE_NAME, "not_decided")
 
 
@@ -35,11 +37,46 @@ def read_support_classes(
             )
         names.add(name or "")
         installed = entry.number("installed_at_m", INSTALLED_AT, "m", required=False)
+        rate = entry.number("advance_m_per_day", ADVANCE, "m/day", required=False)
         elements = _elements(entry, registry, plugins, installed, smallest_radius_m)
+        _one_ring(entry, registry, elements)
+        if not entry.has("advance_m_per_day"):
+            _ask_for_advance(entry, registry, elements)
         entry.finish()
         if name is not None:
-            classes.append(SupportClass(name, tuple(elements)))
+            rate = math.nan if rate is None else rate
+            classes.append(SupportClass(name, tuple(elements), rate))
     return tuple(classes)
+
+
+def _one_ring(entry: Reader, registry: Registry, elements: list[Element]) -> None:
+    """Rings of changed ground at different distances have no solution here."""
+    rings = [
+        element.label
+        for element in elements
+        if registry.support_kind(element.kind).reaction_form(element) == GroundRing.form
+    ]
+    if len(rings) > 1:
+        entry.complain(
+            "elements",
+            f"holds {' and '.join(rings)}, which each change the ground in a ring",
+            allowed="one such element a class",
+            fix="keep one of them",
+        )
+
+
+def _ask_for_advance(entry: Reader, registry: Registry, elements: list[Element]) -> None:
+    """An element that ages needs to know how fast the face moves on."""
+    for element in elements:
+        form = registry.support_kind(element.kind).reaction_form(element)
+        if form == AdvanceIncrements.form:
+            entry.complain(
+                "advance_m_per_day",
+                f"is missing: {element.label} hardens while the face moves on",
+                allowed=ADVANCE.describe("m/day"),
+                fix="state the rate of advance of the class",
+            )
+            return
 
 
 def _elements(
@@ -109,25 +146,29 @@ def _parameters(item: Reader, kind: SupportKind) -> dict[str, float | str]:
     values: dict[str, float | str] = {}
     for parameter in sorted(kind.parameters, key=lambda p: p.only_if is not None):
         if parameter.only_if is not None:
-            other, choice = parameter.only_if
-            if values.get(other) != choice:
-                if item.has(parameter.name) and other in values:
+            other, words = parameter.only_if
+            if values.get(other) not in words:
+                if item.has(parameter.name) and (other in values or not item.has(other)):
+                    chosen = f"with {other}: {values[other]}" if other in values else f"so: {other}"
                     item.complain(
                         parameter.name,
-                        f"has no use with {other}: {values[other]}",
-                        fix=f"remove it, or write {other}: {choice}",
+                        f"has no use {chosen}" + ("" if other in values else " is not stated"),
+                        fix=f"remove it, or write {other}: {' or '.join(words)}",
                     )
                 item.known[parameter.name] = None
                 continue
-        value = _value(item, parameter)
+        value = parameter_value(item, parameter)
         if value is not None:
             values[parameter.name] = value
     return values
 
 
-def _value(item: Reader, parameter: Parameter) -> float | str | None:
+def parameter_value(item: Reader, parameter: Parameter) -> float | str | None:
+    """The value of a parameter as it is stated, or meant where it may stay unsaid."""
     if parameter.choices:
-        return item.choice(parameter.name, parameter.choices)
+        required = not parameter.default
+        stated = item.choice(parameter.name, parameter.choices, required=required)
+        return stated if required or item.has(parameter.name) else parameter.default
     return item.number(parameter.name, parameter.limits, parameter.unit)
 
 
@@ -148,12 +189,11 @@ def _is_supported(
     plugins: tuple[str, ...],
 ) -> None:
     form = kind.reaction_form(element)
-    if form not in SOLVED_FORMS:
-        known = "is not one of the four forms" if form not in FORMS else "is not solved yet"
+    if form not in FORMS:
         item.complain(
             "kind",
-            f'names "{kind.name}", which reacts as {form}; this form {known}',
-            allowed="an element that reacts as " + " or ".join(SOLVED_FORMS),
+            f'names "{kind.name}", which reacts as {form}; that is not one of the four forms',
+            allowed="an element that reacts as " + " or ".join(FORMS),
             fix="take an element of another kind",
         )
     elif not any(check.carries_load for check in registry.checks_for(element, plugins)):

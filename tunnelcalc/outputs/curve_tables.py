@@ -55,6 +55,13 @@ STRENGTH_ENVELOPE_HEADER = (
     "line_shear_difference_mpa",
     "point",
 )
+THRUST_MOMENT_HEADER = (
+    "stress_case",
+    "springline_angle_deg",
+    "lining_thrust_mn_per_m",
+    "lining_moment_mnm_per_m",
+    "point",
+)
 FACE, INSTALLED = "face", "installed"
 REST, CAPACITY, BEYOND = "equilibrium", "capacity", "beyond_capacity"
 UNSUPPORTED, CRITICAL, IN_SITU = "unsupported", "critical", "in_situ"
@@ -70,6 +77,7 @@ def write_curves(folder: Path, curves: SectionCurves) -> tuple[str, ...]:
         ("ground_reaction.csv", GROUND_REACTION_HEADER, _each_case(curves, _ground_rows)),
         ("closure_profile.csv", CLOSURE_PROFILE_HEADER, _each_case(curves, _profile_rows)),
         ("support_reaction.csv", SUPPORT_REACTION_HEADER, _each_case(curves, _support_rows)),
+        ("thrust_moment.csv", THRUST_MOMENT_HEADER, _each_case(curves, _lining_rows)),
         ("strength_envelope.csv", STRENGTH_ENVELOPE_HEADER, _envelope_rows(curves.envelopes)),
     )
     written = []
@@ -130,14 +138,13 @@ def _support_rows(case: CaseCurves, radius_m: float) -> Iterator[Sequence[str]]:
 
 
 def _element_rows(element: ReactionOfElement, rest_closure_mm: float) -> Iterator[Sequence[str]]:
+    points = list(zip(element.closure_mm.tolist(), element.pressure_mpa.tolist(), strict=True))
+    # Of a spring three points are told; any other line begins where the element acts.
+    first = (INSTALLED, CAPACITY, BEYOND) if len(points) == 3 else (INSTALLED,)
+    names = [*first, *[""] * (len(points) - len(first))]
     rows = [
         (closure, pressure, name)
-        for closure, pressure, name in zip(
-            element.closure_mm.tolist(),
-            element.pressure_mpa.tolist(),
-            (INSTALLED, CAPACITY, BEYOND),
-            strict=True,
-        )
+        for (closure, pressure), name in zip(points, names, strict=True)
         if closure == closure
     ]
     if rest_closure_mm == rest_closure_mm and element.rest_pressure_mpa >= 0:
@@ -160,6 +167,21 @@ def _class_rows(support: ReactionOfClass) -> Iterator[Sequence[str]]:
     for closure, pressure, name in sorted(rows, key=lambda row: row[0]):
         numbers = (number_text(value) for value in (closure, pressure, water))
         yield (WHOLE_CLASS, *numbers, name)
+
+
+def _lining_rows(case: CaseCurves, radius_m: float) -> Iterator[Sequence[str]]:
+    """Forces by angle, then the limit of the section, a whole turn of it."""
+    lining = case.lining
+    if lining is None:
+        return
+    forces = (lining.angle_deg, lining.thrust_mn_per_m, lining.moment_mnm_per_m)
+    for angle, *state in zip(*(column.tolist() for column in forces), strict=True):
+        if state[0] == state[0]:
+            yield (*(number_text(value) for value in (angle, *state)), REST)
+    thrust, moment = lining.limit_thrust_mn_per_m, lining.limit_moment_mnm_per_m
+    turn = zip([*thrust, *thrust[::-1]], [*moment, *-moment[::-1]], strict=True)
+    for pair in turn:
+        yield (OTHER, *(number_text(float(value)) for value in pair), CAPACITY)
 
 
 def _envelope_rows(envelopes: Sequence[StrengthEnvelope]) -> Rows:

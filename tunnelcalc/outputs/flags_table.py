@@ -11,6 +11,7 @@ import numpy as np
 
 from tunnelcalc.arrays import SAME_PLACE_M, Array
 from tunnelcalc.outputs.cells import number_texts, text_cell
+from tunnelcalc.plugin.flag import NumberOfFlag
 from tunnelcalc.project import Project
 from tunnelcalc.sections import Sections
 from tunnelcalc.validity import (
@@ -34,6 +35,7 @@ FLAGS_HEADER = (
     "value",
     "chainage_m",
     "unit",
+    "numbers",
     "threshold",
     "threshold_source",
     "meaning",
@@ -42,6 +44,7 @@ FLAGS_HEADER = (
     "reason",
 )
 LEVEL_CELLS = np.array(LEVEL_WORDS, dtype=object)
+Numbers = Sequence[tuple[NumberOfFlag, Array]]
 NOT_COMPUTED = "the value could not be computed"
 
 
@@ -77,11 +80,13 @@ def write_flags(
     sections: Sections,
     lines: Sequence[ScreeningLine],
     value_of: Callable[[int], Array],
+    numbers_of: Callable[[int], Numbers] = lambda number: (),
 ) -> None:
     """Write `flags.csv`, flags by name.
 
     `sections` has the levels of the flags in `flag_level`. `value_of` gives the values (n,) of
-    the flag of a number, one flag at a time, so that never all of them are in memory.
+    the flag of a number, one flag at a time, so that never all of them are in memory;
+    `numbers_of` the numbers that stand behind them.
     """
     plain = project.notation.is_plain
     ends, place = ((), ()) if plain else (("from_chainage", "to_chainage"), ("chainage",))
@@ -90,14 +95,20 @@ def write_flags(
         stream.write(",".join(header) + "\n")
         for number in sorted(range(len(lines)), key=lambda k: lines[k].name):
             found = sections["flag_level"][:, number]
-            for rows in _rows(project, sections, lines[number], found, value_of(number)):
+            of_flag = (found, value_of(number), numbers_of(number))
+            for rows in _rows(project, sections, lines[number], *of_flag):
                 stream.writelines(rows)
         stream.flush()
         os.fsync(stream.fileno())
 
 
 def _rows(
-    project: Project, sections: Sections, line: ScreeningLine, found: Array, value: Array
+    project: Project,
+    sections: Sections,
+    line: ScreeningLine,
+    found: Array,
+    value: Array,
+    numbers: Numbers,
 ) -> Iterator[Iterator[str]]:
     from_m, to_m = sections["from_m"], sections["to_m"]
     accepted = override_numbers(line.overrides, from_m, to_m)
@@ -120,6 +131,8 @@ def _rows(
             [text_cell(line.quantity)] * first.size,
             _value_cells(line, np.where(told, value[worst], np.nan)),
             *_place(project, at),
+            [text_cell(line.unit)] * first.size,
+            _number_cells(numbers, worst, told),
             [_of_line(line)] * first.size,
             person,
             reason,
@@ -129,8 +142,22 @@ def _rows(
 
 def _of_line(line: ScreeningLine) -> str:
     """Cells that are the same in every row of a flag."""
-    cells = (line.unit, line.threshold, line.origin, line.meaning, line.remedy)
+    cells = (line.threshold, line.origin, line.meaning, line.remedy)
     return ",".join(text_cell(cell) for cell in cells)
+
+
+def _number_cells(numbers: Numbers, worst: Array, told: Array) -> list[str]:
+    """The numbers behind the value at the section that it is told of."""
+    if not numbers:
+        return [""] * worst.size
+    texts = [
+        [f"{number.meaning} {text} {number.unit}" for text in number_texts(values[worst])]
+        for number, values in numbers
+    ]
+    return [
+        text_cell("; ".join(parts)) if shown else ""
+        for *parts, shown in zip(*texts, told.tolist(), strict=True)
+    ]
 
 
 def _value_cells(line: ScreeningLine, value: Array) -> list[str]:

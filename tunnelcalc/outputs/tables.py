@@ -68,6 +68,11 @@ CLASS_HEADER = (
     "supported_closure_mm",
     "supported_closure_pct",
     "supported_plastic_radius_m",
+    "first_failure_pressure_mpa",
+    "first_failure_closure_mm",
+    "full_mobilisation_pressure_mpa",
+    "full_mobilisation_closure_mm",
+    "missing_pressure_mpa",
     "factor_of_safety",
     "governing_check",
     "adequate",
@@ -142,6 +147,11 @@ class ChunkTables:
                 "class_closure_mm",
                 "class_closure_pct",
                 "class_plastic_radius_m",
+                "class_first_failure_pressure_mpa",
+                "class_first_failure_closure_mm",
+                "class_full_pressure_mpa",
+                "class_full_closure_mm",
+                "class_missing_pressure_mpa",
                 "class_factor_of_safety",
             )
         ]
@@ -150,8 +160,8 @@ class ChunkTables:
         adequate = np.where(chunk["class_adequate"][:, number], "yes", "no").tolist()
         rows = zip(chainage, cases, *numeric, governing, adequate, strict=True)
         return [
-            f"{at},{name},{case},{u},{p},{us},{pct},{rp},{fs},{check},{ok}\n"
-            for at, case, u, p, us, pct, rp, fs, check, ok in rows
+            f"{at},{name},{case},{','.join(numbers)},{check},{ok}\n"
+            for at, case, *numbers, check, ok in rows
         ]
 
     def _check_lines(

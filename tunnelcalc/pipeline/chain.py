@@ -6,7 +6,7 @@ from collections.abc import Sequence
 
 from tunnelcalc.pipeline.dispatch import chosen_steps
 from tunnelcalc.pipeline.disturbed_ring_stage import disturbed_ring_stage
-from tunnelcalc.pipeline.flags_stage import flags_stage
+from tunnelcalc.pipeline.flags_stage import flags_of, flags_stage
 from tunnelcalc.pipeline.ground_stages import (
     deformation_modulus_stage,
     ground_reaction_stage,
@@ -37,6 +37,10 @@ ONLY_IN_TABLES = (
     "class_support_pressure_mpa",
     "class_closure_mm",
     "class_plastic_radius_m",
+    "class_first_failure_pressure_mpa",
+    "class_first_failure_closure_mm",
+    "class_full_pressure_mpa",
+    "class_full_closure_mm",
 )
 """Columns that are written while their chunk lasts and not kept beyond it."""
 
@@ -59,7 +63,7 @@ def section_stages(
         hazard_stage(),
         ground_reaction_stage(steps.ground_reaction),
         support_stage(plan, steps, project.criteria),
-        choice_stage(steps, project.criteria),
+        choice_stage(),
     )
 
 
@@ -73,7 +77,7 @@ def build_stages(
     return (
         *section_stages(project, registry, plan),
         zoning_stage(project.schedule),
-        flags_stage(registry.flags(project.plugins), project.flags, incidents),
+        flags_stage(flags_of(project, registry), project.flags, incidents),
     )
 
 

@@ -10,23 +10,35 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
-from tunnelcalc.pipeline.dispatch import Chosen, closure_share
+from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, closure_share
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass, counts
+from tunnelcalc.pipeline.resting_state import (
+    PressureTables,
+    RestingState,
+    acting_from_m,
+    at_rest,
+    pressure_of,
+    system_limits,
+)
+from tunnelcalc.pipeline.ring_curves import curve_of_class
+from tunnelcalc.plugin.contained_reaction import ElementResponse, contained_reaction
 from tunnelcalc.plugin.contract import ClosureProfileMethod
 from tunnelcalc.plugin.isolation import (
     NO_REASON,
     Contained,
     contained_class_evaluation,
     contained_evaluation,
-    contained_spring,
 )
 from tunnelcalc.project import Criteria
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import class_outcome, load_check, rule_check
-from tunnelcalc.support.equilibrium import Equilibrium, equilibrium
+from tunnelcalc.support.equilibrium import pressure_at_closure
+from tunnelcalc.support.reaction import GroundRing, PressureOfClosure
 
 DOES_NOT_COUNT = "does not count: the project does not ask for it under criteria"
+ROUNDING = 1e-9
+"""A check that is at its limit where the reaction is at its own may miss it by rounding."""
 UNRESOLVED = "ground and support have no equilibrium that can be computed"
 
 
@@ -52,36 +64,74 @@ class ClassRow(NamedTuple):
     factor_of_safety: Array
     governing: Array
     adequate: Array
+    first_failure_pressure_mpa: Array
+    first_failure_closure_mm: Array
+    full_pressure_mpa: Array
+    full_closure_mm: Array
+    missing_pressure_mpa: Array
+    capacity_mpa: Array
 
 
 @dataclass(frozen=True, slots=True)
 class Evaluated:
-    """A class and its checks; `rest` and `springs` are the state at rest that they follow from."""
+    """A class and its checks; `rest` and `responses` are the state at rest that they follow from.
+
+    `installed_m` (e, n) is the unsupported closure where each element is installed, `acting_m`
+    (e, n) that where it begins to act.
+    """
 
     row: ClassRow
     checks: tuple[CheckRow, ...]
-    rest: Equilibrium
-    springs: tuple[Contained, ...]
+    rest: RestingState
+    responses: tuple[ElementResponse, ...]
     installed_m: Array
+    acting_m: Array
+    credited_mpa: Array
+    """(e, n) capacity of each element that counts where capacities are added up."""
 
 
 def evaluate_class(
     planned: PlannedClass,
     curve: GroundCurve,
-    profile: Chosen[ClosureProfileMethod],
+    steps: ChosenSteps,
     sections: Sections,
     criteria: Criteria,
+    tables: PressureTables | None = None,
 ) -> Evaluated:
-    """A class on sections whose unsupported closure and plastic radius stand in them."""
+    """A class on sections whose unsupported closure, plastic radius and needed pressure stand in
+    them. Classes of the same sections may share their tables."""
+    needed_mpa = sections["limit_pressure_mpa"]
     radius = sections["radius_m"]
-    springs = tuple(
-        contained_spring(item.kind, sections, item.element) for item in planned.elements
+    profile = steps.closure_profile
+    responses = tuple(
+        contained_reaction(item.kind, sections, item.element) for item in planned.elements
     )
-    installed = _installed_m(planned, profile, sections)
-    stiffness = np.array([spring.values[0] for spring in springs])
-    shape = (len(springs), sections.count)
-    rest = equilibrium(curve, radius, stiffness.reshape(shape), installed)
-    checks = _check_rows(planned, springs, rest, sections, criteria)
+    installed_at = [item.element.installed_at_m for item in planned.elements]
+    acting_at = [
+        acting_from_m(at, response.reaction)
+        for at, response in zip(installed_at, responses, strict=True)
+    ]
+    installed = _closure_at_m(installed_at, profile, sections)
+    acting = _closure_at_m(acting_at, profile, sections)
+    ground = curve_of_class(curve, steps.ground_reaction, sections, responses, installed)
+    rest = at_rest(
+        ground.curve,
+        sections,
+        profile,
+        responses,
+        installed_at,
+        acting,
+        planned.support_class.advance_m_per_day,
+        tables or PressureTables(),
+    )
+    if any(isinstance(response.reaction, GroundRing) for response in responses):
+        limit_m = radius * criteria.closure_pct / 100
+        needed_mpa = pressure_at_closure(ground.curve, radius, limit_m)
+    supported = _Supported.of(planned, responses, rest, ground.reason, sections)
+    checked = checked_capacities_mpa(supported, planned, responses)
+    credited = credited_capacities_mpa(responses, checked, rest, sections, acting, criteria)
+    checks = _check_rows(supported, planned, responses, credited, criteria)
+    limits = system_limits(ground.curve, radius, responses, checked, acting, rest)
     closure_pct = rest.closure_m / radius * 100
     loads = [check.carries_load for item in planned.elements for check in item.checks]
     outcome = class_outcome(
@@ -101,62 +151,144 @@ def evaluate_class(
         outcome.factor_of_safety,
         outcome.governing,
         outcome.adequate,
+        limits.first_failure_pressure_mpa,
+        limits.first_failure_closure_m * MM_PER_M,
+        limits.full_pressure_mpa,
+        limits.full_closure_m * MM_PER_M,
+        missing_pressure_mpa(responses, credited, sections, acting, needed_mpa, criteria),
+        class_capacities(planned, credited)["class_capacity_mpa"],
     )
-    return Evaluated(row, tuple(checks), rest, springs, installed)
+    return Evaluated(row, tuple(checks), rest, responses, installed, acting, credited)
 
 
-def _installed_m(
-    planned: PlannedClass, profile: Chosen[ClosureProfileMethod], sections: Sections
+def _closure_at_m(
+    distances_m: Sequence[float], profile: Chosen[ClosureProfileMethod], sections: Sections
 ) -> Array:
-    """(e, n) unsupported closure where each element is installed. [m]"""
+    """(e, n) unsupported closure at distances behind the face. [m]"""
     final = sections["closure_mm"] / MM_PER_M
-    installed = np.empty((len(planned.elements), sections.count))
-    for row, item in enumerate(planned.elements):
-        distance = np.full(sections.count, item.element.installed_at_m)
-        installed[row] = final * closure_share(profile, sections, distance)
-    return installed
+    closure = np.empty((len(distances_m), sections.count))
+    for row, distance in enumerate(distances_m):
+        share = closure_share(profile, sections, np.full(sections.count, distance))
+        closure[row] = final * share
+    return closure
 
 
-def _check_rows(
-    planned: PlannedClass,
-    springs: Sequence[Contained],
-    rest: Equilibrium,
-    sections: Sections,
-    criteria: Criteria,
-) -> list[CheckRow]:
-    """The checks of each element, then those of the class."""
-    unresolved = np.where(rest.converged, NO_REASON, UNRESOLVED).astype(object)
-    for spring in springs:
-        faulty = spring.reason != NO_REASON
-        unresolved[faulty] = spring.reason[faulty]
-    standing = np.flatnonzero(unresolved == NO_REASON)
-    supported = sections.with_columns(
-        {
+@dataclass(frozen=True, slots=True)
+class _Supported:
+    """Sections with a class at rest, the water on each element, and why single ones are not
+    computed."""
+
+    rest: RestingState
+    sections: Sections
+    water_mpa: Array
+    unresolved: Array
+
+    @classmethod
+    def of(
+        cls,
+        planned: PlannedClass,
+        responses: Sequence[ElementResponse],
+        rest: RestingState,
+        ground_reason: Array,
+        sections: Sections,
+    ) -> _Supported:
+        unresolved = np.where(rest.converged, NO_REASON, UNRESOLVED).astype(object)
+        underived = ground_reason != NO_REASON
+        unresolved[underived] = ground_reason[underived]
+        for response in responses:
+            faulty = response.reason != NO_REASON
+            unresolved[faulty] = response.reason[faulty]
+        state = {
             "support_pressure_mpa": rest.support_pressure_mpa,
             "supported_closure_mm": rest.closure_m * MM_PER_M,
             "supported_plastic_radius_m": rest.plastic_ratio * sections["radius_m"],
         }
-    )
-    water = element_water_mpa(planned, springs, sections)
+        water = element_water_mpa(planned, responses, sections)
+        return cls(rest, sections.with_columns(state), water, unresolved)
+
+    @property
+    def standing(self) -> Array:
+        return np.flatnonzero(self.unresolved == NO_REASON)
+
+
+def checked_capacities_mpa(
+    supported: _Supported, planned: PlannedClass, responses: Sequence[ElementResponse]
+) -> Array:
+    """(e, n) pressure at which the first load check of each element reaches its limit, at most
+    the capacity of its reaction: a bond that is left beyond the plastic zone may be less. [MPa]"""
+    standing = supported.standing
+    found = np.full((len(responses), supported.unresolved.size), np.nan)
+    for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True)):
+        columns = element_columns(supported.rest, response, position, supported.water_mpa[position])
+        full = {**columns, "element_pressure_mpa": response.capacity_mpa}
+        at_capacity = supported.sections.with_columns(full).take(standing)
+        share = np.ones(standing.size)
+        for check in item.checks:
+            if check.carries_load:
+                result, _ = contained_evaluation(check, at_capacity, item.element)
+                demand, capacity = result.values
+                with np.errstate(divide="ignore", invalid="ignore"):
+                    own = np.where(demand > 0, capacity / demand, 1.0)
+                share = np.minimum(share, np.where(own >= 1 - ROUNDING, 1.0, own))
+        found[position, standing] = response.capacity_mpa[standing] * share
+    return found
+
+
+def credited_capacities_mpa(
+    responses: Sequence[ElementResponse],
+    checked_mpa: Array,
+    rest: RestingState,
+    sections: Sections,
+    acting_m: Array,
+    criteria: Criteria,
+) -> Array:
+    """(e, n) capacity of each element that counts where capacities are added up: no more than a
+    yielding element gives at rest or within the closure limit, and nothing of bolts that change
+    the ground. [MPa]"""
+    credited = checked_mpa.copy()
+    limit = sections["radius_m"] * criteria.closure_pct / 100
+    for position, response in enumerate(responses):
+        if isinstance(response.reaction, GroundRing):
+            credited[position] = np.where(np.isnan(checked_mpa[position]), np.nan, 0.0)
+        elif isinstance(response.reaction, PressureOfClosure):
+            at_rest_m = np.maximum(rest.element_moved_m[position], 0)
+            moved = np.maximum(limit - acting_m[position], at_rest_m)
+            given = response.reaction.pressure_and_slope(moved)[0]
+            credited[position] = np.minimum(checked_mpa[position], given)
+    return credited
+
+
+def _check_rows(
+    supported: _Supported,
+    planned: PlannedClass,
+    responses: Sequence[ElementResponse],
+    credited_mpa: Array,
+    criteria: Criteria,
+) -> list[CheckRow]:
+    """The checks of each element, then those of the class."""
+    unresolved, standing = supported.unresolved, supported.standing
+    rest, water = supported.rest, supported.water_mpa
     rows: list[CheckRow] = []
-    for position, (item, spring) in enumerate(zip(planned.elements, springs, strict=True)):
+    for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True)):
         if not item.checks:
             continue
-        of_element = supported.with_columns(
-            {
-                "element_pressure_mpa": rest.element_pressure_mpa[position] + water[position],
-                "element_capacity_mpa": spring.values[1],
-            }
-        ).take(standing)
+        columns = element_columns(rest, response, position, water[position])
+        of_element = supported.sections.with_columns(columns).take(standing)
         for check in item.checks:
             found, left_out = contained_evaluation(check, of_element, item.element)
             row = _row(found, left_out, unresolved, standing, check.carries_load, True, criteria)
             rows.append(row)
     if planned.class_checks:
-        of_class = supported.with_columns(class_capacities(planned, springs, sections.count))
+        of_class = supported.sections.with_columns(
+            {
+                **class_capacities(planned, credited_mpa),
+                "ring_pressure_mpa": ring_pressure_mpa(planned, rest, water),
+            }
+        )
         of_class = of_class.take(standing)
+        members = tuple(item.element for item in planned.elements)
         for class_check in planned.class_checks:
-            found, left_out = contained_class_evaluation(class_check, of_class)
+            found, left_out = contained_class_evaluation(class_check, of_class, members)
             must_pass = counts(class_check, criteria)
             load = class_check.carries_load
             rows.append(_row(found, left_out, unresolved, standing, load, must_pass, criteria))
@@ -189,32 +321,78 @@ def _row(
     return CheckRow(demand, capacity, *judged, counting, reason)
 
 
+def element_columns(
+    rest: RestingState, response: ElementResponse, position: int, water_mpa: Array
+) -> dict[str, Array]:
+    """What the checks of an element find beside the ground and the state of the class."""
+    columns = {
+        "element_pressure_mpa": rest.element_pressure_mpa[position] + water_mpa,
+        "element_capacity_mpa": response.capacity_mpa,
+        "element_moved_mm": rest.element_moved_m[position] * MM_PER_M,
+    }
+    path = rest.paths.get(position)
+    if path is not None:
+        columns |= path.worst(water_mpa)
+    return columns
+
+
 def element_water_mpa(
-    planned: PlannedClass, springs: Sequence[Contained], sections: Sections
+    planned: PlannedClass, responses: Sequence[ElementResponse], sections: Sections
 ) -> Array:
-    """(e, n) share of the water pressure that each ring of a watertight lining carries, by
-    stiffness. [MPa]"""
-    stiffness = np.zeros((len(springs), sections.count))
-    for position, (item, spring) in enumerate(zip(planned.elements, springs, strict=True)):
-        if item.is_ring:
-            stiffness[position] = spring.values[0]
+    """(e, n) share of the water pressure that each ring of a watertight lining carries, by its
+    capacity where a ring is no linear spring, else by stiffness. [MPa]"""
+    rings = [
+        (position, response)
+        for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True))
+        if item.is_ring
+    ]
+    by_stiffness = not any(np.all(np.isnan(r.stiffness_mpa_per_m)) for _, r in rings)
+    weights = np.zeros((len(responses), sections.count))
+    for position, response in rings:
+        weights[position] = response.stiffness_mpa_per_m if by_stiffness else response.capacity_mpa
     together = np.zeros(sections.count)
-    for own in stiffness:
+    for own in weights:
         together = together + own
-    share = np.divide(stiffness, together, out=np.zeros_like(stiffness), where=together > 0)
+    share = np.divide(weights, together, out=np.zeros_like(weights), where=together > 0)
     return share * sections["lining_water_mpa"]
 
 
-def class_capacities(
-    planned: PlannedClass, springs: Sequence[Contained], count: int
-) -> dict[str, Array]:
-    """Capacity (n,) of all elements together, and of the rings alone. [MPa]"""
-    whole, rings = np.zeros(count), np.zeros(count)
-    for item, spring in zip(planned.elements, springs, strict=True):
-        whole = whole + spring.values[1]
+def ring_pressure_mpa(planned: PlannedClass, rest: RestingState, water_mpa: Array) -> Array:
+    """(n,) pressure that the rings of a class carry together, water included. [MPa]"""
+    total = np.zeros(rest.support_pressure_mpa.size)
+    for position, item in enumerate(planned.elements):
         if item.is_ring:
-            rings = rings + spring.values[1]
+            total = total + rest.element_pressure_mpa[position] + water_mpa[position]
+    return total
+
+
+def class_capacities(planned: PlannedClass, credited_mpa: Array) -> dict[str, Array]:
+    """Capacity (n,) of all elements together, and of the rings alone. [MPa]"""
+    whole, rings = np.zeros((2, *credited_mpa.shape[1:]))
+    for item, own in zip(planned.elements, credited_mpa, strict=True):
+        whole = whole + own
+        if item.is_ring:
+            rings = rings + own
     return {"class_capacity_mpa": whole, "ring_capacity_mpa": rings}
+
+
+def missing_pressure_mpa(
+    responses: Sequence[ElementResponse],
+    credited_mpa: Array,
+    sections: Sections,
+    acting_m: Array,
+    needed_mpa: Array,
+    criteria: Criteria,
+) -> Array:
+    """(n,) by how much a class falls short at the limit of closure: the pressure that the ground
+    then needs, less what its elements give there, each no more than its capacity over the required
+    factor; 0 where nothing is missing, NaN with elements that age. [MPa]"""
+    limit = sections["radius_m"] * criteria.closure_pct / 100
+    given = np.zeros(sections.count)
+    for response, credited, acts in zip(responses, credited_mpa, acting_m, strict=True):
+        pressure = pressure_of(response.reaction, np.maximum(limit - acts, 0))
+        given = given + np.minimum(pressure, credited / criteria.factor_of_safety)
+    return np.maximum(needed_mpa - given, 0)
 
 
 def _least(installed: Array, count: int) -> Array:

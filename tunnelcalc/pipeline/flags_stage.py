@@ -13,7 +13,10 @@ from tunnelcalc.pipeline.stage import Stage
 from tunnelcalc.pipeline.stress_cases import larger_column
 from tunnelcalc.pipeline.support_stages import failing_column
 from tunnelcalc.plugin.contract import ValidityFlag
+from tunnelcalc.plugin.flag import NumberOfFlag
 from tunnelcalc.plugin.isolation import NO_REASON, Contained, contained
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import Project
 from tunnelcalc.results import FlagCount
 from tunnelcalc.sections import Sections
 from tunnelcalc.validity import (
@@ -88,6 +91,31 @@ def flags_stage(
         compute,
         whole_alignment=True,
     )
+
+
+def flags_of(project: Project, registry: Registry) -> tuple[ValidityFlag, ...]:
+    """The flags that a project is screened for."""
+    found = []
+    for flag in registry.flags(project.plugins):
+        of_project = getattr(flag, "of_project", None)
+        found.append(flag if of_project is None else of_project(project))
+    return tuple(found)
+
+
+def flag_numbers(flag: ValidityFlag, sections: Sections) -> list[tuple[NumberOfFlag, Array]]:
+    """The numbers (n,) behind the value of a flag; NaN where they could not be computed."""
+    numbers: tuple[NumberOfFlag, ...] = getattr(flag, "numbers", ())
+    complete = with_optional_columns(sections, (flag,)) if numbers else sections
+    found = []
+    for number in numbers:
+        told = contained(
+            lambda part, n=number: (n.compute(part),),  # type: ignore[misc]
+            complete,
+            ("number",),
+            any_value=True,
+        )
+        found.append((number, told.values[0]))
+    return found
 
 
 def flag_value(flag: ValidityFlag, sections: Sections) -> Array:

@@ -2,11 +2,17 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
-from tunnelcalc.plugin.contract import ClassCheck, SupportCheck, SupportKind
+from tunnelcalc.plugin.contract import (
+    ClassCheck,
+    ClassCheckWithOptions,
+    SupportCheck,
+    SupportKind,
+)
 from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.plugin.ring_sections import with_section
 from tunnelcalc.project import Criteria, Element, Project, SupportClass
 from tunnelcalc.results import CheckLine
 
@@ -43,21 +49,36 @@ def plan_classes(project: Project, registry: Registry) -> tuple[PlannedClass, ..
     of_classes = tuple(
         check for check in registry.class_checks(project.plugins) if check.concerns(project)
     )
-    return tuple(
-        PlannedClass(
-            support_class,
-            tuple(
-                PlannedElement(
-                    element,
-                    registry.support_kind(element.kind),
-                    tuple(registry.checks_for(element, project.plugins)),
-                )
-                for element in support_class.elements
-            ),
-            of_classes,
-        )
-        for support_class in project.support_classes
-    )
+    return tuple(_planned(one, of_classes, project, registry) for one in project.support_classes)
+
+
+def _planned(
+    support_class: SupportClass,
+    of_classes: Sequence[ClassCheck],
+    project: Project,
+    registry: Registry,
+) -> PlannedClass:
+    elements = []
+    for plain in support_class.elements:
+        kind = registry.support_kind(plain.kind)
+        # Here and not where it is read: an element may be changed after that.
+        element = with_section(kind, plain)
+        checks = tuple(registry.checks_for(element, project.plugins))
+        elements.append(PlannedElement(element, kind, checks))
+    members = tuple(item.element for item in elements)
+    class_checks = tuple(_for_class(of_classes, members, project.criteria))
+    return PlannedClass(support_class, tuple(elements), class_checks)
+
+
+def _for_class(
+    checks: Sequence[ClassCheck], members: tuple[Element, ...], criteria: Criteria
+) -> Iterator[ClassCheck]:
+    """The checks of a class as a whole, those with options as the project wants them."""
+    for check in checks:
+        if not isinstance(check, ClassCheckWithOptions):
+            yield check
+        elif counts(check, criteria) and check.concerns_class(members):
+            yield check.configured(criteria.options)
 
 
 def check_lines(plan: Sequence[PlannedClass]) -> tuple[CheckLine, ...]:

@@ -19,6 +19,7 @@ from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, M, closure_share, 
 from tunnelcalc.pipeline.envelope_curves import envelopes
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.incidents import ENDLESS_RING, NO_CLOSURE
+from tunnelcalc.pipeline.lining_curves import lining_of
 from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.pipeline.stress_cases import MEAN, larger_stress
 from tunnelcalc.pipeline.support_stages import STRESS_CASE
@@ -35,8 +36,12 @@ from tunnelcalc.section_curves import (
     SectionCurves,
 )
 from tunnelcalc.sections import Sections
+from tunnelcalc.support.reaction import LinearSpring, PressureOfClosure, Reaction
 
 BEYOND_CAPACITY = 1.2
+POINTS = 61
+LEAST_MOVEMENT_M = 0.02
+"""Of a line that is drawn although the wall hardly moves. [m]"""
 """Of its capacity: how far the line of an element is followed."""
 
 Unknown = tuple[str, str]
@@ -50,22 +55,25 @@ def section_curves(
     `section` is one section with all columns of the section stages.
     """
     planned = plan[of]
-    larger = larger_stress(steps.ground_reaction, section)
+    larger = larger_stress(steps.ground_reaction, section, project.criteria)
     runs = [(STRESS_CASES[MEAN], section, curves(steps.ground_reaction, section))]
     if larger.positions.size:
         runs.append((STRESS_CASES[1 - MEAN], larger.sections, larger.curve))
     cases: list[CaseCurves] = []
     unknown: dict[Unknown, None] = {}
     for name, part, curve in runs:
-        found = evaluate_class(planned, curve, steps.closure_profile, part, project.criteria)
+        found = evaluate_class(planned, curve, steps, part, project.criteria)
+        lining, fault = lining_of(planned, found, part)
         cases.append(
             CaseCurves(
                 name,
                 _of_ground(curve, part, found),
                 _of_drive(steps, planned, part),
                 _of_class(planned, found, part),
+                lining,
             )
         )
+        unknown.update({(f"{planned.support_class.name} lining", fault): None} if fault else {})
         unknown.update(dict.fromkeys(_unknown(planned, found, part)))
     required = int(section["required_class"][0])
     return SectionCurves(
@@ -132,17 +140,19 @@ def _of_drive(steps: ChosenSteps, planned: PlannedClass, section: Sections) -> C
 
 
 def _of_class(planned: PlannedClass, found: Evaluated, section: Sections) -> ReactionOfClass:
-    water = element_water_mpa(planned, found.springs, section)
+    water = element_water_mpa(planned, found.responses, section)
     rest = found.rest
     elements = []
-    for position, (item, spring) in enumerate(zip(planned.elements, found.springs, strict=True)):
-        stiffness, capacity = (float(value) for value in spring.values[:, 0])
-        installed_mm = float(found.installed_m[position, 0]) * MM_PER_M
+    for position, (item, response) in enumerate(
+        zip(planned.elements, found.responses, strict=True)
+    ):
+        stiffness, capacity = (
+            float(values[0]) for values in (response.stiffness_mpa_per_m, response.capacity_mpa)
+        )
+        installed_mm = float(found.acting_m[position, 0]) * MM_PER_M
         at_rest = float(rest.element_pressure_mpa[position, 0])
-        pressure = np.array([0.0, capacity, BEYOND_CAPACITY * capacity])
-        beyond = np.full(3, np.nan)
-        if stiffness > 0:
-            beyond = installed_mm + pressure / stiffness * MM_PER_M
+        moved, pressure = _line_of(response.reaction, found, position, capacity)
+        beyond = installed_mm + moved * MM_PER_M
         elements.append(
             ReactionOfElement(
                 item.element.label,
@@ -168,6 +178,32 @@ def _of_class(planned: PlannedClass, found: Evaluated, section: Sections) -> Rea
     )
 
 
+def _line_of(
+    reaction: Reaction, found: Evaluated, position: int, capacity_mpa: float
+) -> tuple[Array, Array]:
+    """Movements since the element acts [m] and its pressures there [MPa]."""
+    path = found.rest.paths.get(position)
+    if path is not None:
+        acts = path.pressure_mpa[:, 0] > 0
+        begins = found.acting_m[position, 0]
+        moved = np.maximum(path.closure_m[acts, 0] - begins, 0)
+        return np.append(0.0, moved), np.append(0.0, path.pressure_mpa[acts, 0])
+    if isinstance(reaction, PressureOfClosure):
+        at_rest = float(found.rest.element_moved_m[position, 0])
+        moved = np.linspace(0, BEYOND_CAPACITY * max(at_rest, LEAST_MOVEMENT_M), POINTS)
+        pressures = [float(reaction.pressure_and_slope(np.array([m]))[0][0]) for m in moved]
+        return moved, np.array(pressures)
+    pressure = np.array([0.0, capacity_mpa, BEYOND_CAPACITY * capacity_mpa])
+    if not isinstance(reaction, LinearSpring) or not reaction.stiffness_mpa_per_m[0] > 0:
+        return np.full(3, np.nan), pressure
+    moved = pressure / float(reaction.stiffness_mpa_per_m[0])
+    if reaction.beyond == "yields":
+        pressure = np.minimum(pressure, capacity_mpa)
+    if reaction.beyond == "breaks":
+        pressure = np.where(pressure > capacity_mpa, 0.0, pressure)
+    return moved, pressure
+
+
 def _together_mm(elements: Sequence[ReactionOfElement], rest_mm: float) -> Array:
     """Closures between which the line of all elements together is straight. [mm]"""
     ends = [element.closure_mm[-1] for element in elements]
@@ -184,8 +220,11 @@ def _together_mpa(elements: Sequence[ReactionOfElement], closure_mm: Array) -> A
     """What all elements carry at closures (m,), each from its own installation. [MPa]"""
     total = np.zeros(closure_mm.size)
     for element in elements:
-        moved = np.maximum(closure_mm - element.installation_closure_mm, 0.0)
-        total = total + element.stiffness_mpa_per_m * moved / MM_PER_M
+        if not np.all(np.isfinite(element.closure_mm)):
+            continue
+        order = np.argsort(element.closure_mm, kind="stable")
+        line = element.closure_mm[order], element.pressure_mpa[order]
+        total = total + np.interp(closure_mm, *line, left=0.0)
     return total
 
 
@@ -198,7 +237,7 @@ def _unknown(planned: PlannedClass, found: Evaluated, section: Sections) -> Iter
     name = planned.support_class.name
     faults = [
         (f"{name} {item.element.label}", str(spring.reason[0]))
-        for item, spring in zip(planned.elements, found.springs, strict=True)
+        for item, spring in zip(planned.elements, found.responses, strict=True)
         if spring.reason[0] != NO_REASON
     ]
     yield from faults

@@ -10,6 +10,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.class_evaluation import CheckRow, ClassRow, Evaluated, evaluate_class
 from tunnelcalc.pipeline.dispatch import ChosenSteps, curves
 from tunnelcalc.pipeline.plan import PlannedClass, check_lines
+from tunnelcalc.pipeline.resting_state import PressureTables
 from tunnelcalc.pipeline.stage import Stage
 from tunnelcalc.pipeline.stress_cases import (
     LARGER,
@@ -17,13 +18,13 @@ from tunnelcalc.pipeline.stress_cases import (
     LargerStress,
     larger_column,
     larger_stress,
+    with_limit_pressure,
 )
 from tunnelcalc.project import Criteria
 from tunnelcalc.results import CheckLine
 from tunnelcalc.schedule.selection import NONE_ADEQUATE, required_classes
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import Outcome
-from tunnelcalc.support.equilibrium import pressure_at_closure
 
 CLASS_COLUMNS = (
     "installation_closure_mm",
@@ -34,6 +35,12 @@ CLASS_COLUMNS = (
     "class_factor_of_safety",
     "class_governing",
     "class_adequate",
+    "class_first_failure_pressure_mpa",
+    "class_first_failure_closure_mm",
+    "class_full_pressure_mpa",
+    "class_full_closure_mm",
+    "class_missing_pressure_mpa",
+    "class_capacity_mpa",
 )
 """Columns (n, c): one value a section and support class, in the order of `ClassRow`."""
 
@@ -66,18 +73,24 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
 
     def compute(sections: Sections) -> Mapping[str, Array]:
         curve = curves(steps.ground_reaction, sections)
-        larger = larger_stress(steps.ground_reaction, sections)
+        sections = with_limit_pressure(sections, curve, criteria)
+        larger = larger_stress(steps.ground_reaction, sections, criteria)
+        limit = np.array(sections["limit_pressure_mpa"])
+        if larger.positions.size:
+            more = larger.sections["limit_pressure_mpa"]
+            limit[larger.positions] = np.maximum(limit[larger.positions], more)
+        tables = PressureTables()
         rows: list[ClassRow] = []
         checks: list[CheckRow] = []
         failed: list[Array] = []
         cases: list[Array] = []
         for planned in plan:
-            found = evaluate_class(planned, curve, steps.closure_profile, sections, criteria)
+            found = evaluate_class(planned, curve, steps, sections, criteria, tables)
             row, of_class, case = found.row, found.checks, np.full(sections.count, MEAN)
             fails = [check.outcome == Outcome.FAIL for check in of_class]
             if larger.positions.size:
                 other = evaluate_class(
-                    planned, larger.curve, steps.closure_profile, larger.sections, criteria
+                    planned, larger.curve, steps, larger.sections, criteria, tables
                 )
                 row, of_class, case = _heavier(found, other, larger.positions)
                 for own, check in zip(fails, other.checks, strict=True):
@@ -95,10 +108,18 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
                 sections.count, "crown_dead_weight" not in criteria.chosen_checks
             ),
             "profile_plastic_limit": _profile_limit(steps, sections),
+            "limit_pressure_mpa": limit,
             **_larger_state(larger, sections.count),
         }
 
-    own = ("radius_m", "closure_mm", "plastic_radius_m", "larger_stress_mpa", "lining_water_mpa")
+    own = (
+        "radius_m",
+        "closure_mm",
+        "plastic_radius_m",
+        "critical_pressure_mpa",
+        "larger_stress_mpa",
+        "lining_water_mpa",
+    )
     needs = (*steps.ground_reaction.needs, *steps.closure_profile.needs, *own)
     return Stage(
         "support",
@@ -113,6 +134,7 @@ def support_stage(plan: Sequence[PlannedClass], steps: ChosenSteps, criteria: Cr
             *failing,
             "dead_weight_not_required",
             "profile_plastic_limit",
+            "limit_pressure_mpa",
             *(larger_column(name) for name in STATE_WITHOUT_SUPPORT),
         ),
         compute,
@@ -184,33 +206,20 @@ def _profile_limit(steps: ChosenSteps, sections: Sections) -> Array:
     return limit
 
 
-def choice_stage(steps: ChosenSteps, criteria: Criteria) -> Stage:
+def choice_stage() -> Stage:
     """The first class that meets every criterion; where none does, the pressure needed."""
 
     def compute(sections: Sections) -> Mapping[str, Array]:
         required = required_classes(sections["class_adequate"])
-        needed = np.full(sections.count, np.nan)
-        none = np.flatnonzero(required == NONE_ADEQUATE)
-        if none.size:
-            failed = sections.take(none)
-            radius = failed["radius_m"]
-            limit = radius * criteria.closure_pct / 100
-            curve = curves(steps.ground_reaction, failed)
-            pressure = pressure_at_closure(curve, radius, limit)
-            larger = larger_stress(steps.ground_reaction, failed)
-            if larger.positions.size:
-                at = larger.positions
-                more = pressure_at_closure(larger.curve, radius[at], limit[at])
-                pressure[at] = np.maximum(pressure[at], more)
-            needed[none] = pressure
+        none = required == NONE_ADEQUATE
+        needed = np.where(none, sections["limit_pressure_mpa"], np.nan)
         return {"required_class": required, "needed_pressure_mpa": needed}
 
-    own = ("radius_m", "class_adequate", "larger_stress_mpa")
     return Stage(
         "choice",
         "first listed class that meets every criterion, else the pressure that the closure limit "
         "would need",
-        tuple(dict.fromkeys((*steps.ground_reaction.needs, *own))),
+        ("class_adequate", "limit_pressure_mpa"),
         ("required_class", "needed_pressure_mpa"),
         compute,
     )

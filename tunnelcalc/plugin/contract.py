@@ -21,9 +21,10 @@ from tunnelcalc.plugin.flag import Condition
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project
 from tunnelcalc.results import RunResult
-from tunnelcalc.section_curves import SectionCurves
+from tunnelcalc.section_curves import SectionCurves, ThrustAndMoment
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.reaction import Reaction
+from tunnelcalc.support.ring_section import RingSection
 from tunnelcalc.validity import Threshold
 from tunnelcalc.vocabulary import UNLIMITED, Limits, Sort
 
@@ -35,8 +36,9 @@ SectionValues = Mapping[str, float | str]
 class Parameter:
     """A parameter of a support kind: validation and listings are made from this alone.
 
-    A parameter with `only_if = ("contact", "blocked")` is required when that choice is made and
-    refused otherwise; every other parameter is required.
+    A parameter with `only_if = ("contact", ("blocked",))` is required when one of those choices
+    is made and refused otherwise; every other parameter is required. Only a choice may have a
+    `default`: the word that is meant where the project says nothing. No number has one.
     """
 
     name: str
@@ -44,7 +46,8 @@ class Parameter:
     unit: str = ""
     limits: Limits = UNLIMITED
     choices: tuple[str, ...] = ()
-    only_if: tuple[str, str] | None = None
+    only_if: tuple[str, tuple[str, ...]] | None = None
+    default: str = ""
 
     @property
     def sort(self) -> Sort:
@@ -103,6 +106,14 @@ class SupportKind(Protocol):
 
     def amounts(self, sections: Sections, element: Element) -> Iterable[Amount]:
         """Quantities a metre of tunnel. Needs `radius_m`."""
+
+
+@runtime_checkable
+class RingKind(SupportKind, Protocol):
+    """A kind of ring that tells its section, so that checks of a class can put rings together."""
+
+    def ring_section(self, element: Element) -> RingSection:
+        """The section of an element, in a metre of tunnel; stands in `Element.section`."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -192,8 +203,37 @@ class ClassCheck(Protocol):
     def concerns(self, project: Project) -> bool:
         """Whether the check is made in this project at all."""
 
-    def evaluate(self, sections: Sections) -> Evaluation:
-        """Demand and capacity on each section."""
+    def evaluate(self, sections: Sections, elements: tuple[Element, ...]) -> Evaluation:
+        """Demand and capacity on each section of a class of these elements."""
+
+
+@runtime_checkable
+class ClassCheckWithOptions(ClassCheck, Protocol):
+    """A check of a class by choice that asks for more where it is chosen.
+
+    A project states the options beside the choice, under `criteria`, by their names; where the
+    check is not chosen they are refused, and it is not made at all.
+    """
+
+    @property
+    def options(self) -> tuple[Parameter, ...]:
+        """The options, each with unit and range; without `only_if`."""
+
+    def configured(self, values: Mapping[str, float | str]) -> ClassCheck:
+        """The check with the project's values of its options, by name."""
+
+    def concerns_class(self, elements: tuple[Element, ...]) -> bool:
+        """Whether the check is made for a class of these elements at all."""
+
+
+@runtime_checkable
+class LiningCheck(ClassCheck, Protocol):
+    """A check of a class that tells the forces around its lining, for `tunnelcalc curves`."""
+
+    def thrust_and_moment(
+        self, sections: Sections, elements: tuple[Element, ...]
+    ) -> ThrustAndMoment | None:
+        """The forces of one section; None where the class has no lining that bears together."""
 
 
 STRENGTH_COLUMNS = (
@@ -331,7 +371,11 @@ class ValidityFlag(Protocol):
         """Where its outside thresholds hold. None: everywhere."""
 
     def value(self, sections: Sections) -> Array:
-        """(n,) in `unit`; NaN where it cannot be told."""
+        """(n,) in `unit`; NaN where it cannot be told.
+
+        A flag may also have `numbers`, which are told beside the value, and `of_project`, which
+        gives the flag of one project: see `Flag`.
+        """
 
 
 class GroundReader(Protocol):

@@ -6,6 +6,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 
 from tunnelcalc.arrays import Array
+from tunnelcalc.project import Project
 from tunnelcalc.sections import Sections
 from tunnelcalc.validity import Threshold
 
@@ -19,8 +20,21 @@ class Condition:
 
 
 @dataclass(frozen=True, slots=True)
+class NumberOfFlag:
+    """A number behind the value of a flag, told beside it: what it is, unit, and (n,) values."""
+
+    meaning: str
+    unit: str
+    compute: Callable[[Sections], Array]
+
+
+@dataclass(frozen=True, slots=True)
 class Flag:
-    """One flag; `compute` gives the value of each section."""
+    """One flag; `compute` gives the value of each section.
+
+    A flag that has to know more of the project than stands in its sections, such as the elements
+    of its classes, has `of_project`, which gives the flag of a project.
+    """
 
     name: str
     meaning: str
@@ -33,6 +47,8 @@ class Flag:
     may_be_missing: tuple[str, ...] = ()
     applies: Condition | None = None
     outside_applies: Condition | None = None
+    numbers: tuple[NumberOfFlag, ...] = ()
+    of_project: Callable[[Project], Flag] | None = None
 
     def value(self, sections: Sections) -> Array:
         return self.compute(sections)

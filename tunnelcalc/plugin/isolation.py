@@ -16,7 +16,6 @@ from tunnelcalc.plugin.contract import Amount, ClassCheck, Evaluation, SupportCh
 from tunnelcalc.plugin.registry import describe
 from tunnelcalc.project import Element
 from tunnelcalc.sections import Sections
-from tunnelcalc.support.reaction import LinearSpring
 
 NO_REASON = ""
 FEW_SECTIONS = 8
@@ -88,18 +87,6 @@ def _called(
     return values, NO_REASON
 
 
-def contained_spring(kind: SupportKind, sections: Sections, element: Element) -> Contained:
-    """Stiffness [MPa/m] and capacity [MPa] of an element that reacts as a linear spring."""
-
-    def call(part: Sections) -> Sequence[Array]:
-        reaction = kind.reaction(part, element)
-        if not isinstance(reaction, LinearSpring):
-            raise TypeError(f"the reaction is a {type(reaction).__name__}, not a LinearSpring")
-        return (reaction.stiffness_mpa_per_m, reaction.capacity_mpa)
-
-    return contained(call, sections, ("stiffness", "capacity"))
-
-
 def contained_evaluation(
     check: SupportCheck, sections: Sections, element: Element
 ) -> tuple[Contained, Array]:
@@ -114,9 +101,13 @@ def contained_evaluation(
     )
 
 
-def contained_class_evaluation(check: ClassCheck, sections: Sections) -> tuple[Contained, Array]:
+def contained_class_evaluation(
+    check: ClassCheck, sections: Sections, elements: tuple[Element, ...]
+) -> tuple[Contained, Array]:
     """The same for a check of a class as a whole."""
-    return _contained_check(check.evaluate, sections, check.carries_load)
+    return _contained_check(
+        lambda part: check.evaluate(part, elements), sections, check.carries_load
+    )
 
 
 def _contained_check(

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from importlib.metadata import EntryPoint, entry_points
+from pathlib import Path
 from typing import Any, cast
 
 import pluggy
 
-from tunnelcalc.errors import DuplicateNameError
+from tunnelcalc.errors import DuplicateNameError, InputError
 from tunnelcalc.plugin import hooks
 from tunnelcalc.plugin.contract import (
     ClassCheck,
@@ -21,6 +22,7 @@ from tunnelcalc.plugin.contract import (
     SupportKind,
     ValidityFlag,
 )
+from tunnelcalc.plugin.files import HashedFile, files_of, load_file, refusal
 from tunnelcalc.project import Element
 from tunnelcalc.verification import VerificationCheck
 
@@ -45,13 +47,21 @@ SORTS = {
 
 @dataclass(frozen=True, slots=True)
 class PluginSource:
-    """Where a plugin comes from: its entry-point name, distribution and version."""
+    """Where a plugin comes from: its entry-point name, distribution and version.
+
+    A plugin that was named as a file has no distribution and no version. `files` are those of its
+    module as they were when it was loaded.
+    """
 
     plugin: str
     distribution: str
     version: str
+    plugin_file: str = ""
+    files: tuple[HashedFile, ...] = ()
 
     def __str__(self) -> str:
+        if self.plugin_file:
+            return f"{self.plugin} (file {self.plugin_file})"
         return f"{self.plugin} ({self.distribution} {self.version})"
 
 
@@ -169,11 +179,14 @@ class Registry:
                 yield offer
 
 
-def load_plugins(points: Iterable[EntryPoint] | None = None) -> Registry:
-    """Load every installed plugin, or those of the given entry points.
+def load_plugins(
+    points: Iterable[EntryPoint] | None = None, *, files: Iterable[Path] = ()
+) -> Registry:
+    """Load every installed plugin, or those of the given entry points; then the named files.
 
-    A plugin that fails to load, misspells a hook or claims a taken name is reported in
-    `failures` and leaves the others unharmed.
+    An installed plugin that fails to load, misspells a hook or claims a taken name is reported in
+    `failures` and leaves the others unharmed. A file was asked for: where it cannot be used,
+    `InputError` is raised. No file is loaded that `files` does not name.
     """
     registry = Registry()
     manager = pluggy.PluginManager("tunnelcalc")
@@ -188,12 +201,39 @@ def load_plugins(points: Iterable[EntryPoint] | None = None) -> Registry:
             continue
         try:
             module = point.load()
+            source = replace(source, files=files_of(module))
         except (Exception, SystemExit) as error:  # a stranger's module may raise anything
             remedy = "reinstall or remove the distribution, or install what it misses"
             registry.failures.append(LoadFailure(source, describe(error), remedy))
             continue
         register_plugin(registry, manager, module, source)
+    for path in files:
+        _load_named_file(registry, manager, path)
     return registry
+
+
+def _load_named_file(registry: Registry, manager: pluggy.PluginManager, path: Path) -> None:
+    """A file as a plugin named by its stem. Raises `InputError` on any fault of it."""
+    taken = [str(source) for source in registry.sources if source.plugin == path.stem]
+    if taken:
+        raise refusal(
+            path,
+            f"would be a plugin named {path.stem}, as is {taken[0]}",
+            "give the file another name, or leave one of the two out",
+        )
+    try:
+        module, hashed = load_file(path)
+    except InputError:
+        raise
+    except (Exception, SystemExit) as error:
+        raise refusal(
+            path, f"cannot be loaded: {describe(error)}", "mend the file, or leave it out"
+        ) from error
+    source = PluginSource(path.stem, "", "", str(path), (hashed,))
+    told = len(registry.failures)
+    register_plugin(registry, manager, module, source)
+    for failure in registry.failures[told:]:
+        raise refusal(path, f"cannot be used: {failure.cause}", "mend the file, or leave it out")
 
 
 def _source(point: EntryPoint) -> PluginSource:

@@ -29,10 +29,18 @@ from tunnelcalc.project import Element
 
 @runtime_checkable
 class ValueLines(Protocol):
-    """Strengths, moduli and checks of a class as a whole."""
+    """Strengths and moduli."""
 
     def lines(self, values: SectionValues) -> Sequence[SheetLine]:
         """The lines of one section."""
+
+
+@runtime_checkable
+class ClassLines(Protocol):
+    """Checks of a class as a whole."""
+
+    def lines(self, values: SectionValues, elements: tuple[Element, ...]) -> Sequence[SheetLine]:
+        """The lines of a class of these elements on one section."""
 
 
 @runtime_checkable

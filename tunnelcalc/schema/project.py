@@ -5,14 +5,25 @@ from __future__ import annotations
 import json
 
 from tunnelcalc.inputs.method_choices import BY_UNIT
-from tunnelcalc.inputs.project_file import YES_OR_NO
+from tunnelcalc.inputs.project_file import TRUE, YES_OR_NO
+from tunnelcalc.plugin.contract import ClassCheckWithOptions
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import DEFAULT_METHODS
 from tunnelcalc.schema.alignment import chainage_notation, opening
 from tunnelcalc.schema.flags import flags
 from tunnelcalc.schema.ground import ground
-from tunnelcalc.schema.parts import NOT_BLANK, Schema, choice, listing, number, table, text
-from tunnelcalc.schema.support import support_classes
+from tunnelcalc.schema.parts import (
+    NOT_BLANK,
+    Schema,
+    choice,
+    listing,
+    needs,
+    number,
+    table,
+    text,
+    without,
+)
+from tunnelcalc.schema.support import parameter_schema, support_classes
 from tunnelcalc.vocabulary import Limits
 
 DIALECT = "https://json-schema.org/draft/2020-12/schema"
@@ -87,11 +98,21 @@ def _criteria(registry: Registry) -> Schema:
         ),
     }
     required = list(keys)
+    conditions = []
     for offer in registry.of_sort("class_check"):
-        if offer.thing.by_choice:
-            meaning = f"whether a class must pass {offer.name}: {offer.thing.meaning}"
+        check = offer.thing
+        if check.by_choice:
+            meaning = f"whether a class must pass {offer.name}: {check.meaning}"
             keys[offer.name] = choice(meaning, YES_OR_NO)
-    return table("what makes a class adequate", keys, required)
+        if isinstance(check, ClassCheckWithOptions):
+            keys |= {option.name: parameter_schema(option) for option in check.options}
+            asked = [option.name for option in check.options if not option.default]
+            all_names = [option.name for option in check.options]
+            chosen = {"properties": {check.name: {"enum": choice("", TRUE)["enum"]}}}
+            if_chosen = {**chosen, **needs(check.name)}
+            conditions.append({"if": if_chosen, "then": needs(*asked), "else": without(*all_names)})
+    more = {"allOf": conditions} if conditions else {}
+    return table("what makes a class adequate", keys, required, **more)
 
 
 def _schedule() -> Schema:

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from tunnelcalc.inputs.support_classes import INSTALLED_AT, RESERVED_NAMES
+from collections.abc import Mapping
+
+from tunnelcalc.inputs.support_classes import ADVANCE, INSTALLED_AT, RESERVED_NAMES
 from tunnelcalc.plugin.contract import Parameter, SupportKind
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.schema.parts import (
@@ -31,6 +33,11 @@ def support_classes(registry: Registry) -> Schema:
         {
             "name": name,
             INSTALLED: _installed("distance behind the face at which the elements are installed"),
+            "advance_m_per_day": number(
+                "rate at which the face moves on; required where an element hardens with age",
+                ADVANCE,
+                "m/day",
+            ),
             "elements": listing("support elements of the class", _element(kinds)),
         },
         ["name", "elements"],
@@ -51,29 +58,43 @@ def _element(kinds: list[SupportKind]) -> Schema:
 
 
 def _kind(kind: SupportKind) -> Schema:
-    always = [p.name for p in kind.parameters if p.only_if is None]
-    conditions: dict[tuple[str, str], list[str]] = {}
+    always = [p.name for p in kind.parameters if p.only_if is None and not p.default]
+    conditions: dict[tuple[str, tuple[str, ...]], list[str]] = {}
     for parameter in kind.parameters:
-        if parameter.only_if is not None:
+        if parameter.only_if is not None and not parameter.default:
             conditions.setdefault(parameter.only_if, []).append(parameter.name)
     keys = {
         "kind": {"const": kind.name, "description": kind.meaning},
         INSTALLED: _installed("distance behind the face; instead of that of the class"),
-        **{parameter.name: _parameter(parameter) for parameter in kind.parameters},
+        **{parameter.name: parameter_schema(parameter) for parameter in kind.parameters},
     }
-    more = {"allOf": [_condition(*item) for item in conditions.items()]} if conditions else {}
+    unsaid = {parameter.name: parameter.default for parameter in kind.parameters}
+    more = {"allOf": [_condition(item, names, unsaid) for item, names in conditions.items()]}
+    more = more if conditions else {}
     return table(kind.meaning, keys, ["kind", *always], **more)
 
 
-def _condition(only_if: tuple[str, str], names: list[str]) -> Schema:
-    """Parameters that are required with one choice and refused with every other."""
-    return if_is(*only_if, needs(*names), without(*names))
+def _condition(
+    only_if: tuple[str, tuple[str, ...]], names: list[str], unsaid: Mapping[str, str]
+) -> Schema:
+    """Parameters that are required with some choices and refused with every other; where the
+    choice is not stated, its default is meant."""
+    key, words = only_if
+    chosen = {"properties": {key: {"enum": choice("", words)["enum"]}}}
+    if unsaid.get(key) not in words:
+        chosen |= needs(key)
+    refused = without(*names) if unsaid.get(key) else {"if": needs(key), "then": without(*names)}
+    return {"if": chosen, "then": needs(*names), "else": refused}
 
 
-def _parameter(parameter: Parameter) -> Schema:
+def parameter_schema(parameter: Parameter) -> Schema:
+    """The value of a parameter."""
     meaning = parameter.meaning
     if parameter.only_if is not None:
-        meaning += f"; only if {' is '.join(parameter.only_if)}"
+        key, words = parameter.only_if
+        meaning += f"; only if {key} is {' or '.join(words)}"
+    if parameter.default:
+        meaning += f"; without it {parameter.default}"
     if parameter.choices:
         return choice(f"{meaning}; {parameter.allowed()}", parameter.choices)
     return number(meaning, parameter.limits, parameter.unit)

@@ -62,3 +62,76 @@ def test_where_it_does_not_count_a_missing_weight_stops_nothing(tmp_path: Path, 
     checks = (ended.folder / "checks.csv").read_text().splitlines()
     last = [line for line in checks if "crown_dead_weight" in line][-1]
     assert last.endswith("not_evaluated,unit_weight_kn_m3 is not given")
+
+
+LINING = "composite_lining: yes\n  lining_interface: no_slip\n  lining_tensile_strength_mpa: 1.5"
+
+
+def with_stress_ratio() -> Damage:
+    """The gouge has one too."""
+    return content("units.csv", UNITS.replace("gouge,22,,", "gouge,22,0.9,").encode())
+
+
+def test_a_check_with_options_is_read_with_them(tmp_path: Path):
+    project = read(tmp_path, with_stress_ratio(), criteria(LINING))
+    assert project.criteria.chosen_checks == {"composite_lining": True}
+    assert project.criteria.options == {
+        "lining_interface": "no_slip",
+        "lining_tensile_strength_mpa": 1.5,
+    }
+
+
+@pytest.mark.parametrize(
+    ("text", "found"),
+    [
+        pytest.param(
+            LINING.replace("  lining_interface: no_slip\n", ""),
+            'key "criteria.lining_interface" is missing',
+            id="one-is-missing",
+        ),
+        pytest.param(
+            LINING.replace("1.5", "-1"),
+            'key "criteria.lining_tensile_strength_mpa" holds "-1"',
+            id="out-of-range",
+        ),
+        pytest.param(
+            "lining_interface: no_slip",
+            'key "criteria.lining_interface" has no use without composite_lining',
+            id="not-chosen",
+        ),
+        pytest.param(
+            "composite_lining: no\n  lining_interface: no_slip",
+            'key "criteria.lining_interface" has no use without composite_lining',
+            id="chosen-not",
+        ),
+    ],
+)
+def test_options_are_asked_for_where_the_check_is_chosen_and_nowhere_else(
+    tmp_path: Path, text: str, found: str
+):
+    (first,) = told(tmp_path, with_stress_ratio(), criteria(text))
+    assert found in first
+
+
+def test_a_check_with_options_is_made_of_classes_that_it_concerns_alone(tmp_path: Path):
+    """The class of bolts has no lining: it has no row of the check."""
+    read(tmp_path, with_stress_ratio(), criteria(LINING))
+    ended = run_project(tmp_path / "project", REGISTRY)
+    rows = [
+        line.split(",")
+        for line in (ended.folder / "checks.csv").read_text().splitlines()
+        if ",composite_lining," in line
+    ]
+    with_rings = {
+        planned.name
+        for planned in ended.result.project.support_classes
+        if any(element.kind == "shotcrete" for element in planned.elements)
+    }
+    assert {row[1] for row in rows} == with_rings != set(ended.result.project.class_names)
+    assert "not_evaluated" not in {row[-2] for row in rows}
+
+
+def test_a_check_with_options_that_is_not_chosen_is_not_made(tmp_path: Path):
+    read(tmp_path)
+    ended = run_project(tmp_path / "project", REGISTRY)
+    assert "composite_lining" not in (ended.folder / "checks.csv").read_text()

@@ -54,6 +54,7 @@ def test_a_row_says_all_about_a_stretch(tmp_path):
         "value": "1.75",
         "chainage_m": "15",
         "unit": "m",
+        "numbers": "",
         "threshold": "advisory above 1; outside above 2",
         "threshold_source": "advisory above 1: invented; outside above 2: another invention",
         "meaning": "invented meaning",

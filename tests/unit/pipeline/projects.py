@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping, Sequence
 from pathlib import Path
 
@@ -63,13 +64,16 @@ def project(
     methods: Mapping[str, MethodChoice] | None = None,
     drainage: str = "",
     chosen_checks: Mapping[str, bool] | None = None,
+    advance_m_per_day: float = math.nan,
 ) -> Project:
     """A project with these classes, lightest first, and rules and criteria as in a small job."""
     defaults = {step: MethodChoice((name,)) for step, name in DEFAULT_METHODS.items()}
     return Project(
         title="Invented test tunnel",
         methods={**defaults, **(methods or {})},
-        support_classes=tuple(SupportClass(n, tuple(e)) for n, e in classes.items()),
+        support_classes=tuple(
+            SupportClass(n, tuple(e), advance_m_per_day) for n, e in classes.items()
+        ),
         criteria=Criteria(1.5, 1.0, chosen_checks or {}),
         schedule=ScheduleRules(minimum_zone_m=20.0, carry_m=10.0),
         plugins=tuple(plugins),

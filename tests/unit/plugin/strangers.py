@@ -171,7 +171,7 @@ class ClassCheck:
     def concerns(self, project: api.Project) -> bool:
         return True
 
-    def evaluate(self, sections: api.Sections) -> api.Evaluation:
+    def evaluate(self, sections: api.Sections, elements: tuple[api.Element, ...]) -> api.Evaluation:
         return self._evaluate(sections)
 
 

@@ -7,10 +7,11 @@ import pytest
 from unit.plugin.strangers import Check, Kind
 
 from tunnelcalc import api
+from tunnelcalc.plugin.contained_reaction import contained_reaction
 from tunnelcalc.plugin.isolation import (
+    Contained,
     contained_amounts,
     contained_evaluation,
-    contained_spring,
 )
 from tunnelcalc.sections import Sections
 
@@ -23,7 +24,8 @@ def sections(count=COUNT):
 
 
 def spring_of(reaction, part=None):
-    return contained_spring(Kind(reaction=reaction), part or sections(), ELEMENT)
+    found = contained_reaction(Kind(reaction=reaction), part or sections(), ELEMENT)
+    return Contained(np.array([found.stiffness_mpa_per_m, found.capacity_mpa]), found.reason)
 
 
 def evaluated(evaluate, carries_load=True, part=None):
@@ -106,8 +108,8 @@ def test_the_reason_names_the_array_that_is_at_fault():
 
 
 def test_a_reaction_of_another_form_is_refused():
-    found = spring_of(lambda part, element: api.GroundRing(ones(part), {}))
-    assert all("GroundRing, not a LinearSpring" in text for text in found.reason)
+    found = spring_of(lambda part, element: api.GroundRing(ones(part), {}, ones(part)))
+    assert all("is a ground_ring, not the linear_spring" in text for text in found.reason)
 
 
 def test_a_user_who_stops_the_run_is_obeyed():

@@ -95,7 +95,13 @@ def test_a_plugin_with_the_name_of_one_of_ours_is_reported_beside_it(site):
     registry = load_plugins([*own_points(), *stranger])
     failed = sorted(failure.source.distribution for failure in registry.failures)
     assert failed == ["shotcrete-distribution", "tunnelcalc"]
-    assert registry.names("support_kind") == ("rock_bolts", "steel_sets")
+    assert registry.names("support_kind") == (
+        "friction_bolts",
+        "grouted_rock_bolts",
+        "lattice_girders",
+        "rock_bolts",
+        "steel_sets",
+    )
 
 
 def snapshot(registry):

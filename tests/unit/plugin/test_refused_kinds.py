@@ -33,22 +33,62 @@ def test_a_linear_spring_with_a_load_check_is_accepted(site, tmp_path):
     assert (element.kind, element.number("amount_m")) == ("props", 1.0)
 
 
-@pytest.mark.parametrize("form", ["pressure_of_closure", "advance_increments", "ground_ring"])
-def test_a_form_of_reaction_that_is_not_solved_yet_is_refused_by_name(site, tmp_path, form):
+@pytest.mark.parametrize("form", ["pressure_of_closure", "ground_ring"])
+def test_the_forms_that_need_nothing_of_the_class_are_accepted(site, tmp_path, form):
     props = site.plugin("props", **{KINDS: offering(Kind(form=form)), CHECKS: offering(Check())})
-    with pytest.raises(InputError, match="is not solved yet") as caught:
-        read(tmp_path, props)
-    problem = only_problem(caught)
-    assert '"props"' in problem.message
-    assert form in problem.message
-    assert "linear_spring" in problem.allowed
+    (element,) = read(tmp_path, props).support_classes[0].elements
+    assert element.kind == "props"
+
+
+def ageing(site):
+    kind = Kind(form="advance_increments")
+    return site.plugin("props", **{KINDS: offering(kind), CHECKS: offering(Check())})
+
+
+def test_an_element_that_ages_asks_the_class_for_its_rate_of_advance(site, tmp_path):
+    with pytest.raises(InputError) as caught:
+        read(tmp_path, ageing(site))
+    (problem,) = caught.value.problems
+    assert problem.name == 'key "support_classes[1].advance_m_per_day"'
+    assert problem.message == "is missing: props hardens while the face moves on"
+    assert problem.allowed == "a number above 0, at most 100, in m/day"
+
+
+def test_with_a_rate_of_advance_an_element_that_ages_is_accepted(site, tmp_path):
+    project = write_project(tmp_path, "props", {"amount_m": 1.0})
+    file = project / "project.yaml"
+    stated = "    installed_at_m: 1.0\n"
+    file.write_text(file.read_text().replace(stated, f"{stated}    advance_m_per_day: 3\n"))
+    read_class = read_project(project, load_plugins([*own_points(), *ageing(site)]))
+    (made,) = read_class.support_classes
+    assert (made.advance_m_per_day, made.elements[0].kind) == (3.0, "props")
+
+
+def test_two_rings_of_changed_ground_in_a_class_are_refused(site, tmp_path):
+    kind = Kind(form="ground_ring")
+    props = site.plugin("props", **{KINDS: offering(kind), CHECKS: offering(Check())})
+    project = write_project(tmp_path, "props", {"amount_m": 1.0})
+    file = project / "project.yaml"
+    one = "      - kind: props\n        amount_m: 1.0\n"
+    text = file.read_text()
+    assert text.count(one) == 1
+    file.write_text(text.replace(one, one + one))
+    with pytest.raises(InputError, match="props and props_2, which each change") as caught:
+        read_project(project, load_plugins([*own_points(), *props]))
+    (problem,) = caught.value.problems
+    assert problem.name == 'key "support_classes[1].elements"'
 
 
 def test_a_form_that_is_none_of_the_four_is_refused_by_name(site, tmp_path):
     props = site.plugin("props", **{KINDS: offering(Kind(form="magic")), CHECKS: offering(Check())})
-    with pytest.raises(InputError, match="magic; this form is not one of the four") as caught:
+    with pytest.raises(InputError, match="that is not one of the four forms") as caught:
         read(tmp_path, props)
-    only_problem(caught)
+    problem = only_problem(caught)
+    assert problem.message.startswith('names "props", which reacts as magic;')
+    assert problem.allowed == (
+        "an element that reacts as linear_spring or pressure_of_closure or advance_increments "
+        "or ground_ring"
+    )
 
 
 def test_a_kind_without_any_check_is_refused(site, tmp_path):

@@ -27,7 +27,9 @@ LINING = Kind(
         Parameter("wall_mm", "wall", "mm", Limits(1, 50)),
         Parameter("grade", "grade", choices=("25", "none")),
         Parameter("joint", "joint", choices=("welded", "bolted")),
-        Parameter("bolt_count", "bolts", "", Limits(2, 8, whole=True), only_if=("joint", "bolted")),
+        Parameter(
+            "bolt_count", "bolts", "", Limits(2, 8, whole=True), only_if=("joint", ("bolted",))
+        ),
     ),
 )
 SOUND = {"kind": "tubes/1", "wall_mm": 5, "grade": 25, "joint": "bolted", "bolt_count": 4}

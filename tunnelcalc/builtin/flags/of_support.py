@@ -51,7 +51,7 @@ FLAGS = (
         "anchorage_in_plastic_zone",
         "in some class the anchorage of a bolt lies in the plastic zone and is not credited",
         "lengthen the bolts of that class, or read it without them",
-        "the check anchorage fails in some class",
+        "the check length_beyond_plastic_zone fails in some class",
         "fails_length_beyond_plastic_zone",
         PRACTICE,
     ),

@@ -47,7 +47,7 @@ def _on_lining(drainage: str) -> float:
     """What the check of the rings is asked to carry. [MPa]"""
     sections = _stressed(drainage, 1.0, HEAD_M)
     sections = sections.with_columns({"ring_capacity_mpa": np.array([2.0])})
-    return float(WaterOnLining().evaluate(sections).demand[0])
+    return float(WaterOnLining().evaluate(sections, ()).demand[0])
 
 
 def _checks() -> Iterator[VerificationCheck]:

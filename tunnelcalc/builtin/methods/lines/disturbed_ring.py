@@ -15,8 +15,8 @@ from tunnelcalc.builtin.methods.lines import hoek_brown
 from tunnelcalc.builtin.methods.lines.hoek_brown import FLOW_RULE, LAME, MOVEMENT
 from tunnelcalc.builtin.methods.lines.symbols import known, number, row
 from tunnelcalc.ground_reaction.disturbed_ring import DisturbedRingCurve
+from tunnelcalc.ground_reaction.ring_laws import RingZones
 from tunnelcalc.ground_reaction.ring_zones import (
-    RingZones,
     drop_beside_yielded_mass,
     elastic_drop,
 )
@@ -71,7 +71,7 @@ def _add_critical(work: Working, curve: DisturbedRingCurve) -> None:
         work.add("pcr", f"pressure below which the wall yields: {why}", "", critical, "MPa", LAME)
         return
     work.known["pcr"] = critical
-    edge = zones.edge(zones.wall_power(row(critical)), row(0.0))
+    edge = zones.edge(zones.wall_place(row(critical)), row(0.0))
     strength = float(edge.half_strength[0])
     formula = "sci*(mb_d*pcr/sci + s_d)^a_d/2"
     work.add("T_w", "half the strength at the wall", formula, strength, "MPa", CRITERION)
@@ -162,7 +162,7 @@ def _add_yielded_ring(
 def _add_edge(work: Working, zones: RingZones, pressure_mpa: float) -> tuple[bool, float, float]:
     """The edge of the ring's plastic part; whether all of it has yielded, y and N^(1-a) there."""
     ring = zones.ring
-    power = zones.wall_power(row(pressure_mpa))
+    power = zones.wall_place(row(pressure_mpa))
     found, all_of_it = zones.front(power)
     wholly, depth = bool(all_of_it[0]), float(found[0])
     edge_power = float((power + (1 - ring.a) * ring.mb * found)[0])

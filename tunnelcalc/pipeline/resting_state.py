@@ -1,0 +1,308 @@
+"""Where ground and a support class come to rest, whatever forms its elements react in."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from tunnelcalc.arrays import Array
+from tunnelcalc.ground_reaction.curve import GroundCurve
+from tunnelcalc.pipeline.dispatch import Chosen, closure_share
+from tunnelcalc.plugin.contained_reaction import ElementResponse
+from tunnelcalc.plugin.contract import ClosureProfileMethod
+from tunnelcalc.sections import Sections
+from tunnelcalc.support.advance import Advance, Begins, advance
+from tunnelcalc.support.advance_step import Ageing, Constant
+from tunnelcalc.support.element_reactions import (
+    Brittle,
+    ElementReaction,
+    FunctionReaction,
+    Plateau,
+    Spring,
+)
+from tunnelcalc.support.equilibrium import equilibrium
+from tunnelcalc.support.general_equilibrium import GeneralEquilibrium, general_equilibrium
+from tunnelcalc.support.mobilisation import first_failure, full_mobilisation
+from tunnelcalc.support.pressure_table import PressureTable, pressure_table
+from tunnelcalc.support.reaction import (
+    AdvanceIncrements,
+    GroundRing,
+    LinearSpring,
+    PressureOfClosure,
+    Reaction,
+)
+
+ADVANCE_STEPS = 64
+"""After each element begins to act: leaves about 1e-4 of the load."""
+
+
+class PressureTables:
+    """Tables of the ground's pressure by its closure, made once for all classes of a chunk."""
+
+    def __init__(self) -> None:
+        self._made: dict[int, tuple[GroundCurve, PressureTable]] = {}
+
+    def of(
+        self,
+        curve: GroundCurve,
+        sections: Sections,
+        share: Callable[[Array], Array],
+    ) -> PressureTable:
+        """The table of a curve, from the closure at the face on."""
+        made = self._made.get(id(curve))
+        if made is None:
+            count = sections.count
+            radius = sections["radius_m"]
+            free = curve.at(np.zeros(count)).closure_ratio * radius
+            made = curve, pressure_table(curve, radius, free * share(np.zeros(count)))
+            self._made[id(curve)] = made
+        return made[1]
+
+
+@dataclass(frozen=True, slots=True)
+class AgeingPath:
+    """An ageing element along the advance, at k distances of each section, (k, n) each."""
+
+    distance_m: Array
+    closure_m: Array
+    age_days: Array
+    pressure_mpa: Array
+    capacity_mpa: Array
+
+    def worst(self, water_mpa: Array) -> dict[str, Array]:
+        """The state (n,) where it is used most for its capacity of the same age. Water (n,) adds
+        to the pressure once the element carries any. [MPa]"""
+        loaded = self.pressure_mpa > 0
+        pressure = self.pressure_mpa + np.where(loaded, water_mpa, 0)
+        use = np.full(loaded.shape, -1.0)
+        with np.errstate(divide="ignore"):
+            np.divide(pressure, self.capacity_mpa, out=use, where=loaded)
+        unknown = np.isnan(pressure) | np.isnan(self.capacity_mpa)
+        at = np.argmax(np.where(unknown, np.inf, use), axis=0), np.arange(loaded.shape[1])
+        return {
+            "worst_pressure_mpa": pressure[at],
+            "worst_capacity_mpa": self.capacity_mpa[at],
+            "worst_age_days": self.age_days[at],
+            "worst_distance_m": self.distance_m[at],
+        }
+
+
+@dataclass(frozen=True, slots=True)
+class RestingState:
+    """Ground and class at rest on n sections.
+
+    (n,): `support_pressure_mpa`, `closure_m`, `plastic_ratio`, `converged`; (e, n):
+    `element_pressure_mpa`, `element_moved_m`.
+    """
+
+    support_pressure_mpa: Array
+    closure_m: Array
+    plastic_ratio: Array
+    element_pressure_mpa: Array
+    element_moved_m: Array
+    converged: Array
+    state: GeneralEquilibrium | None
+    """The equilibrium of elements that do not age; None with those that do."""
+    paths: dict[int, AgeingPath]
+    """By the position of each element that ages."""
+
+
+def acting_from_m(installed_at_m: float, reaction: Reaction) -> float:
+    """Distance behind the face from which an element acts. [m]"""
+    if isinstance(reaction, GroundRing):
+        return installed_at_m
+    return max(installed_at_m, reaction.acts_from_m)
+
+
+def at_rest(
+    curve: GroundCurve,
+    sections: Sections,
+    profile: Chosen[ClosureProfileMethod],
+    responses: Sequence[ElementResponse],
+    installed_at_m: Sequence[float],
+    acting_m: Array,
+    advance_m_per_day: float,
+    tables: PressureTables,
+) -> RestingState:
+    """The state at rest of a class.
+
+    `acting_m` (e, n) is the unsupported closure where each element begins to act [m],
+    `installed_at_m` the distance at which each is installed [m].
+    """
+    reactions = [response.reaction for response in responses]
+    if any(isinstance(reaction, AdvanceIncrements) for reaction in reactions):
+        return _of_advance(
+            curve, sections, profile, reactions, installed_at_m, advance_m_per_day, tables
+        )
+    return _of_constant(curve, sections["radius_m"], reactions, acting_m)
+
+
+def _of_constant(
+    curve: GroundCurve, radius_m: Array, reactions: Sequence[Reaction], acting_m: Array
+) -> RestingState:
+    """Elements that do not age: in the usual case all are springs, which has its own fast way."""
+    elements = [_element(reaction, radius_m) for reaction in reactions]
+    if all(_is_plain_spring(reaction) for reaction in reactions):
+        stiffness = [r.stiffness_mpa_per_m for r in reactions if isinstance(r, LinearSpring)]
+        plain = equilibrium(curve, radius_m, np.array(stiffness).reshape(acting_m.shape), acting_m)
+        moved = plain.closure_m - acting_m
+        rest = GeneralEquilibrium(
+            plain.support_pressure_mpa,
+            plain.closure_m,
+            plain.plastic_ratio,
+            plain.element_pressure_mpa,
+            np.zeros(moved.shape, dtype=np.int8),
+            moved,
+            plain.converged,
+        )
+    else:
+        rest = general_equilibrium(curve, radius_m, elements, acting_m)
+    return RestingState(
+        rest.support_pressure_mpa,
+        rest.closure_m,
+        rest.plastic_ratio,
+        rest.element_pressure_mpa,
+        rest.element_moved_m,
+        rest.converged,
+        rest,
+        {},
+    )
+
+
+@dataclass(frozen=True, slots=True)
+class SystemLimits:
+    """Pressure [MPa] and closure [m] when the first element reaches its limit, and at full
+    mobilisation, (n,) each; NaN where they are not reached, or not defined: with elements that age
+    or change the ground."""
+
+    first_failure_pressure_mpa: Array
+    first_failure_closure_m: Array
+    full_pressure_mpa: Array
+    full_closure_m: Array
+
+
+def system_limits(
+    curve: GroundCurve,
+    radius_m: Array,
+    responses: Sequence[ElementResponse],
+    capacity_mpa: Array,
+    acting_m: Array,
+    rest: RestingState,
+) -> SystemLimits:
+    """The limits of a class whose elements have these capacities (e, n)."""
+    unknown = np.full(radius_m.size, np.nan)
+    reactions = [response.reaction for response in responses]
+    if rest.state is None or any(isinstance(reaction, GroundRing) for reaction in reactions):
+        return SystemLimits(unknown, unknown, unknown, unknown)
+    elements = [
+        _element(_with_capacity(reaction, capacity), radius_m)
+        for reaction, capacity in zip(reactions, capacity_mpa, strict=True)
+    ]
+    failure = first_failure(curve, radius_m, elements, acting_m, rest.state)
+    full = full_mobilisation(curve, radius_m, elements, acting_m, rest.state)
+    return SystemLimits(
+        *(
+            np.where(np.isfinite(values), values, np.nan)
+            for limit in (failure, full)
+            for values in (limit.support_pressure_mpa, limit.closure_m)
+        )
+    )
+
+
+def _with_capacity(reaction: Reaction, capacity_mpa: Array) -> Reaction:
+    if isinstance(reaction, LinearSpring | PressureOfClosure):
+        return replace(reaction, capacity_mpa=capacity_mpa)
+    return reaction
+
+
+def pressure_of(reaction: Reaction, moved_m: Array) -> Array:
+    """(n,) pressure of an element that does not age for a movement (n,) since it acts; NaN of one
+    that does. [MPa]"""
+    if isinstance(reaction, AdvanceIncrements):
+        return np.full(moved_m.shape, np.nan)
+    return _element(reaction, np.ones_like(moved_m)).pressure_and_slope(moved_m)[0]
+
+
+def _is_plain_spring(reaction: Reaction) -> bool:
+    return isinstance(reaction, LinearSpring) and reaction.beyond == "not_declared"
+
+
+def _element(reaction: Reaction, radius_m: Array) -> ElementReaction:
+    if isinstance(reaction, LinearSpring):
+        stiffness, capacity = reaction.stiffness_mpa_per_m, reaction.capacity_mpa
+        if reaction.beyond == "yields":
+            return Plateau(stiffness, capacity)
+        if reaction.beyond == "breaks":
+            return Brittle(stiffness, capacity)
+        return Spring(stiffness, capacity)
+    if isinstance(reaction, PressureOfClosure):
+        return FunctionReaction.of_function(
+            reaction.pressure_and_slope, reaction.capacity_mpa, radius_m
+        )
+    # A change of the ground carries nothing at the wall.
+    nothing = np.zeros_like(radius_m)
+    return Spring(nothing, np.full_like(radius_m, np.inf))
+
+
+def _of_advance(
+    curve: GroundCurve,
+    sections: Sections,
+    profile: Chosen[ClosureProfileMethod],
+    reactions: Sequence[Reaction],
+    installed_at_m: Sequence[float],
+    advance_m_per_day: float,
+    tables: PressureTables,
+) -> RestingState:
+    """Elements of which some age while the face moves on.
+
+    Each counts from the supported wall where it begins to act: a ring that is closed late behind
+    stiff elements would otherwise be taken to begin at a closure that the wall never reaches.
+    """
+    radius = sections["radius_m"]
+    count = radius.size
+
+    def share(distance_m: Array) -> Array:
+        return closure_share(profile, sections, distance_m)
+
+    elements: list[Ageing | Constant] = []
+    for reaction, installed in zip(reactions, installed_at_m, strict=True):
+        acts = np.full(count, acting_from_m(installed, reaction))
+        if isinstance(reaction, AdvanceIncrements):
+            elements.append(Ageing(_stiffness_of(reaction), np.full(count, float(installed)), acts))
+        else:
+            elements.append(Constant(_element(reaction, radius), acts))
+    table = tables.of(curve, sections, share)
+    rate = np.full(count, advance_m_per_day)
+    found = advance(curve, radius, table, share, elements, rate, Begins.WALL, ADVANCE_STEPS)
+    closure = np.where(found.converged, found.closure_m[-1], np.nan)
+    return RestingState(
+        found.support_pressure_mpa,
+        closure,
+        found.plastic_ratio,
+        found.element_pressure_mpa[:, -1],
+        closure - found.begins_at_m,
+        found.converged,
+        None,
+        {
+            position: _path(found, position, reaction)
+            for position, reaction in enumerate(reactions)
+            if isinstance(reaction, AdvanceIncrements)
+        },
+    )
+
+
+def _stiffness_of(reaction: AdvanceIncrements) -> Callable[[Array], Array]:
+    return lambda age_days: reaction.at_age(age_days)[0]
+
+
+def _path(found: Advance, position: int, reaction: AdvanceIncrements) -> AgeingPath:
+    capacity = np.stack([reaction.at_age(age)[1] for age in found.age_days[position]])
+    return AgeingPath(
+        found.distance_m,
+        found.closure_m,
+        found.age_days[position],
+        found.element_pressure_mpa[position],
+        capacity,
+    )
