@@ -320,6 +320,8 @@ def _variation(text: str, chosen: SupportClass, registry: Registry) -> Variation
     lowest, highest = bounds if len(bounds) == 2 else (None, None)
     if not equals or lowest is None or highest is None or not lowest < highest:
         raise _refused(text, "ELEMENT.PARAMETER=LOW:HIGH", "write two numbers, the lower first")
+    if not chosen.elements:
+        raise _refused(text, "a class with elements", "name another with --class", "element")
     if not dot:
         known = OF_CLASS
     else:

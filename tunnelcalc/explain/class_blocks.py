@@ -217,7 +217,7 @@ class CaseBlocks:
                     lambda thing, v=values, e=element: thing.lines(v, e),  # type: ignore[misc]
                     float(water[position, 0]),
                 )
-        capacities = class_capacities(planned, found.credited_mpa)
+        capacities = class_capacities(planned, found.responses, found.credited_mpa)
         capacities["ring_pressure_mpa"] = ring_pressure_mpa(planned, found.rest, water)
         values = supported | {name: float(row[0]) for name, row in capacities.items()}
         members = tuple(item.element for item in planned.elements)

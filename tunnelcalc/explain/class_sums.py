@@ -4,7 +4,13 @@ from __future__ import annotations
 
 from tunnelcalc.calculation.working import Working
 from tunnelcalc.outputs.cells import number_text
-from tunnelcalc.pipeline.class_evaluation import Evaluated, class_capacities, element_water_mpa
+from tunnelcalc.pipeline.class_evaluation import (
+    Evaluated,
+    class_capacities,
+    element_water_mpa,
+    rings_under_water,
+    water_goes_by_stiffness,
+)
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.plugin.contained_reaction import ElementResponse
@@ -13,11 +19,13 @@ from tunnelcalc.support.reaction import AdvanceIncrements, LinearSpring, Pressur
 
 DEFINITION = "definition"
 CREDITED = (
-    "the least limit of its load checks at rest, what it gives at rest or within the "
-    "closure limit, and "
+    "the least limit of its load checks at rest, the load at which it first gives way, and "
     "nothing of bolts that change the ground"
 )
-WATER = "water presses on the rings of a watertight lining, which share it by stiffness"
+WATER = (
+    "water presses on the rings of a watertight lining, which share it by stiffness, or by "
+    "capacity where one of them hardens; sliding rings bear none"
+)
 
 
 def share_formula(response: ElementResponse, own: str) -> str:
@@ -51,15 +59,17 @@ def add_water(work: Working, planned: PlannedClass, found: Evaluated, sections: 
     The stiffness of element number k is known as `K_k`, its pressure without water as `p_k`.
     """
     pressure = float(sections["lining_water_mpa"][0])
-    rings = [k + 1 for k, item in enumerate(planned.elements) if item.is_ring]
+    rings = [position + 1 for position in rings_under_water(planned, found.responses)]
+    weight = "K" if water_goes_by_stiffness(planned, found.responses) else "pmax"
     if not pressure or not rings:
         return
     work.known["uw"] = pressure
     water = element_water_mpa(planned, found.responses, sections)
-    together = " + ".join(f"K_{number}" for number in rings)
+    together = " + ".join(f"{weight}_{number}" for number in rings)
     for number in rings:
+        work.known[f"pmax_{number}"] = float(found.responses[number - 1].capacity_mpa[0])
         own, label = float(water[number - 1, 0]), planned.elements[number - 1].element.label
-        formula = f"uw*K_{number}/({together})"
+        formula = f"uw*{weight}_{number}/({together})"
         meaning = f"share of the water pressure on {label}"
         work.add(f"w_{number}", meaning, formula, own, "MPa", WATER)
         whole = own + float(found.rest.element_pressure_mpa[number - 1, 0])
@@ -69,15 +79,16 @@ def add_water(work: Working, planned: PlannedClass, found: Evaluated, sections: 
 
 def add_capacities(work: Working, planned: PlannedClass, found: Evaluated) -> None:
     """The sum of the capacities, of which checks of the class make use."""
+    under_water = rings_under_water(planned, found.responses)
     for symbol, column, meaning in (
         ("pmax_class", "class_capacity_mpa", "capacity of all elements"),
-        ("pmax_rings", "ring_capacity_mpa", "capacity of the rings"),
+        ("pmax_rings", "ring_capacity_mpa", "capacity of the rings that bear water"),
     ):
         terms = []
-        for position, item in enumerate(planned.elements):
-            if symbol == "pmax_class" or item.is_ring:
+        for position in range(len(planned.elements)):
+            if symbol == "pmax_class" or position in under_water:
                 terms.append(_credited(work, planned, found, position))
-        whole = float(class_capacities(planned, found.credited_mpa)[column][0])
+        whole = float(class_capacities(planned, found.responses, found.credited_mpa)[column][0])
         work.add(symbol, meaning, " + ".join(terms) or "0", whole, "MPa", DEFINITION)
 
 

@@ -37,6 +37,7 @@ from tunnelcalc.support.equilibrium import pressure_at_closure
 from tunnelcalc.support.reaction import GroundRing, PressureOfClosure
 
 DOES_NOT_COUNT = "does not count: the project does not ask for it under criteria"
+PLATEAU_STEPS = 64
 ROUNDING = 1e-9
 """A check that is at its limit where the reaction is at its own may miss it by rounding."""
 UNRESOLVED = "ground and support have no equilibrium that can be computed"
@@ -156,7 +157,7 @@ def evaluate_class(
         limits.full_pressure_mpa,
         limits.full_closure_m * MM_PER_M,
         missing_pressure_mpa(responses, credited, sections, acting, needed_mpa, criteria),
-        class_capacities(planned, credited)["class_capacity_mpa"],
+        class_capacities(planned, responses, credited)["class_capacity_mpa"],
     )
     return Evaluated(row, tuple(checks), rest, responses, installed, acting, credited)
 
@@ -242,9 +243,9 @@ def credited_capacities_mpa(
     acting_m: Array,
     criteria: Criteria,
 ) -> Array:
-    """(e, n) capacity of each element that counts where capacities are added up: no more than a
-    yielding element gives at rest or within the closure limit, and nothing of bolts that change
-    the ground. [MPa]"""
+    """(e, n) capacity of each element that counts where capacities are added up: of an
+    element that gives way no more than the load at which it first does, and nothing of bolts that
+    change the ground. [MPa]"""
     credited = checked_mpa.copy()
     limit = sections["radius_m"] * criteria.closure_pct / 100
     for position, response in enumerate(responses):
@@ -253,9 +254,20 @@ def credited_capacities_mpa(
         elif isinstance(response.reaction, PressureOfClosure):
             at_rest_m = np.maximum(rest.element_moved_m[position], 0)
             moved = np.maximum(limit - acting_m[position], at_rest_m)
-            given = response.reaction.pressure_and_slope(moved)[0]
+            given = _first_plateau_mpa(response.reaction, moved)
             credited[position] = np.minimum(checked_mpa[position], given)
     return credited
+
+
+def _first_plateau_mpa(reaction: PressureOfClosure, moved_m: Array) -> Array:
+    """(n,) pressure at which an element first goes on without more load, up to a movement (n,);
+    without such a plateau the pressure there. [MPa]"""
+    plateau = np.full(moved_m.size, np.nan)
+    for step in range(1, PLATEAU_STEPS + 1):
+        pressure, slope = reaction.pressure_and_slope(moved_m * step / PLATEAU_STEPS)
+        first = np.isnan(plateau) & (slope == 0) & (pressure > 0)
+        plateau = np.where(first, pressure, plateau)
+    return np.where(np.isnan(plateau), pressure, plateau)
 
 
 def _check_rows(
@@ -281,7 +293,7 @@ def _check_rows(
     if planned.class_checks:
         of_class = supported.sections.with_columns(
             {
-                **class_capacities(planned, credited_mpa),
+                **class_capacities(planned, responses, credited_mpa),
                 "ring_pressure_mpa": ring_pressure_mpa(planned, rest, water),
             }
         )
@@ -341,20 +353,36 @@ def element_water_mpa(
 ) -> Array:
     """(e, n) share of the water pressure that each ring of a watertight lining carries, by its
     capacity where a ring is no linear spring, else by stiffness. [MPa]"""
-    rings = [
-        (position, response)
-        for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True))
-        if item.is_ring
-    ]
-    by_stiffness = not any(np.all(np.isnan(r.stiffness_mpa_per_m)) for _, r in rings)
     weights = np.zeros((len(responses), sections.count))
-    for position, response in rings:
+    by_stiffness = water_goes_by_stiffness(planned, responses)
+    for position in rings_under_water(planned, responses):
+        response = responses[position]
         weights[position] = response.stiffness_mpa_per_m if by_stiffness else response.capacity_mpa
     together = np.zeros(sections.count)
     for own in weights:
         together = together + own
     share = np.divide(weights, together, out=np.zeros_like(weights), where=together > 0)
     return share * sections["lining_water_mpa"]
+
+
+def rings_under_water(
+    planned: PlannedClass, responses: Sequence[ElementResponse]
+) -> tuple[int, ...]:
+    """Positions of the rings that water presses on: not of those that give way at a load of their
+    own, as sliding sets do, since water does not fall off while they slide."""
+    return tuple(
+        position
+        for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True))
+        if item.is_ring and not isinstance(response.reaction, PressureOfClosure)
+    )
+
+
+def water_goes_by_stiffness(planned: PlannedClass, responses: Sequence[ElementResponse]) -> bool:
+    """Whether every ring under water has one stiffness; else its capacity stands for it."""
+    return not any(
+        np.all(np.isnan(responses[position].stiffness_mpa_per_m))
+        for position in rings_under_water(planned, responses)
+    )
 
 
 def ring_pressure_mpa(planned: PlannedClass, rest: RestingState, water_mpa: Array) -> Array:
@@ -366,12 +394,15 @@ def ring_pressure_mpa(planned: PlannedClass, rest: RestingState, water_mpa: Arra
     return total
 
 
-def class_capacities(planned: PlannedClass, credited_mpa: Array) -> dict[str, Array]:
-    """Capacity (n,) of all elements together, and of the rings alone. [MPa]"""
+def class_capacities(
+    planned: PlannedClass, responses: Sequence[ElementResponse], credited_mpa: Array
+) -> dict[str, Array]:
+    """Capacity (n,) of all elements together, and of the rings alone that bear water. [MPa]"""
     whole, rings = np.zeros((2, *credited_mpa.shape[1:]))
-    for item, own in zip(planned.elements, credited_mpa, strict=True):
+    under_water = rings_under_water(planned, responses)
+    for position, own in enumerate(credited_mpa):
         whole = whole + own
-        if item.is_ring:
+        if position in under_water:
             rings = rings + own
     return {"class_capacity_mpa": whole, "ring_capacity_mpa": rings}
 

@@ -31,7 +31,7 @@ def lining_of(
                 "support_pressure_mpa": rest.support_pressure_mpa,
                 "supported_closure_mm": rest.closure_m * MM_PER_M,
                 "supported_plastic_radius_m": rest.plastic_ratio * section["radius_m"],
-                **class_capacities(planned, found.credited_mpa),
+                **class_capacities(planned, found.responses, found.credited_mpa),
                 "ring_pressure_mpa": ring_pressure_mpa(planned, rest, water),
             }
         )

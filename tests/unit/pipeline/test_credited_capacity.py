@@ -83,3 +83,28 @@ def test_where_an_element_ages_no_first_failure_is_told_and_nothing_is_infinite(
         assert np.all(np.isnan(found[name]))
     springs = evaluated(weak, {"ring": [element("shotcrete", SHOTCRETE)]})
     assert not any(math.isinf(v) for v in springs["class_first_failure_closure_mm"][:, 0])
+
+
+def test_a_sliding_set_counts_with_its_slip_load_however_wide_the_closure_limit():
+    weak = sections_of(gsi=25.0)
+    capacity, found = dead_weight(weak, [element("steel_sets", SLIDING)])
+    assert found["class_closure_pct"][0, 0] > 0
+    assert capacity == pytest.approx(0.060 / (1.5 * 4.0), rel=0.02)
+
+
+def test_water_is_borne_by_rings_that_do_not_slide():
+    wet = sections_of(gsi=60.0, water_head_m=20.0)
+    alone = {"sets": [element("steel_sets", SLIDING)]}
+    found = evaluated(wet, alone, drainage="watertight")
+    made = project(alone, wet, drainage="watertight")
+    lines = check_lines(plan_classes(made, load_plugins()))
+    (at,) = [i for i, line in enumerate(lines) if line.check == "water_on_lining"]
+    assert found["check_capacity"][0, at] == 0
+    assert not found["class_adequate"][0, 0]
+    both = {"both": [element("steel_sets", SLIDING), element("shotcrete", SHOTCRETE)]}
+    with_water = evaluated(wet, both, drainage="watertight")
+    lines = check_lines(plan_classes(project(both, wet, drainage="watertight"), load_plugins()))
+    (hoop,) = [i for i, line in enumerate(lines) if line.check == "hoop_stress"]
+    # All of 0.1962 MPa of water, and what the ground brings, on the shotcrete ring.
+    least = 0.1962 / RING_MPA * 30
+    assert with_water["check_demand"][0, hoop] >= least * (1 - 1e-9)
