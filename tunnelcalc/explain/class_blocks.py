@@ -20,9 +20,8 @@ from tunnelcalc.explain.offered import Lines, differ, last, lines_of, method_lin
 from tunnelcalc.explain.section import ComputedSection, StressCase
 from tunnelcalc.outputs.cells import number_text
 from tunnelcalc.outputs.tables import OUTCOME_WORDS
-from tunnelcalc.pipeline.class_evaluation import (
-    CheckRow,
-    Evaluated,
+from tunnelcalc.pipeline.class_evaluation import CheckRow, Evaluated
+from tunnelcalc.pipeline.element_loads import (
     class_capacities,
     element_columns,
     element_water_mpa,

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from tunnelcalc.calculation.working import Working
 from tunnelcalc.outputs.cells import number_text
-from tunnelcalc.pipeline.class_evaluation import (
-    Evaluated,
+from tunnelcalc.pipeline.class_evaluation import Evaluated
+from tunnelcalc.pipeline.element_loads import (
     class_capacities,
     element_water_mpa,
     rings_under_water,

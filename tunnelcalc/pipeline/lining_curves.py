@@ -2,12 +2,8 @@
 
 from __future__ import annotations
 
-from tunnelcalc.pipeline.class_evaluation import (
-    Evaluated,
-    class_capacities,
-    element_water_mpa,
-    ring_pressure_mpa,
-)
+from tunnelcalc.pipeline.class_evaluation import Evaluated
+from tunnelcalc.pipeline.element_loads import class_capacities, element_water_mpa, ring_pressure_mpa
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.plugin.contract import LiningCheck

@@ -8,14 +8,10 @@ import numpy as np
 
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
-from tunnelcalc.pipeline.class_evaluation import (
-    UNRESOLVED,
-    Evaluated,
-    element_water_mpa,
-    evaluate_class,
-)
+from tunnelcalc.pipeline.class_evaluation import UNRESOLVED, Evaluated, evaluate_class
 from tunnelcalc.pipeline.curve_points import distances_m, pressures_mpa, section_curve
 from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, M, closure_share, curves
+from tunnelcalc.pipeline.element_loads import element_water_mpa
 from tunnelcalc.pipeline.envelope_curves import envelopes
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.incidents import ENDLESS_RING, NO_CLOSURE
