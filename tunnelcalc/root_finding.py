@@ -10,6 +10,8 @@ import numpy as np
 from tunnelcalc.arrays import Array
 
 RELATIVE_TOLERANCE = 1e-12
+NEGLIGIBLE_STEP = 1e-24
+"""Of the first bracket: a search towards 0 ends here, not at the smallest double."""
 MOST_ITERATIONS = 100
 
 
@@ -42,7 +44,8 @@ def increasing_roots(
 
     Returns
     -------
-    Roots to a relative 1e-12, with a mask of those that converged within 100 iterations.
+    Roots to a relative 1e-12, or to 1e-24 of the bracket where they lie that near to 0, with a
+    mask of those that converged within 100 iterations.
 
     Source
     ------
@@ -52,6 +55,7 @@ def increasing_roots(
     estimate = np.array(start, dtype=float)
     low, high = np.array(lower, dtype=float), np.array(upper, dtype=float)
     step_before = high - low
+    negligible = NEGLIGIBLE_STEP * step_before
     converged = np.zeros(estimate.shape, dtype=bool)
     active = np.arange(estimate.size)
     for _ in range(MOST_ITERATIONS):
@@ -69,9 +73,10 @@ def increasing_roots(
         following = np.where(good, newton, 0.5 * (least + most))
         following = np.where(value == 0, at, following)
         step = np.abs(following - at)
-        done = step <= RELATIVE_TOLERANCE * np.abs(following)
+        done = step <= np.maximum(RELATIVE_TOLERANCE * np.abs(following), negligible[active])
         estimate[active] = following
         step_before[active] = step
-        converged[active[done]] = True
-        active = active[~done & ~np.isnan(value)]
+        known = ~np.isnan(value)
+        converged[active[done & known]] = True
+        active = active[~done & known]
     return Roots(estimate, converged)
