@@ -48,7 +48,7 @@ from tunnelcalc.section_curves import (
     StrengthEnvelope,
     ThrustAndMoment,
 )
-from tunnelcalc.sections import Sections, one_section
+from tunnelcalc.sections import Sections, of_element, one_section
 from tunnelcalc.support.reaction import (
     AdvanceIncrements,
     GroundRing,
@@ -130,6 +130,7 @@ __all__ = [
     "decoded",
     "hookimpl",
     "number_text",
+    "of_element",
     "one_section",
     "write_table",
 ]

@@ -28,7 +28,10 @@ LIMITS = (
     "elements placed after them still start from the closure without them.",
     "Bending of the lining under unequal stress is checked only where the project asks for it: as "
     "a thin elastic ring of all parts at once, placed before the ground moves and brought to the "
-    "thrust at rest, so that the unequal load is assumed to fall as the mean does. Against an "
+    "thrust at rest, so that the unequal load is assumed to fall as the mean does. Rings that act "
+    "from different distances, or harden, have the thrust that they carry and a moment on the safe "
+    "side of it; of a later ring this thrust is too small where earlier support is neglected. "
+    "Young shotcrete is checked at the age of its highest thrust beside its strength. Against an "
     "elastic annulus of 0.06 of its radius the thin ring gave, bonded to the ground, 10 % less "
     "swing of thrust and 5 % more moment, and with full slip 2.7 % less of both.",
     "Screened by flags, and not computed: blocks and wedges, face stability, spalling and rock "

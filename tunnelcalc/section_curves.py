@@ -92,13 +92,15 @@ class ReactionOfClass:
 
 @dataclass(frozen=True, slots=True)
 class ThrustAndMoment:
-    """Forces of a lining at angles from the springline to the crown, and what its section bears.
+    """Forces of a ring of the lining at angles from the springline to the crown, and what its
+    section bears. `ring` is its element, and when, where it is looked at before it is at rest.
 
     `angle_deg`, `thrust_mn_per_m` and `moment_mnm_per_m` (m,); `limit_thrust_mn_per_m` (k,),
     rising, and `limit_moment_mnm_per_m` (k,), the moment that the section bears with it, of either
     sign, without a factor of safety; straight in between.
     """
 
+    ring: str
     angle_deg: Array
     thrust_mn_per_m: Array
     moment_mnm_per_m: Array
@@ -114,8 +116,8 @@ class CaseCurves:
     ground: ReactionOfGround
     profile: ClosureAlongDrive
     support: ReactionOfClass
-    lining: ThrustAndMoment | None = None
-    """Of a class whose lining is checked for thrust and moment."""
+    lining: tuple[ThrustAndMoment, ...] = ()
+    """Of each ring of a class whose lining is checked for thrust and moment."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -56,6 +56,11 @@ def joined(parts: Sequence[Sections]) -> Sections:
     return Sections({name: np.concatenate([part[name] for part in parts]) for name in parts[0]})
 
 
+def of_element(name: str, position: int) -> str:
+    """Column of one element among those of its class, which are counted from 0."""
+    return f"{name}_{position + 1}"
+
+
 def one_section(values: Mapping[str, float | str]) -> Sections:
     """One section from its values by name."""
     return Sections(

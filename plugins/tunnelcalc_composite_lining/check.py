@@ -1,4 +1,8 @@
-"""The check of a class: its rings as one lining under unequal in-situ stress."""
+"""The check of a class: its rings as one lining under unequal in-situ stress.
+
+Rings may act from different distances and harden: each is checked with its own thrust and its
+share of the moment, at rest and, where it hardens, while young. See the module `rings`.
+"""
 
 from __future__ import annotations
 
@@ -8,14 +12,14 @@ import numpy as np
 
 from tunnelcalc import api
 from tunnelcalc.api import Limits, Parameter
+from tunnelcalc_composite_lining.einstein_schwartz import FULL_SLIP, NO_SLIP
 from tunnelcalc_composite_lining.interaction import interaction_diagram
 from tunnelcalc_composite_lining.lines import lining_lines
 from tunnelcalc_composite_lining.lining import (
-    FULL_SLIP,
-    NO_SLIP,
     Lining,
     governing_stress,
-    lining_at_rest,
+    lining_of,
+    loads_of,
     parts_of,
 )
 from tunnelcalc_composite_lining.utilisation import CROWN_DEG, SPRINGLINE_DEG
@@ -26,20 +30,19 @@ ANGLES = 19
 INTERFACE, TENSION = "lining_interface", "lining_tensile_strength_mpa"
 NO_FORCES = "the lining takes no thrust of the unequal stress, or an input of it is missing"
 
-CLOSED_AT = "closed_at_m"
-"""Parameter of a ring that is closed later than it is sprayed."""
-SAME_DISTANCE_M = 1e-9
-
 
 class CompositeLining:
     """Thrust and moment around the lining, and the stress of the face that is used most."""
 
     name = NAME
     meaning = (
-        "stress of the most used face of the composite lining, by thrust and moment at crown and "
-        "springline, against its strength: Einstein & Schwartz (1979), scaled to the thrust at "
-        "rest; Carranza-Torres & Diederichs (2009) [from memory]; a thin elastic ring, placed "
-        "before the ground moves"
+        "stress of the most used face of the lining's rings, by thrust and moment at crown and "
+        "springline, against its strength, at rest and of a ring that hardens also while young: "
+        "each ring with its own thrust, its moment to that as in the composite of all at final "
+        "stiffness, at rest no less than its share there; rings from the same distance that do not "
+        "harden share as the composite. Einstein & Schwartz (1979), scaled to the thrust; "
+        "Carranza-Torres & Diederichs (2009) [from memory]; a thin elastic ring, placed before the "
+        "ground moves"
     )
     unit = "MPa"
     carries_load = True
@@ -76,11 +79,12 @@ class CompositeLining:
         return any(element.section is not None for element in elements)
 
     def lining(self, sections: api.Sections, elements: tuple[api.Element, ...]) -> Lining:
-        """The lining of a class at rest; its rings must bear together."""
+        """The lining of a class; its rings must bear together all around."""
         tension = self.values[TENSION]
         assert not isinstance(tension, str)
         parts = parts_of(elements, tension, sections.count)
-        return lining_at_rest(sections, parts, str(self.values[INTERFACE]))
+        loads = loads_of(sections, elements)
+        return lining_of(sections, parts, loads, str(self.values[INTERFACE]))
 
     def evaluate(self, sections: api.Sections, elements: tuple[api.Element, ...]) -> api.Evaluation:
         alone = ring_that_acts_alone(elements)
@@ -94,20 +98,19 @@ class CompositeLining:
 
     def thrust_and_moment(
         self, sections: api.Sections, elements: tuple[api.Element, ...]
-    ) -> api.ThrustAndMoment | None:
-        """Forces of one section at rest, and the limit of its composite section."""
+    ) -> Sequence[api.ThrustAndMoment]:
+        """Forces of each ring in one section, and the limit of its own section."""
         if ring_that_acts_alone(elements):
-            return None
-        lining = self.lining(sections, elements)
-        limit = interaction_diagram(lining.parts, 1.0)
+            return ()
         angles = np.linspace(SPRINGLINE_DEG, CROWN_DEG, ANGLES)
-        return api.ThrustAndMoment(
-            angles,
-            lining.at_rest.thrust_mn_per_m(angles),
-            lining.at_rest.moment_mnm_per_m(angles),
-            limit.thrust_mn_per_m[0],
-            limit.moment_mnm_per_m[0],
-        )
+        found = []
+        for state in self.lining(sections, elements).states:
+            limit = interaction_diagram([state.part], 1.0)
+            thrust = state.forces.thrust_mn_per_m(angles)
+            moment = state.forces.moment_mnm_per_m(angles)
+            corners = limit.thrust_mn_per_m[0], limit.moment_mnm_per_m[0]
+            found.append(api.ThrustAndMoment(state.part.name, angles, thrust, moment, *corners))
+        return found
 
     def lines(
         self, values: api.SectionValues, elements: tuple[api.Element, ...]
@@ -120,26 +123,8 @@ class CompositeLining:
 
 def ring_that_acts_alone(elements: Sequence[api.Element]) -> str:
     """Why rings of a class are no composite lining; empty where they are one."""
-    reasons = [
+    return "; ".join(
         f"{element.label}: {element.section.acts_alone}"
         for element in elements
         if element.section is not None and element.section.acts_alone
-    ]
-    return "; ".join(reasons) or _rings_apart(elements)
-
-
-def _rings_apart(elements: Sequence[api.Element]) -> str:
-    """Parts that act from different distances do not share what came before the later one: their
-    thrusts would have to be told apart, which a composite section does not."""
-    acting = {
-        element.label: max(
-            element.installed_at_m,
-            float(element.values[CLOSED_AT]) if CLOSED_AT in element.values else 0.0,
-        )
-        for element in elements
-        if element.section is not None
-    }
-    if not acting or max(acting.values()) - min(acting.values()) <= SAME_DISTANCE_M:
-        return ""
-    told = ", ".join(f"{label} from {distance:g} m" for label, distance in acting.items())
-    return f"the rings act from different distances and share no load of before: {told}"
+    )

@@ -21,6 +21,7 @@ import numpy as np
 
 from tunnelcalc.api import Array
 
+FULL_SLIP, NO_SLIP = "full_slip", "no_slip"
 LARGEST_SCALE = 1e12
 """A lining that the whole in-situ stress gives a smaller part of its thrust is none."""
 
@@ -195,6 +196,36 @@ def scaled_to_thrust(forces: LiningForces, mean_thrust_mn_per_m: Array) -> Linin
         forces.moment_swing_mnm_per_m * scale,
         forces.scale * scale,
     )
+
+
+def swing_of_soft_lining(
+    interface: str,
+    stress_ratio: Array,
+    ground_poisson_ratio: Array,
+    stiffness: RelativeStiffness,
+) -> Array:
+    """Swing of thrust over its mean in a lining that is soft beside the ground.
+
+    Parameters
+    ----------
+    interface : `full_slip` or `no_slip`.
+    stress_ratio : (n,) K, horizontal over vertical in-situ stress in the section. [-]
+    ground_poisson_ratio : (n,) nu, 0 <= nu < 0.5. [-]
+    stiffness : of the lining, relative to the ground; its two parts keep their relation.
+
+    Returns
+    -------
+    (n,) limit of T2 / T0 for a stiffness towards 0. [-]
+
+    Source
+    ------
+    H. H. Einstein, C. W. Schwartz (1979) [from memory]: `full_slip_forces` and `no_slip_forces`.
+    """
+    (c, f), nu = stiffness, ground_poisson_ratio
+    stiff = c + f > 0
+    own = 3 * f if interface == FULL_SLIP else c + 3 * f
+    share = np.where(stiff, own, np.nan) / np.where(stiff, c + f, 1)
+    return (1 - stress_ratio) / (1 + stress_ratio) * (3 - 4 * nu) * share
 
 
 def shear_swing_mn_per_m(forces: LiningForces, radius_m: Array) -> Array:

@@ -4,10 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+import numpy as np
+
 from tunnelcalc import api
+from tunnelcalc.api import Array
 from tunnelcalc_composite_lining.composite_section import shares
-from tunnelcalc_composite_lining.interaction import faces
-from tunnelcalc_composite_lining.lining import NO_SLIP, Governing, Lining
+from tunnelcalc_composite_lining.einstein_schwartz import NO_SLIP
+from tunnelcalc_composite_lining.lining import Governing, Lining
+from tunnelcalc_composite_lining.rings import (
+    RingState,
+    act_together,
+    larger_swing,
+    shared_thrust_mn_per_m,
+)
 
 EINSTEIN_SCHWARTZ = "Einstein & Schwartz (1979)"
 CARRANZA_TORRES = "Carranza-Torres & Diederichs (2009) [from memory]"
@@ -18,8 +27,6 @@ FROM_RUN = {
     "sh'": "effective_horizontal_stress_mpa",
     "Erm": "deformation_modulus_mpa",
     "nu": "poisson_ratio",
-    "p_rings": "ring_pressure_mpa",
-    "uw": "lining_water_mpa",
 }
 
 
@@ -31,7 +38,9 @@ def lining_lines(
     work = api.Working(known, EINSTEIN_SCHWARTZ)
     _add_section(work, lining)
     _add_forces(work, lining, interface)
-    _add_stress(work, lining, found)
+    state = lining.states[int(found.state[0])]
+    _add_ring(work, lining, state, interface)
+    _add_stress(work, state, found)
     return work.lines
 
 
@@ -67,7 +76,7 @@ def _add_section(work: api.Working, lining: Lining) -> None:
 
 
 def _add_forces(work: api.Working, lining: Lining, interface: str) -> None:
-    whole, rest = lining.whole, lining.at_rest
+    whole = lining.whole
     work.add("k", "horizontal over vertical stress", "sh/sv", lining.stress_ratio[0], "", STATICS)
     meaning = "stiffness of the lining relative to the ground, "
     formula = "CA*(1 - nu^2)/(Erm*Rc)"
@@ -88,30 +97,102 @@ def _add_forces(work: api.Working, lining: Lining, interface: str) -> None:
     work.add("T2", "swing of thrust, no slip" if interface == NO_SLIP else "swing, full slip",
              thrust, whole.thrust_swing_mn_per_m[0], "MN/m")  # fmt: skip
     work.add("M2", "swing of moment", moment, whole.moment_swing_mnm_per_m[0], "MN m/m")
-    formula = "max(p_rings - uw, 0)*R/T0"
-    meaning = "share of the whole stress that is there at rest"
-    work.add("f", meaning, formula, rest.scale[0], "", STATICS)
 
 
-def _add_stress(work: api.Working, lining: Lining, found: Governing) -> None:
-    angle, rest = found.angle_deg, lining.at_rest
-    work.known["theta"] = float(angle[0])
-    formula = "f*T0 + uw*R + f*T2*cos(2*radians(theta))"
-    meaning = "thrust where the lining is used most, theta from the springline"
-    thrust, moment = rest.thrust_mn_per_m(angle)[0], rest.moment_mnm_per_m(angle)[0]
-    work.add("N", meaning, formula, thrust, "MN/m", STATICS)
-    work.add("M", "moment there", "f*M2*cos(2*radians(theta))", moment, "MN m/m", STATICS)
+def _add_ring(work: api.Working, lining: Lining, state: RingState, interface: str) -> None:
+    """Forces of the ring that is used most, from what it carries."""
+    own = f"_{state.number + 1}"
+    ground, water = _pressures(work, lining, state)
+    radius, whole = work.known["R"], lining.whole
+    meaning = f"thrust of the ground in {state.part.name}"
+    work.add(
+        "N_g", meaning, f"{ground}{own}*R", _ground(lining, state)[0] * radius, "MN/m", STATICS
+    )
+    if any(load.hardens for load in lining.loads):
+        meaning = "of it shared with all rings: none, since a ring hardens"
+        work.add("N_s", meaning, "", 0.0, "MN/m", CARRANZA_TORRES)
+    else:
+        count = len(lining.parts)
+        strains = [f"p_{number}*R/CA_{number}" for number in range(1, count + 1)]
+        least = strains[0] if count == 1 else f"min({', '.join(strains)})"
+        shared = shared_thrust_mn_per_m(lining.parts, lining.composites, np.array([radius]))
+        value = shared[state.number][0]
+        work.add("N_s", "of it shared with all rings", f"CA{own}*{least}", value, "MN/m",
+                 CARRANZA_TORRES)  # fmt: skip
+    share = "3*iF" if interface != NO_SLIP else "(iC + 3*iF)"
+    soft = f"(1 - k)/(1 + k)*(3 - 4*nu)*{share}/(iC + iF)"
+    choice = "max" if lining.stress_ratio[0] <= 1 else "min"
+    meaning = "swing of thrust over its mean, of a soft lining or of this one, the larger"
+    work.add("s", meaning, f"{choice}({soft}, T2/T0)", larger_swing(whole, lining.soft_swing)[0])
+    forces = state.forces
+    formula = "N_g*T2/T0 + (N_g - min(N_s, N_g))*(s - T2/T0)"
+    meaning = "swing of thrust in this ring"
+    work.add("T2_r", meaning, formula, forces.thrust_swing_mn_per_m[0], "MN/m")
     split = shares(lining.parts)
-    limits = faces(lining.parts, 1.0)
-    number = [face.label for face in limits].index(found.face[0])
-    part, sign = lining.parts[number // 2], "-" if number % 2 else ""
-    work.known["h"] = part.depth_m
-    own = f"_{number // 2 + 1}"
-    work.add("a", f"share of {part.name} in the thrust", f"CA{own}/CA",
-             split.thrust[number // 2][0], "", CARRANZA_TORRES)  # fmt: skip
-    work.add("b", "its share in the moment", f"CI{own}/CI",
-             split.moment[number // 2][0], "", CARRANZA_TORRES)  # fmt: skip
-    formula = f"max({sign}a*N/A{own} + b*abs(M)*h/(2*I{own}), 0)"
+    for symbol, letter, of in (("a", "A", split.thrust), ("b", "I", split.moment)):
+        meaning = f"share of it in {'thrust' if letter == 'A' else 'moment'} as a composite"
+        formula = f"C{letter}{own}/C{letter}"
+        work.add(symbol, meaning, formula, of[state.number][0], "", CARRANZA_TORRES)
+    pressures = " + ".join(f"p_{number}" for number in range(1, len(lining.parts) + 1))
+    bent = "N_g" if state.young or len(lining.parts) == 1 else f"max(N_g, a*({pressures})*R)"
+    formula, value = f"{bent}*M2/T0*b/a", forces.moment_swing_mnm_per_m[0]
+    work.add("M2_r", "swing of moment in this ring", formula, value, "MN m/m")
+    work.add("N_w", "its thrust of water", f"{water}{own}*R", work.known[f"{water}{own}"] * radius,
+             "MN/m", STATICS)  # fmt: skip
+
+
+def _ground(lining: Lining, state: RingState) -> Array:
+    load = lining.composites[state.number]
+    young = load.young_ground_mpa
+    return young if state.young and young is not None else load.ground_mpa
+
+
+def _pressures(work: api.Working, lining: Lining, state: RingState) -> tuple[str, str]:
+    """Puts the pressures on every ring among what is known; symbols of those of this state."""
+    for number, load in enumerate(lining.composites, start=1):
+        work.known |= {f"p_{number}": load.ground_mpa[0], f"uw_{number}": load.water_mpa[0]}
+        _add_sharing(work, lining, number)
+        if load.young_ground_mpa is not None and load.young_water_mpa is not None:
+            work.known |= {
+                f"py_{number}": load.young_ground_mpa[0],
+                f"uy_{number}": load.young_water_mpa[0],
+            }
+    return ("py", "uy") if state.young else ("p", "uw")
+
+
+def _add_sharing(work: api.Working, lining: Lining, number: int) -> None:
+    """Pressures of a ring that shares them with others from the first."""
+    own = lining.loads[number - 1]
+    others = [n for n, load in enumerate(lining.loads, start=1) if act_together(own, load)[0]]
+    if len(others) == 1:
+        return
+    for n in others:
+        carried = lining.loads[n - 1]
+        work.known |= {f"pe_{n}": carried.ground_mpa[0], f"ue_{n}": carried.water_mpa[0]}
+    stiffness = " + ".join(f"CA_{n}" for n in others)
+    found, part = lining.composites[number - 1], lining.parts[number - 1].name
+    for symbol, each, of, value in (
+        ("p", "pe", "the ground", found.ground_mpa),
+        ("uw", "ue", "water", found.water_mpa),
+    ):
+        together = " + ".join(f"{each}_{n}" for n in others)
+        meaning = f"pressure of {of} on {part}, as in a composite of those that act with it"
+        formula = f"CA_{number}*({together})/({stiffness})"
+        work.add(f"{symbol}_{number}", meaning, formula, value[0], "MPa", CARRANZA_TORRES)
+
+
+def _add_stress(work: api.Working, state: RingState, found: Governing) -> None:
+    angle, forces, own = found.angle_deg, state.forces, f"_{state.number + 1}"
+    work.known["theta"] = float(angle[0])
+    formula = "N_g + N_w + T2_r*cos(2*radians(theta))"
+    meaning = "thrust where the ring is used most, theta from the springline"
+    thrust, moment = forces.thrust_mn_per_m(angle)[0], forces.moment_mnm_per_m(angle)[0]
+    work.add("N", meaning, formula, thrust, "MN/m", STATICS)
+    work.add("M", "moment there", "M2_r*cos(2*radians(theta))", moment, "MN m/m", STATICS)
+    work.known["h"] = state.part.depth_m
+    sign = "-" if str(found.face[0]).endswith("tension") else ""
+    formula = f"max({sign}N/A{own} + abs(M)*h/(2*I{own}), 0)"
     meaning = f"stress of {found.face[0]}"
     work.add("demand", meaning, formula, found.stress_mpa[0], "MPa", CARRANZA_TORRES)
-    work.add("capacity", "its strength", "", found.strength_mpa[0], "MPa", "project")
+    meaning = "its strength at that age" if state.young else "its strength"
+    work.add("capacity", meaning, "", found.strength_mpa[0], "MPa", "project")

@@ -15,49 +15,54 @@ from tunnelcalc_composite_lining.composite_section import (
     equivalent_section,
 )
 from tunnelcalc_composite_lining.einstein_schwartz import (
+    FULL_SLIP,
     LiningForces,
     RelativeStiffness,
     full_slip_forces,
     no_slip_forces,
     relative_stiffness,
-    scaled_to_thrust,
+    swing_of_soft_lining,
 )
 from tunnelcalc_composite_lining.interaction import faces
+from tunnelcalc_composite_lining.rings import RingLoad, RingState, as_composites, ring_states
 from tunnelcalc_composite_lining.utilisation import worst_utilisation
 
-FULL_SLIP, NO_SLIP = "full_slip", "no_slip"
 NEEDED = (
     "radius_m",
     "effective_vertical_stress_mpa",
     "effective_horizontal_stress_mpa",
     "deformation_modulus_mpa",
     "poisson_ratio",
-    "ring_pressure_mpa",
-    "lining_water_mpa",
 )
-"""Columns of the sections that the forces follow from."""
+"""Columns of the sections that the forces follow from, beside the pressure on each ring."""
 
 
 class Lining(NamedTuple):
-    """Parts of the lining, its stiffness, radius of its centreline (n,) [m], and its forces: under
-    the whole in-situ stress, and at rest with the water."""
+    """Parts of the lining, the load of each, the same where rings that act together share theirs
+    as a composite, its stiffness as a composite, radius of its
+    centreline (n,) [m], forces under the whole in-situ stress, swing of thrust of a soft lining
+    (n,) [-], and the states of its rings, with the water."""
 
     parts: tuple[Part, ...]
+    loads: tuple[RingLoad, ...]
+    composites: tuple[RingLoad, ...]
     section: EquivalentSection
     centreline_m: Array
     stress_ratio: Array
     stiffness: RelativeStiffness
     whole: LiningForces
-    at_rest: LiningForces
+    soft_swing: Array
+    states: tuple[RingState, ...]
 
 
 class Governing(NamedTuple):
     """Stress (n,) and strength (n,) [MPa] of the face that is used most, its angle from the
-    springline (n,) [deg], and part and face (n,)."""
+    springline (n,) [deg], number of its state (n,), and part and face (n,)."""
 
     stress_mpa: Array
     strength_mpa: Array
     angle_deg: Array
+    state: Array
     face: Array
 
 
@@ -102,19 +107,68 @@ def parts_of(
     return tuple(found)
 
 
-def lining_at_rest(sections: api.Sections, parts: tuple[Part, ...], interface: str) -> Lining:
-    """Forces of the lining at rest with the ground.
+def loads_of(sections: api.Sections, elements: Sequence[api.Element]) -> tuple[RingLoad, ...]:
+    """The pressure on each ring of a class.
+
+    Parameters
+    ----------
+    sections : with the state of each element [MPa], under `api.of_element`.
+    elements : of the class; those without a section of a ring are none.
+
+    Returns
+    -------
+    One load a ring. [-]
+
+    Limits
+    ------
+    The strength of a ring that hardens grows with its capacity in pressure.
+
+    Source
+    ------
+    Definition.
+    """
+    found = []
+    for position, element in enumerate(elements):
+        if element.section is None:
+            continue
+        water = sections[api.of_element("element_water_mpa", position)]
+        ground = sections[api.of_element("element_pressure_mpa", position)] - water
+        acts = sections[api.of_element("element_acts_from_m", position)]
+        load = RingLoad(np.maximum(ground, 0), water, acts)
+        worst = api.of_element("worst_pressure_mpa", position)
+        if worst in sections:
+            pressure = sections[worst]
+            young_water = np.minimum(water, pressure)
+            capacity = sections[api.of_element("worst_capacity_mpa", position)]
+            final = sections[api.of_element("element_capacity_mpa", position)]
+            load = load._replace(
+                young_ground_mpa=pressure - young_water,
+                young_water_mpa=young_water,
+                young_strength_share=_over(capacity, final),
+            )
+        found.append(load)
+    return tuple(found)
+
+
+def lining_of(
+    sections: api.Sections,
+    parts: tuple[Part, ...],
+    loads: tuple[RingLoad, ...],
+    interface: str,
+) -> Lining:
+    """Forces of the rings of a lining.
 
     Parameters
     ----------
     sections : with the columns `NEEDED`.
     parts : of the lining.
+    loads : of each part. [MPa]
     interface : `full_slip` or `no_slip`.
 
     Returns
     -------
-    Lining, its forces scaled so that the mean thrust is the pressure of the ground on the rings
-    [MPa] times the radius of the wall [m]; the water pressure adds its thrust and no moment.
+    Lining: of each ring a mean thrust of its pressure times the radius of the wall [m], and swing
+    of thrust and moment as the unequal stress makes them; water adds its thrust and no moment.
 
     Limits
     ------
@@ -122,7 +176,7 @@ def lining_at_rest(sections: api.Sections, parts: tuple[Part, ...], interface: s
 
     Source
     ------
-    H. H. Einstein, C. W. Schwartz (1979); statics of the mean thrust.
+    H. H. Einstein, C. W. Schwartz (1979); statics of the mean thrust; module `rings`.
     """
     radius = sections["radius_m"]
     section = equivalent_section(parts)
@@ -139,12 +193,12 @@ def lining_at_rest(sections: api.Sections, parts: tuple[Part, ...], interface: s
     )
     forces_of = full_slip_forces if interface == FULL_SLIP else no_slip_forces
     whole = forces_of(vertical, ratio, centreline, nu, stiffness)
-    water = sections["lining_water_mpa"]
-    # The rings carry the ground and the water; only the ground presses unequally.
-    ground = np.maximum(sections["ring_pressure_mpa"] - water, 0)
-    scaled = scaled_to_thrust(whole, ground * radius)
-    at_rest = scaled._replace(mean_thrust_mn_per_m=scaled.mean_thrust_mn_per_m + water * radius)
-    return Lining(parts, section, centreline, ratio, stiffness, whole, at_rest)
+    soft = swing_of_soft_lining(interface, ratio, nu, stiffness)
+    composites = as_composites(parts, loads)
+    states = ring_states(parts, composites, radius, whole, soft)
+    return Lining(
+        parts, loads, composites, section, centreline, ratio, stiffness, whole, soft, states
+    )
 
 
 def governing_stress(lining: Lining) -> Governing:
@@ -152,28 +206,43 @@ def governing_stress(lining: Lining) -> Governing:
 
     Parameters
     ----------
-    lining : at rest.
+    lining : with the states of its rings.
 
     Returns
     -------
-    Stress and strength [MPa], angle [deg], part and face. [-]
+    Stress and strength [MPa], angle [deg], state, part and face. [-]  NaN where one ring is not
+    known.
 
     Source
     ------
     Carranza-Torres & Diederichs (2009) [from memory]; crown or springline govern, see the module
     on utilisation.
     """
-    worst = worst_utilisation(lining.at_rest, lining.parts, 1.0)
-    thrust = lining.at_rest.thrust_mn_per_m(worst.angle_deg)
-    moment = np.abs(lining.at_rest.moment_mnm_per_m(worst.angle_deg))
+    found = [_governing_of(number, state) for number, state in enumerate(lining.states)]
+    worst, most = found[0]
+    for other, used in found[1:]:
+        # A ring that is not known leaves the lining unknown, whatever the others are.
+        more = ~(used <= most) & ~np.isnan(most)
+        worst = Governing(*(np.where(more, b, a) for a, b in zip(worst, other, strict=True)))
+        most = np.where(more, used, most)
+    return worst
+
+
+def _governing_of(number: int, state: RingState) -> tuple[Governing, Array]:
+    """Of one ring, and its utilisation (n,)."""
+    worst = worst_utilisation(state.forces, [state.part], 1.0)
+    thrust = state.forces.thrust_mn_per_m(worst.angle_deg)
+    moment = np.abs(state.forces.moment_mnm_per_m(worst.angle_deg))
     stress = np.full(thrust.shape, np.nan)
     strength = np.full(thrust.shape, np.nan)
-    for face in faces(lining.parts, 1.0):
+    for face in faces([state.part], 1.0):
         here = worst.governing == face.label
         stress = np.where(here, face.thrust * thrust + face.moment * moment, stress)
         strength = np.where(here, face.strength_mpa, strength)
     # Rounding may leave an unloaded lining an ulp below 0.
-    return Governing(np.maximum(stress, 0), strength, worst.angle_deg, worst.governing)
+    stress = np.maximum(stress, 0)
+    place = np.full(thrust.shape, number)
+    return Governing(stress, strength, worst.angle_deg, place, worst.governing), worst.utilisation
 
 
 def _over(top: Array, bottom: Array) -> Array:

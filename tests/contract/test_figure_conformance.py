@@ -59,7 +59,7 @@ def test_a_figure_of_nothing_is_not_drawn_or_says_so(figure, curves, tmp_path):
             dataclasses.replace(part, **{name: np.full_like(getattr(part, name), np.nan)})
             for part, name in ((case.ground, "closure_mm"), (case.profile, "closure_mm"))
         )
-        nothing.append(dataclasses.replace(case, ground=ground, profile=profile, lining=None))
+        nothing.append(dataclasses.replace(case, ground=ground, profile=profile, lining=()))
     empty = dataclasses.replace(curves, cases=tuple(nothing), envelopes=())
     names = tuple(figure.draw(empty, tmp_path))
     assert sorted(path.name for path in tmp_path.iterdir()) == sorted(names)

@@ -22,10 +22,9 @@ from tunnelcalc.outputs.cells import number_text
 from tunnelcalc.outputs.tables import OUTCOME_WORDS
 from tunnelcalc.pipeline.class_evaluation import CheckRow, Evaluated
 from tunnelcalc.pipeline.element_loads import (
-    class_capacities,
+    class_columns,
     element_columns,
     element_water_mpa,
-    ring_pressure_mpa,
 )
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass, PlannedElement
@@ -180,7 +179,7 @@ class CaseBlocks:
         terms = []
         for position, item in enumerate(planned.elements):
             own = f"_{position + 1}"
-            acting = float(found.acting_m[position, 0]) * MM_PER_M
+            acting = _acting_m(found, position) * MM_PER_M
             formula = share_formula(found.responses[position], own)
             work.known |= {
                 f"K{own}": float(found.responses[position].stiffness_mpa_per_m[0]),
@@ -216,9 +215,8 @@ class CaseBlocks:
                     lambda thing, v=values, e=element: thing.lines(v, e),  # type: ignore[misc]
                     float(water[position, 0]),
                 )
-        capacities = class_capacities(planned, found.responses, found.credited_mpa)
-        capacities["ring_pressure_mpa"] = ring_pressure_mpa(planned, found.rest, water)
-        values = supported | {name: float(row[0]) for name, row in capacities.items()}
+        columns = class_columns(planned, found.responses, found.rest, found.credited_mpa, water)
+        values = supported | {name: float(row[0]) for name, row in columns.items()}
         members = tuple(item.element for item in planned.elements)
         for class_check in planned.class_checks:
             yield self._check(
@@ -302,6 +300,13 @@ class CaseBlocks:
         word = "adequate" if bool(row.adequate[0]) else "not adequate"
         title = f"Class {planned.support_class.name}: adequacy{self.title}"
         return SheetBlock(title, (*work.lines, limit, factor, least), (f"the class is {word}",))
+
+
+def _acting_m(found: Evaluated, position: int) -> float:
+    """Closure from which an element counts: beside one that ages, that of the supported wall."""
+    if found.rest.state is not None:
+        return float(found.acting_m[position, 0])
+    return float(found.rest.closure_m[0] - found.rest.element_moved_m[position, 0])
 
 
 def _number(values: SectionValues, name: str) -> float:

@@ -57,6 +57,7 @@ STRENGTH_ENVELOPE_HEADER = (
 )
 THRUST_MOMENT_HEADER = (
     "stress_case",
+    "element",
     "springline_angle_deg",
     "lining_thrust_mn_per_m",
     "lining_moment_mnm_per_m",
@@ -170,18 +171,17 @@ def _class_rows(support: ReactionOfClass) -> Iterator[Sequence[str]]:
 
 
 def _lining_rows(case: CaseCurves, radius_m: float) -> Iterator[Sequence[str]]:
-    """Forces by angle, then the limit of the section, a whole turn of it."""
-    lining = case.lining
-    if lining is None:
-        return
-    forces = (lining.angle_deg, lining.thrust_mn_per_m, lining.moment_mnm_per_m)
-    for angle, *state in zip(*(column.tolist() for column in forces), strict=True):
-        if state[0] == state[0]:
-            yield (*(number_text(value) for value in (angle, *state)), REST)
-    thrust, moment = lining.limit_thrust_mn_per_m, lining.limit_moment_mnm_per_m
-    turn = zip([*thrust, *thrust[::-1]], [*moment, *-moment[::-1]], strict=True)
-    for pair in turn:
-        yield (OTHER, *(number_text(float(value)) for value in pair), CAPACITY)
+    """Of each ring its forces by angle, then the limit of its section, a whole turn of it."""
+    for ring in case.lining:
+        forces = (ring.angle_deg, ring.thrust_mn_per_m, ring.moment_mnm_per_m)
+        for angle, *state in zip(*(column.tolist() for column in forces), strict=True):
+            if state[0] == state[0]:
+                yield (ring.ring, *(number_text(value) for value in (angle, *state)), REST)
+        thrust, moment = ring.limit_thrust_mn_per_m, ring.limit_moment_mnm_per_m
+        turn = zip([*thrust, *thrust[::-1]], [*moment, *-moment[::-1]], strict=True)
+        for pair in turn:
+            numbers = (number_text(float(value)) for value in pair)
+            yield (ring.ring, OTHER, *numbers, CAPACITY)
 
 
 def _envelope_rows(envelopes: Sequence[StrengthEnvelope]) -> Rows:

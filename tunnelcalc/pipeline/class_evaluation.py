@@ -13,10 +13,10 @@ from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, closure_share
 from tunnelcalc.pipeline.element_loads import (
     class_capacities,
+    class_columns,
     element_columns,
     element_water_mpa,
     missing_pressure_mpa,
-    ring_pressure_mpa,
 )
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass, counts
@@ -298,10 +298,7 @@ def _check_rows(
             rows.append(row)
     if planned.class_checks:
         of_class = supported.sections.with_columns(
-            {
-                **class_capacities(planned, responses, credited_mpa),
-                "ring_pressure_mpa": ring_pressure_mpa(planned, rest, water),
-            }
+            class_columns(planned, responses, rest, credited_mpa, water)
         )
         of_class = of_class.take(standing)
         members = tuple(item.element for item in planned.elements)

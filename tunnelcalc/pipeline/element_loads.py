@@ -10,10 +10,10 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass
-from tunnelcalc.pipeline.resting_state import RestingState, pressure_of
+from tunnelcalc.pipeline.resting_state import RestingState, acting_from_m, pressure_of
 from tunnelcalc.plugin.contained_reaction import ElementResponse
 from tunnelcalc.project import Criteria
-from tunnelcalc.sections import Sections
+from tunnelcalc.sections import Sections, of_element
 from tunnelcalc.support.reaction import PressureOfClosure
 
 
@@ -69,13 +69,27 @@ def water_goes_by_stiffness(planned: PlannedClass, responses: Sequence[ElementRe
     )
 
 
-def ring_pressure_mpa(planned: PlannedClass, rest: RestingState, water_mpa: Array) -> Array:
-    """(n,) pressure that the rings of a class carry together, water included. [MPa]"""
-    total = np.zeros(rest.support_pressure_mpa.size)
-    for position, item in enumerate(planned.elements):
-        if item.is_ring:
-            total = total + rest.element_pressure_mpa[position] + water_mpa[position]
-    return total
+def class_columns(
+    planned: PlannedClass,
+    responses: Sequence[ElementResponse],
+    rest: RestingState,
+    credited_mpa: Array,
+    water_mpa: Array,
+) -> dict[str, Array]:
+    """What the checks of a class find beside the ground and the state of the class: capacities
+    of all, and of each element what its own checks find, its share of the water, and the
+    distance behind the face from which it acts."""
+    columns = class_capacities(planned, responses, credited_mpa)
+    for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True)):
+        water = water_mpa[position]
+        acts_from_m = acting_from_m(item.element.installed_at_m, response.reaction)
+        own = {
+            **element_columns(rest, response, position, water),
+            "element_water_mpa": water,
+            "element_acts_from_m": np.full(water.size, acts_from_m),
+        }
+        columns |= {of_element(name, position): column for name, column in own.items()}
+    return columns
 
 
 def class_capacities(

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from tunnelcalc.pipeline.class_evaluation import Evaluated
-from tunnelcalc.pipeline.element_loads import class_capacities, element_water_mpa, ring_pressure_mpa
+from tunnelcalc.pipeline.element_loads import class_columns, element_water_mpa
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass
 from tunnelcalc.plugin.contract import LiningCheck
@@ -14,8 +14,8 @@ from tunnelcalc.sections import Sections
 
 def lining_of(
     planned: PlannedClass, found: Evaluated, section: Sections
-) -> tuple[ThrustAndMoment | None, str]:
-    """The forces of the first check that tells them, and why they are not known; None and no
+) -> tuple[tuple[ThrustAndMoment, ...], str]:
+    """The forces of the first check that tells them, and why they are not known; nothing and no
     reason where no check looks at a lining."""
     for check in planned.class_checks:
         if not isinstance(check, LiningCheck):
@@ -27,13 +27,12 @@ def lining_of(
                 "support_pressure_mpa": rest.support_pressure_mpa,
                 "supported_closure_mm": rest.closure_m * MM_PER_M,
                 "supported_plastic_radius_m": rest.plastic_ratio * section["radius_m"],
-                **class_capacities(planned, found.responses, found.credited_mpa),
-                "ring_pressure_mpa": ring_pressure_mpa(planned, rest, water),
+                **class_columns(planned, found.responses, rest, found.credited_mpa, water),
             }
         )
         members = tuple(item.element for item in planned.elements)
         try:
-            return check.thrust_and_moment(of_class, members), ""
+            return tuple(check.thrust_and_moment(of_class, members)), ""
         except (Exception, SystemExit) as error:  # a stranger's check may raise anything
-            return None, describe(error)
-    return None, ""
+            return (), describe(error)
+    return (), ""

@@ -10,7 +10,7 @@ the sheet prints the result alone.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Protocol, runtime_checkable
@@ -173,7 +173,9 @@ class ClassCheck(Protocol):
     `evaluate` finds in the sections, besides the ground and the radius: `support_pressure_mpa`,
     `supported_closure_mm`, `supported_plastic_radius_m` of the class, `class_capacity_mpa`, the
     sum of its elements' capacities, `ring_capacity_mpa`, that of its rings alone, and
-    `lining_water_mpa`, the water pressure on a watertight lining.
+    `lining_water_mpa`, the water pressure on a watertight lining. What the checks of its elements
+    find, `element_water_mpa`, of the water the share of an element, and `element_acts_from_m`, the
+    distance behind the face from which it acts, stand under `of_element(name, position)`.
     """
 
     @property
@@ -232,8 +234,9 @@ class LiningCheck(ClassCheck, Protocol):
 
     def thrust_and_moment(
         self, sections: Sections, elements: tuple[Element, ...]
-    ) -> ThrustAndMoment | None:
-        """The forces of one section; None where the class has no lining that bears together."""
+    ) -> Sequence[ThrustAndMoment]:
+        """The forces of each ring in one section; none where the class has no lining that bears
+        together."""
 
 
 STRENGTH_COLUMNS = (

@@ -9,7 +9,8 @@ import pytest
 
 from tunnelcalc.plugin.contract import ClassCheck, ClassCheckWithOptions
 from tunnelcalc.project import Element
-from tunnelcalc.sections import Sections
+from tunnelcalc.sections import Sections, of_element
+from tunnelcalc.support.reaction import AdvanceIncrements
 from tunnelcalc.testing.elements import option_sets
 from tunnelcalc.testing.generated import Generated, put
 from tunnelcalc.testing.reactions import capacity_of, moved_mm
@@ -22,6 +23,15 @@ from tunnelcalc.testing.sections import (
 from tunnelcalc.vocabulary import GROUND
 
 PARTS = ("demand", "capacity")
+STATE = (
+    "element_pressure_mpa",
+    "element_capacity_mpa",
+    "element_moved_mm",
+    "element_water_mpa",
+    "element_acts_from_m",
+)
+AGEING = ("worst_pressure_mpa", "worst_capacity_mpa", "worst_age_days", "worst_distance_m")
+"""What stands in the sections for every element, and for one that ages besides."""
 
 
 class ClassCheckConformance(Generated):
@@ -59,7 +69,17 @@ class ClassCheckConformance(Generated):
         reactions = [registry.support_kind(m.kind).reaction(ground, m) for m in members]
         capacity = np.sum([capacity_of(reaction) for reaction in reactions], axis=0)
         moved = moved_mm(reactions[0], 0.5 * capacity_of(reactions[0]))
-        return sections_at_rest(0.5 * capacity, capacity, moved)
+        of_class = sections_at_rest(0.5 * capacity, capacity, moved)
+        for position, reaction in enumerate(reactions):
+            own = capacity_of(reaction)
+            alone = sections_at_rest(0.5 * own, own, moved_mm(reaction, 0.5 * own))
+            nothing = np.zeros(alone.count)
+            more = {"element_water_mpa": nothing, "element_acts_from_m": nothing + position}
+            alone = alone.with_columns(more)
+            ages = AGEING if isinstance(reaction, AdvanceIncrements) else ()
+            columns = {of_element(name, position): alone[name] for name in (*STATE, *ages)}
+            of_class = of_class.with_columns(columns)
+        return of_class
 
     def test_a_check_says_what_it_compares(self, check: ClassCheck) -> None:
         assert check.name.isidentifier()

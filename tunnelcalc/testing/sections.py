@@ -100,7 +100,6 @@ def sections_at_rest(
             "worst_capacity_mpa": capacity,
             "worst_age_days": np.full(RADII_M.shape, 28.0),
             "worst_distance_m": 4 * RADII_M,
-            "ring_pressure_mpa": pressure,
             "ring_capacity_mpa": capacity,
             "class_capacity_mpa": capacity,
         }
