@@ -31,6 +31,7 @@ from tunnelcalc.plugin.contract import (
     StrengthMethod,
     SupportCheck,
     SupportKind,
+    TradeOffFigure,
     ValidityFlag,
 )
 from tunnelcalc.plugin.flag import Condition, Flag, NumberOfFlag
@@ -39,6 +40,9 @@ from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project, SupportClass
 from tunnelcalc.results import ItemTotal, RunResult, Zone
 from tunnelcalc.section_curves import (
+    BEYOND,
+    CAPACITY,
+    INSTALLED,
     CaseCurves,
     ClosureAlongDrive,
     ReactionOfClass,
@@ -58,11 +62,15 @@ from tunnelcalc.support.reaction import (
 )
 from tunnelcalc.support.ring_section import RingSection
 from tunnelcalc.text import decoded
+from tunnelcalc.trade_off import TradeOff
 from tunnelcalc.validity import PRACTICE, YES_OR_NO, Level, Side, Threshold
 from tunnelcalc.verification import Standing, VerificationCheck
 from tunnelcalc.vocabulary import Limits
 
 __all__ = [
+    "BEYOND",
+    "CAPACITY",
+    "INSTALLED",
     "LIMITS",
     "PRACTICE",
     "YES_OR_NO",
@@ -122,6 +130,8 @@ __all__ = [
     "SupportKind",
     "Threshold",
     "ThrustAndMoment",
+    "TradeOff",
+    "TradeOffFigure",
     "ValidityFlag",
     "VerificationCheck",
     "Where",

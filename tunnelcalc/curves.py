@@ -10,12 +10,13 @@ from tunnelcalc.errors import ExitCode
 from tunnelcalc.inputs.project_file import project_folder, read_project
 from tunnelcalc.one_section import class_number, computed, position_at
 from tunnelcalc.outputs.curve_tables import write_curves
+from tunnelcalc.outputs.figures import draw_all
 from tunnelcalc.outputs.run_folder import Target, part_folder, sync_folder
 from tunnelcalc.pipeline.chain import section_stages
 from tunnelcalc.pipeline.dispatch import chosen_steps
 from tunnelcalc.pipeline.plan import plan_classes
 from tunnelcalc.pipeline.section_curves import section_curves
-from tunnelcalc.plugin.registry import Registry, describe
+from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import Project
 from tunnelcalc.section_curves import SectionCurves
 
@@ -55,21 +56,15 @@ def show_section(
     place = _own_place(project_folder(path), curves, class_name) if out is None else out
     target = Target(project_folder(path), place, by_option=out is not None)
     figures = registry.section_figures(project.plugins)
-    missing = list(curves.unknown)
     with part_folder(target) as part:
-        files = list(write_curves(part, curves))
-        for figure in figures:
-            try:
-                files.extend(map(str, figure.draw(curves, part)))
-            except OSError:
-                raise  # the disk, not the plugin
-            except (Exception, SystemExit) as error:
-                missing.append((f"figure {figure.name}", describe(error)))
+        tables = write_curves(part, curves)
+        drawn = draw_all(figures, curves, part)
         sync_folder(part)
         folder = target.place(part)
         sync_folder(target.parent)
+    files, missing = (*tables, *drawn.files), (*curves.unknown, *drawn.missing)
     ending = ExitCode.NOT_EVALUATED if missing else ExitCode.COMPLETE
-    return Shown(folder, tuple(files), curves, tuple(missing), not figures, ending)
+    return Shown(folder, files, curves, missing, not figures, ending)
 
 
 def curves_at(

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable
 from dataclasses import dataclass
 from datetime import UTC, datetime
 from pathlib import Path
@@ -16,6 +16,7 @@ from tunnelcalc.outputs.run_folder import Target, copy_inputs, part_folder, sync
 from tunnelcalc.outputs.tables import ChunkTables, write_sections
 from tunnelcalc.pipeline.chain import build_stages, kept_columns
 from tunnelcalc.pipeline.collect import item_totals, zones
+from tunnelcalc.pipeline.dispatch import method_sources
 from tunnelcalc.pipeline.flags_stage import (
     flag_counts,
     flag_numbers,
@@ -27,7 +28,7 @@ from tunnelcalc.pipeline.incidents import Incidents
 from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.pipeline.stage import check_chain, run_stages
 from tunnelcalc.plugin.registry import Registry, describe
-from tunnelcalc.project import MethodChoice, Project
+from tunnelcalc.project import Project
 from tunnelcalc.results import RunResult
 from tunnelcalc.sections import Sections
 
@@ -131,7 +132,7 @@ def compute(
             flags=flag_counts(lines, sections),
             incidents=incidents.listed(),
             warnings=project.warnings,
-            methods=_sources(project, registry),
+            methods=method_sources(project, registry),
         ),
         registry,
         folder,
@@ -160,18 +161,3 @@ def ending(result: RunResult, strict: bool) -> ExitCode:
     if strict and result.without_adequate_class:
         return ExitCode.NO_ADEQUATE_CLASS
     return ExitCode.COMPLETE
-
-
-def _sources(project: Project, registry: Registry) -> Mapping[str, str]:
-    return {
-        step: "; ".join(_described(registry, step, choice, name) for name in choice.names)
-        for step, choice in project.methods.items()
-    }
-
-
-def _described(registry: Registry, step: str, choice: MethodChoice, name: str) -> str:
-    """A method with its source, and the ground units that it is for where they are named."""
-    units = [unit for unit, method in choice.by_unit.items() if method == name]
-    others = ["all other ground"] if len(choice.names) > 1 and name == choice.names[0] else []
-    where = f" ({', '.join((*units, *others))})" if units or others else ""
-    return f"{name}{where}: {registry.method(step, name).source}"

@@ -10,11 +10,16 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
+import numpy as np
+
 from tunnelcalc.arrays import Array
 
 PEAK, RESIDUAL, RING = "peak", "residual", "ring"
 """Whose strength an envelope shows: of the mass, of the mass once it has failed, or of the
 disturbed ring."""
+
+INSTALLED, CAPACITY, BEYOND = "installed", "capacity", "beyond_capacity"
+"""Points that the line of an element may have; a plugin may name more."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -48,7 +53,8 @@ class ClosureAlongDrive:
 @dataclass(frozen=True, slots=True)
 class ReactionOfElement:
     """An element: its line from installation to some way beyond its capacity, and its state at
-    rest. `water_mpa` is the water pressure that a ring of a watertight lining carries besides."""
+    rest. `water_mpa` is the water pressure that a ring of a watertight lining carries besides;
+    `marks` says what is special about a point of the line."""
 
     label: str
     installed_at_m: float
@@ -59,13 +65,21 @@ class ReactionOfElement:
     water_mpa: float
     closure_mm: Array
     pressure_mpa: Array
+    marks: Mapping[int, str]
 
     @property
     def capacity_closure_mm(self) -> float:
-        """Closure at which the element reaches its capacity."""
-        if not self.stiffness_mpa_per_m > 0:
-            return float("nan")
-        return self.installation_closure_mm + 1e3 * self.capacity_mpa / self.stiffness_mpa_per_m
+        """Closure at which the element reaches its capacity; NaN where its line never does."""
+        at = [point for point, name in self.marks.items() if CAPACITY in name.split(";")]
+        return float(self.closure_mm[at[0]]) if at else float("nan")
+
+    def line_to(self, rest_closure_mm: float) -> tuple[Array, Array]:
+        """Closures and pressures, followed to the state at rest where that lies beyond them."""
+        closure, pressure = self.closure_mm, self.pressure_mpa
+        if rest_closure_mm > closure[-1]:
+            closure = np.append(closure, rest_closure_mm)
+            pressure = np.append(pressure, self.rest_pressure_mpa)
+        return closure, pressure
 
 
 @dataclass(frozen=True, slots=True)
@@ -118,6 +132,14 @@ class CaseCurves:
     support: ReactionOfClass
     lining: tuple[ThrustAndMoment, ...] = ()
     """Of each ring of a class whose lining is checked for thrust and moment."""
+    before: ReactionOfGround | None = None
+    """Of a class that changes the ground in a ring, the ground without that ring; `ground` is
+    with it, from the closure at which it is installed."""
+
+    @property
+    def alone(self) -> ReactionOfGround:
+        """The ground as no element has changed it."""
+        return self.ground if self.before is None else self.before
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,4 +1,4 @@
-"""Figures of the curves of one section, drawn by matplotlib.
+"""Figures of the curves of one section and of trade-offs, drawn by matplotlib.
 
 matplotlib is imported only by the functions that draw, so that commands start fast.
 """
@@ -12,6 +12,7 @@ from tunnelcalc_report.closure_profile import ClosureProfileFigure
 from tunnelcalc_report.ground_reaction import GroundReactionFigure
 from tunnelcalc_report.strength import ShearStrengthFigure, StrengthEnvelopeFigure
 from tunnelcalc_report.thrust_moment import ThrustMomentFigure
+from tunnelcalc_report.trade_off import ParameterFigure
 
 
 @api.hookimpl
@@ -21,3 +22,8 @@ def tunnelcalc_register_section_figures(register: Callable[[api.SectionFigure], 
     register(ShearStrengthFigure())
     register(StrengthEnvelopeFigure())
     register(ThrustMomentFigure())
+
+
+@api.hookimpl
+def tunnelcalc_register_trade_off_figures(register: Callable[[api.TradeOffFigure], None]) -> None:
+    register(ParameterFigure())

@@ -4,22 +4,21 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from pathlib import Path
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING
 
 import numpy as np
 
 from tunnelcalc import api
 from tunnelcalc_report import page
-from tunnelcalc_report.marks import (
-    ATTENTION,
-    GREY,
-    GROUND,
-    OF_CASES,
-    OF_CLASS,
-    OF_LIMIT,
-    SUPPORT,
-    of_element,
+from tunnelcalc_report.ground_legend import (
+    cases_of,
+    critical_looks,
+    handles,
+    rest_looks,
+    turn_looks,
+    turns_of,
 )
+from tunnelcalc_report.marks import BEFORE, GREY, OF_CLASS, OF_LIMIT, few_points, of_element
 from tunnelcalc_report.page import megapascals, millimetres, number
 from tunnelcalc_report.views import (
     BELOW_ZERO,
@@ -78,9 +77,9 @@ def _facts(curves: api.SectionCurves) -> tuple[str, ...]:
 def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
     figure = page.sheet(TITLE, curves, _facts(curves))
     view, all_of_it = enlarged(curves), whole(curves)
-    handles = _handles(curves)
+    entries = handles(curves)
     notes = [*_notes(curves, view, all_of_it), *_notes_on_plastic_radius(curves)]
-    bottom, legend_top = page.bottom_above_legend(len(handles), notes)
+    bottom, legend_top = page.bottom_above_legend(len(entries), notes)
     grid = figure.add_gridspec(
         2,
         2,
@@ -96,23 +95,21 @@ def _drawn(curves: api.SectionCurves, folder: Path) -> tuple[str, ...]:
     _ground_and_support(main, curves, view)
     _whole_curve(top, curves, all_of_it, view)
     _plastic_radius(low, curves)
-    page.legend(figure, handles, legend_top)
+    page.legend(figure, entries, legend_top)
     page.note(figure, notes)
     return page.saved(figure, folder, "ground_reaction")
 
 
-def _cases(curves: api.SectionCurves) -> list[tuple[api.CaseCurves, Any]]:
-    """The governing stress case first, each with its looks."""
-    others = [case for case in curves.cases if case is not curves.governing]
-    return list(zip([curves.governing, *others], OF_CASES, strict=False))
-
-
 def _ground_and_support(axes: Axes, curves: api.SectionCurves, view: View) -> None:
-    for case, line in _cases(curves):
-        axes.plot(case.ground.closure_mm, case.ground.support_pressure_mpa, **line.looks())
+    _grounds(axes, curves)
     support = curves.governing.support
     for position, element in enumerate(support.elements):
-        axes.plot(*_line_of(element, support), **of_element(position).looks())
+        line, turns = element.line_to(support.rest_closure_mm), turns_of(element)
+        at = [one for one in few_points(line[0].size, element.marks) if one not in turns]
+        axes.plot(*line, **of_element(position).looks(), markevery=at)
+        for point, (_, marker) in turns.items():
+            place = [element.closure_mm[point]], [element.pressure_mpa[point]]
+            axes.plot(*place, **turn_looks(position, marker), zorder=4)
     if len(support.elements) > 1:
         axes.plot(support.closure_mm, support.pressure_mpa, **OF_CLASS.looks())
     axes.axvline(curves.closure_limit_mm, **OF_LIMIT.looks())
@@ -123,15 +120,12 @@ def _ground_and_support(axes: Axes, curves: api.SectionCurves, view: View) -> No
     page.label_axes(axes, CLOSURE, PRESSURE, title)
 
 
-def _line_of(
-    element: api.ReactionOfElement, support: api.ReactionOfClass
-) -> tuple[api.Array, api.Array]:
-    """The line of an element, followed to the state at rest where that lies beyond it."""
-    closure, pressure = element.closure_mm, element.pressure_mpa
-    if support.rest_closure_mm > closure[-1]:
-        closure = np.append(closure, support.rest_closure_mm)
-        pressure = np.append(pressure, element.rest_pressure_mpa)
-    return closure, pressure
+def _grounds(axes: Axes, curves: api.SectionCurves) -> None:
+    """The ground that the class meets, and thin, where the class changes it, as it was before."""
+    for (case, line), thin in zip(cases_of(curves), BEFORE, strict=False):
+        axes.plot(case.ground.closure_mm, case.ground.support_pressure_mpa, **line.looks())
+        if case.before is not None:
+            axes.plot(case.before.closure_mm, case.before.support_pressure_mpa, **thin.looks())
 
 
 def _set_pressures(axes: Axes, top: float) -> None:
@@ -145,25 +139,17 @@ def _mark_states(axes: Axes, curves: api.SectionCurves) -> None:
         if ground.critical_pressure_mpa > 0:
             at = ground.critical_pressure_mpa
             closure = np.interp(at, ground.support_pressure_mpa, ground.closure_mm)
-            axes.plot([closure], [at], **_critical())
+            axes.plot([closure], [at], **critical_looks())
         filled = case is curves.governing
-        axes.plot([support.rest_closure_mm], [support.rest_pressure_mpa], **_rest(filled), zorder=5)
-
-
-def _critical() -> dict[str, Any]:
-    return {"marker": "o", "color": GROUND, "markersize": 7, "mfc": "white", "linestyle": "none"}
-
-
-def _rest(filled: bool) -> dict[str, Any]:
-    face = SUPPORT if filled else "white"
-    return {"marker": "D", "color": SUPPORT, "markersize": 8, "mfc": face, "linestyle": "none"}
+        axes.plot(
+            [support.rest_closure_mm], [support.rest_pressure_mpa], **rest_looks(filled), zorder=5
+        )
 
 
 def _whole_curve(axes: Axes, curves: api.SectionCurves, view: View, within: View) -> None:
     from matplotlib.patches import Rectangle
 
-    for case, line in _cases(curves):
-        axes.plot(case.ground.closure_mm, case.ground.support_pressure_mpa, **line.looks())
+    _grounds(axes, curves)
     axes.axvline(curves.closure_limit_mm, **OF_LIMIT.looks())
     _mark_states(axes, curves)
     title = "whole curve"
@@ -180,13 +166,13 @@ def _whole_curve(axes: Axes, curves: api.SectionCurves, view: View, within: View
 def _plastic_radius(axes: Axes, curves: api.SectionCurves) -> None:
     """Draw it against the pressure."""
     radius, top = curves.radius_m, 0.0
-    for case, line in _cases(curves):
+    for case, line in cases_of(curves):
         ground = case.ground
         axes.plot(ground.plastic_radius_m, ground.support_pressure_mpa, **line.looks())
         top = max(top, ground.in_situ_stress_mpa)
         filled = case is curves.governing
         at_rest = case.support.rest_plastic_radius_m, case.support.rest_pressure_mpa
-        axes.plot(*([value] for value in at_rest), **_rest(filled), zorder=5)
+        axes.plot(*([value] for value in at_rest), **rest_looks(filled), zorder=5)
     right = min(_largest_plastic_m(curves), MOST_PLASTIC * radius)
     axes.set_xlim(0.95 * radius, radius + 1.08 * max(right - radius, 0.25 * radius))
     _set_pressures(axes, 1.04 * top)
@@ -215,7 +201,7 @@ def _notes_on_plastic_radius(curves: api.SectionCurves) -> list[str]:
 def _notes(curves: api.SectionCurves, view: View, all_of_it: View) -> list[str]:
     notes = []
     support = curves.governing.support
-    free = [case.ground.free_closure_mm for case in curves.cases]
+    free = [case.alone.free_closure_mm for case in curves.cases]
     if any(value != value for value in free):
         notes.append("closure without support cannot be computed")
     elif max(free) > all_of_it.right:
@@ -270,42 +256,3 @@ def _beyond_the_axes(curves: api.SectionCurves, view: View) -> list[str]:
                 f"the equilibrium of the {case.stress_case} stress is off the axes at left"
             )
     return notes
-
-
-def _handles(curves: api.SectionCurves) -> list[Any]:
-    """What the lines and marks mean, with their numbers."""
-    from matplotlib.lines import Line2D
-
-    def handle(label: str, **looks: Any) -> Any:
-        return Line2D([], [], label=label, **looks)
-
-    made = []
-    for case, line in _cases(curves):
-        ground = case.ground
-        name = f"ground, {case.stress_case} stress p0 {megapascals(ground.in_situ_stress_mpa)}"
-        made.append(handle(f"{name}: {millimetres(ground.free_closure_mm)} alone", **line.looks()))
-    pressures = [case.ground.critical_pressure_mpa for case, _ in _cases(curves)]
-    if any(value > 0 for value in pressures):
-        told = " and ".join(number(value) for value in pressures)
-        made.append(handle(f"critical pressure {told} MPa: ground yields below", **_critical()))
-    for case, _ in _cases(curves):
-        filled, support = case is curves.governing, case.support
-        rest, moved = support.rest_pressure_mpa, support.rest_closure_mm
-        state = f"{megapascals(rest)}, {millimetres(moved)}" if moved == moved else "unknown"
-        which = f", {case.stress_case} stress" if len(curves.cases) > 1 else ""
-        made.append(handle(f"equilibrium{which}: {state}", **_rest(filled)))
-    support = curves.governing.support
-    for position, element in enumerate(support.elements):
-        made.append(handle(_of_element(element), **of_element(position).looks()))
-    if len(support.elements) > 1:
-        made.append(handle("all elements together", **OF_CLASS.looks()))
-    limit = f"{millimetres(curves.closure_limit_mm)}, {number(curves.closure_limit_pct)} % of R"
-    made.append(handle(f"closure limit {limit}", **{**OF_LIMIT.looks(), "color": ATTENTION}))
-    return made
-
-
-def _of_element(element: api.ReactionOfElement) -> str:
-    return (
-        f"{element.label}: from {millimetres(element.installation_closure_mm)}, capacity "
-        f"{megapascals(element.capacity_mpa)}, at rest {megapascals(element.rest_pressure_mpa)}"
-    )

@@ -6,6 +6,7 @@ readers who see no red or green.
 
 from __future__ import annotations
 
+from collections.abc import Collection
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -45,6 +46,9 @@ class Line:
 OF_CASES = (Line(GROUND, "-", 2.2), Line(GROUND, (0, (6, 2)), 1.5))
 """The governing stress case, then the other."""
 
+BEFORE = (Line(GROUND, "-", 0.7), Line(GROUND, (0, (6, 2)), 0.7))
+"""The ground without the ring that a class improves, by stress case."""
+
 OF_CLASS = Line(SUPPORT, (0, (8, 2, 2, 2)), 2.0)
 OF_LIMIT = Line(ATTENTION, (0, (1, 2)), 1.6)
 
@@ -62,3 +66,17 @@ OF_ELEMENTS = (
 def of_element(position: int) -> Line:
     """The looks of an element by its position in the class."""
     return OF_ELEMENTS[position % len(OF_ELEMENTS)]
+
+
+OF_TURNS = ("<", ">", "p", "h")
+"""Where a line turns, in the order of its turns; a fifth begins again."""
+AT_CAPACITY = "X"
+FEW_MARKERS = 6
+
+
+def few_points(count: int, marked: Collection[int]) -> list[int]:
+    """At which points of a line its markers stand: those that are special, or of a line of which
+    only the beginning is, a few."""
+    if len(marked) > 1 or count <= FEW_MARKERS:
+        return sorted(marked) or list(range(count))
+    return list(range(0, count, -(-count // FEW_MARKERS)))

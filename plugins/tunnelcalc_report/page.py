@@ -79,17 +79,22 @@ def drawing() -> Iterator[None]:
 
 def sheet(what: str, curves: api.SectionCurves, facts: Sequence[str]) -> Figure:
     """An empty sheet: what it shows, of which project and section, and the caution."""
-    from matplotlib.figure import Figure
-
-    figure = Figure(figsize=(WIDTH_IN, HEIGHT_IN), facecolor="white")
     # Where chainages are not metres along the axis, say which of them these are.
     plain = curves.chainage == f"{curves.chainage_m:.2f}"
     ends = f"{metres(curves.from_m)} to {metres(curves.to_m)} m"
     place = f"{curves.chainage} ({'section' if plain else 'axis'} {ends})"
     place = f"{place}, {curves.ground_unit}" if curves.ground_unit else place
-    head = shortened(f"{what} at {place}", LONGEST_TITLE)
+    return headed(f"{what} at {place}", curves.title, facts)
+
+
+def headed(head: str, title: str, facts: Sequence[str]) -> Figure:
+    """An empty sheet with its head, the project's title, facts and the caution."""
+    from matplotlib.figure import Figure
+
+    figure = Figure(figsize=(WIDTH_IN, HEIGHT_IN), facecolor="white")
+    head = shortened(head, LONGEST_TITLE)
     figure.text(LEFT, 0.962, head, fontsize=13, fontweight="bold", va="center")
-    figure.text(LEFT, 0.932, shortened(curves.title, LONGEST_PROJECT), fontsize=9, va="center")
+    figure.text(LEFT, 0.932, shortened(title, LONGEST_PROJECT), fontsize=9, va="center")
     line = shortened("; ".join(facts), LONGEST_FACTS)
     figure.text(LEFT, 0.908, line, fontsize=8, va="center", color=GREY)
     figure.text(LEFT, 0.022, api.LIMITS[0], fontsize=7, va="center", color=GREY)

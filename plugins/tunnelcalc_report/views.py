@@ -33,7 +33,7 @@ class View:
 
 def whole(curves: api.SectionCurves) -> View:
     """All of the ground reaction, or what can be read of it."""
-    free = _finite(case.ground.free_closure_mm for case in curves.cases)
+    free = _finite(case.alone.free_closure_mm for case in curves.cases)
     rest = _finite(case.support.rest_closure_mm for case in curves.cases)
     top = max(_finite(case.ground.in_situ_stress_mpa for case in curves.cases), default=1.0)
     most = MOST_OF_LIMIT * max([*rest, curves.closure_limit_mm])

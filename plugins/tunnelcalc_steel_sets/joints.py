@@ -66,6 +66,11 @@ class SlidingSets:
         yields = pressure >= self.ceiling_mpa
         return np.where(yields, self.ceiling_mpa, pressure), np.where(yields, 0, slope)
 
+    def turns_m(self) -> dict[str, Array]:
+        """Movements (n,) since the sets act at which their joints begin to slide, and lock. [m]"""
+        slides = self.slip_mpa / self.stiffness_mpa_per_m
+        return {"joints_slide": slides, "joints_lock": slides + self.joints.slip_closure_m}
+
 
 def joints_of(element: api.Element) -> Joints | None:
     """The joints of an element; None where they are rigid."""

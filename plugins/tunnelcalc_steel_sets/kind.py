@@ -186,7 +186,7 @@ def ring_reaction(
     ceiling = capacity_mpa if yields else np.full(radius_m.shape, np.inf)
     slip = joints.slip_pressure_mpa(radius_m)
     sets = SlidingSets(joints, stiffness_mpa_per_m, slip, ceiling)
-    return api.PressureOfClosure(sets, capacity_mpa)
+    return api.PressureOfClosure(sets, capacity_mpa, turns=sets.turns_m())
 
 
 def blocks_of(element: api.Element) -> Blocks | None:

@@ -30,7 +30,7 @@ FLOORS = (
         "schedule",
     ),
     ("sections", "support"),
-    ("project", "results", "section_curves"),
+    ("project", "results", "section_curves", "trade_off"),
     ("plugin", "pipeline", "outputs"),
     ("inputs", "api"),
     (

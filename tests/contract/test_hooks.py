@@ -136,6 +136,15 @@ def test_tunnelcalc_register_section_figures():
     )
 
 
+def test_tunnelcalc_register_trade_off_figures():
+    assert_hook(
+        "tunnelcalc_register_trade_off_figures",
+        contract.TradeOffFigure,
+        "trade_off_figure",
+        "trade_off",
+    )
+
+
 @pytest.mark.parametrize("hook", sorted(HOOKS))
 def test_every_hook_has_a_test_that_is_named_after_it(hook):
     texts = (path.read_text(encoding="utf-8") for path in (ROOT / "tests").rglob("test_*.py"))

@@ -14,6 +14,7 @@ from tunnelcalc.outputs.curve_tables import (
 )
 from tunnelcalc.outputs.flags_table import FLAGS_HEADER
 from tunnelcalc.outputs.tables import CHECK_HEADER, CLASS_HEADER, OPTIONAL_COLUMNS, SECTION_COLUMNS
+from tunnelcalc.tune.tables import ADVICE_HEADER, TRADE_OFF_HEADER
 from tunnelcalc.vocabulary import GROUND, QUANTITIES, WORDS, Sort
 
 INTERVAL = ("chainage_m", "from_m", "to_m", "ground_unit")
@@ -30,6 +31,8 @@ OUTPUT = {
     "support_reaction.csv": SUPPORT_REACTION_HEADER,
     "thrust_moment.csv": THRUST_MOMENT_HEADER,
     "strength_envelope.csv": STRENGTH_ENVELOPE_HEADER,
+    "advice.csv": ADVICE_HEADER,
+    "trade_off.csv": TRADE_OFF_HEADER,
 }
 COLUMNS = sorted({name for header in OUTPUT.values() for name in header})
 

@@ -6,10 +6,17 @@ holds, gouge that no ring within the bounds holds.
 
 from __future__ import annotations
 
+import hashlib
+import json
 from pathlib import Path
 
 import pytest
 from end_to_end.projects import completed, files_of, rows, tunnelcalc
+from tunnelcalc_shotcrete.kind import Shotcrete
+
+from tunnelcalc.limits_statement import LIMITS
+from tunnelcalc.plugin.registry import load_plugins
+from tunnelcalc.tune.tuning import tune
 
 PROJECT = """\
 title: Invented adit
@@ -77,7 +84,7 @@ def advised(tmp_path_factory: pytest.TempPathFactory) -> Path:
 def advice(project: Path, chainage: str, parameter: str) -> dict[str, str]:
     (row,) = [
         row
-        for row in rows(project / "tuned" / "ring" / "advice.csv")
+        for row in rows(project / "tuned" / "0001" / "advice.csv")
         if (row["chainage_m"], row["parameter"]) == (chainage, parameter)
     ]
     return row
@@ -99,7 +106,7 @@ def adequate_in_a_run(folder: Path, old: str, new: str) -> str:
 def test_only_sections_that_no_class_satisfies_are_told(advised):
     found = [
         (row["chainage_m"], row["parameter"])
-        for row in rows(advised / "tuned" / "ring" / "advice.csv")
+        for row in rows(advised / "tuned" / "0001" / "advice.csv")
     ]
     assert found == [
         (SILTSTONE, "thickness_mm"),
@@ -111,7 +118,7 @@ def test_only_sections_that_no_class_satisfies_are_told(advised):
 
 def test_the_advice_says_what_was_varied_and_what_holds_now(advised):
     told = advice(advised, SILTSTONE, "thickness_mm")
-    assert {name: told[name] for name in list(told)[1:9]} == {
+    assert {name: told[name] for name in list(told)[1:11]} == {
         "ground_unit": "siltstone",
         "support_class": "ring",
         "element": "shotcrete",
@@ -120,6 +127,8 @@ def test_the_advice_says_what_was_varied_and_what_holds_now(advised):
         "value_now": "60",
         "lowest_tried": "40",
         "highest_tried": "400",
+        "words_tried": "",
+        "held": "",
     }
     told = advice(advised, SILTSTONE, "installed_at_m")
     assert (told["element"], told["unit"], told["value_now"]) == ("", "m", "2")
@@ -157,14 +166,14 @@ def test_where_nothing_helps_none_in_range_is_told(advised, parameter):
     assert told["verdict"] == "none in range"
     tried = [
         row["adequate"]
-        for row in rows(advised / "tuned" / "ring" / "trade_off.csv")
+        for row in rows(advised / "tuned" / "0001" / "trade_off.csv")
         if (row["chainage_m"], row["parameter"]) == (GOUGE, parameter)
     ]
     assert set(tried) == {"no"}
 
 
 def test_the_trade_off_agrees_with_the_advice(advised):
-    trade_off = rows(advised / "tuned" / "ring" / "trade_off.csv")
+    trade_off = rows(advised / "tuned" / "0001" / "trade_off.csv")
     tried = [
         row
         for row in trade_off
@@ -192,7 +201,7 @@ def test_the_screen_shows_both_and_where_the_tables_are(tmp_path):
     assert words[4:] == ["400", "mm"]
     assert gouge.split()[:2] == ["25.0", "gouge"]
     assert "none in" in gouge
-    assert printed.splitlines()[-1] == f"written: {project / 'tuned' / 'ring'}"
+    assert printed.splitlines()[-1] == f"written: {project / 'tuned' / '0001'}"
 
 
 def test_another_class_and_another_folder_may_be_named(tmp_path):
@@ -201,7 +210,13 @@ def test_another_class_and_another_folder_may_be_named(tmp_path):
     vary = "rock_bolts.capacity_kn=150:400"
     tuned(project, "--vary", vary, "--class", "bolts", "--out", str(out))
     assert {row["support_class"] for row in rows(out / "advice.csv")} == {"bolts"}
-    assert sorted(path.name for path in out.iterdir()) == ["advice.csv", "trade_off.csv"]
+    assert sorted(path.name for path in out.iterdir()) == [
+        "advice.csv",
+        "trade_off.csv",
+        "trade_off_rock_bolts_capacity_kn.png",
+        "trade_off_rock_bolts_capacity_kn.svg",
+        "tune.json",
+    ]
     assert not (project / "tuned").exists()
 
 
@@ -210,17 +225,24 @@ def test_where_every_section_has_a_class_there_is_nothing_to_tune(tmp_path):
     project = write(tmp_path / "project", ground=f"{head}\n{sandstone}\n")
     printed = tuned(project, "--vary", THICKNESS)
     assert "every section has an adequate class: there is nothing to tune" in printed
-    assert rows(project / "tuned" / "ring" / "advice.csv") == []
-    assert rows(project / "tuned" / "ring" / "trade_off.csv") == []
+    assert rows(project / "tuned" / "0001" / "advice.csv") == []
+    assert rows(project / "tuned" / "0001" / "trade_off.csv") == []
 
 
 RANGE = ("ELEMENT.PARAMETER=LOW:HIGH", "write two numbers, the lower first")
-PARAMETERS = "installed_at_m, thickness_mm, strength_mpa, modulus_gpa, poisson_ratio"
+PARAMETERS = ", ".join(
+    ["installed_at_m", *(parameter.name for parameter in Shotcrete().parameters)]
+)
 OF_CLASS = "installed_at_m, advance_m_per_day"
 THICK = "a number at least 10, at most 2000, in mm"
 WITHIN = "keep the bounds within the allowed range"
 REFUSED = {
-    "no-range": ("shotcrete.thickness_mm", "range", *RANGE),
+    "no-range": (
+        "shotcrete.thickness_mm",
+        "value",
+        "ELEMENT.PARAMETER=LOW:HIGH, or WORD,WORD",
+        "write = and the values after the name",
+    ),
     "one-number": ("shotcrete.thickness_mm=40", "range", *RANGE),
     "three-numbers": ("shotcrete.thickness_mm=40:60:80", "range", *RANGE),
     "no-number": ("shotcrete.thickness_mm=thin:thick", "range", *RANGE),
@@ -249,7 +271,12 @@ REFUSED = {
         PARAMETERS,
         "thickness_mm",
     ),
-    "choice": ("shotcrete.reinforcement=1:2", "parameter", PARAMETERS, "name one of them"),
+    "no-word": (
+        "shotcrete.reinforcement=1:2",
+        "word",
+        "not_declared or none or mesh or fibre",
+        "name one of them",
+    ),
     "parameter-of-no-element": ("thickness_mm=40:400", "parameter", OF_CLASS, "name one of them"),
     "no-name": ("=1:2", "parameter", OF_CLASS, "name one of them"),
 }
@@ -279,9 +306,41 @@ def test_without_anything_to_vary_the_usage_is_told(advised):
     assert "--vary" in ended.stderr.splitlines()[-1]
 
 
-def test_advice_that_is_there_is_not_overwritten(advised):
+def test_a_second_tune_has_a_folder_of_its_own_and_the_same_advice(tmp_path):
+    project, registry = write(tmp_path / "project"), load_plugins()
+    first, second = (tune(project, registry, ["shotcrete.strength_mpa=20:40"]) for _ in range(2))
+    assert [one.folder for one in (first, second)] == [
+        project / "tuned" / "0001",
+        project / "tuned" / "0002",
+    ]
+    assert sorted(path.name for path in (project / "tuned").iterdir()) == ["0001", "0002"]
+    names = sorted(path.name for path in first.folder.iterdir())
+    assert names == sorted(path.name for path in second.folder.iterdir())
+    for name in names:
+        if name != "tune.json":  # which holds the time
+            assert (first.folder / name).read_bytes() == (second.folder / name).read_bytes()
+
+
+def test_a_named_folder_that_holds_something_is_not_overwritten(advised):
     before = files_of(advised)
-    ended = tunnelcalc("tune", advised, "--vary", THICKNESS, folder=advised)
+    ended = tunnelcalc("tune", advised, "--vary", THICKNESS, "--out", "tuned", folder=advised)
     assert (ended.returncode, ended.stdout) == (2, "")
     assert ended.stderr.endswith("1 problem found\n")
     assert files_of(advised) == before
+
+
+def test_the_record_says_what_was_asked_of_what(advised):
+    record = json.loads((advised / "tuned" / "0001" / "tune.json").read_text())
+    assert record["options"] == {"class": "ring", "vary": [THICKNESS, DISTANCE], "set": []}
+    assert record["sections_without_adequate_class"] == 2
+    assert record["not_evaluated"] == []
+    hashes = {
+        part: {one["path"]: one["sha256"] for one in record[part]} for part in ("inputs", "outputs")
+    }
+    for part, folder in (("inputs", advised), ("outputs", advised / "tuned" / "0001")):
+        for name, told in hashes[part].items():
+            assert told == hashlib.sha256((folder / name).read_bytes()).hexdigest()
+    assert sorted(hashes["inputs"]) == ["ground.csv", "project.yaml"]
+    assert len(hashes["outputs"]) == 6
+    assert record["limits"] == list(LIMITS)
+    assert record["criteria"]["factor_of_safety"] == 1.5

@@ -49,7 +49,7 @@ def _print(shown: Shown) -> None:
         numbers = (
             ground.in_situ_stress_mpa,
             ground.critical_pressure_mpa,
-            ground.free_closure_mm,
+            case.alone.free_closure_mm,
             support.rest_pressure_mpa,
             support.rest_closure_mm,
             of.closure_limit_mm,

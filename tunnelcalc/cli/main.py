@@ -96,9 +96,19 @@ def build_parser() -> argparse.ArgumentParser:
         "--vary",
         action="append",
         required=True,
-        metavar="ELEMENT.PARAMETER=LOW:HIGH",
-        help="a parameter and its bounds, as shotcrete.thickness_mm=150:500; installed_at_m=0.5:8 "
-        "moves the whole class; may be given several times",
+        metavar="ELEMENT.PARAMETER=VALUES",
+        help="a parameter with its bounds, as shotcrete.thickness_mm=150:500, or with words, as "
+        "steel_sets.joints=rigid,sliding; installed_at_m=0.5:8 moves the whole class; may be given "
+        "several times, each is varied by itself",
+    )
+    tune.add_argument(
+        "--set",
+        dest="held",
+        action="append",
+        default=[],
+        metavar="ELEMENT.PARAMETER=VALUE",
+        help="a change that holds while others are varied, as steel_sets.joint_count=3; what a "
+        "word needs is stated so; may be given several times",
     )
     tune.add_argument(
         "--class", dest="class_name", metavar="NAME", help="the class; without it the heaviest"
@@ -244,7 +254,9 @@ def _command(options: argparse.Namespace, report: Report) -> ExitCode:
     if options.command == "tune":
         from tunnelcalc.cli.tune_command import advise
 
-        return advise(options.project, options.vary, options.class_name, options.out, files)
+        return advise(
+            *(options.project, options.vary, options.held, options.class_name, options.out, files)
+        )
     if options.command == "curves":
         from tunnelcalc.cli.curves_command import curves
 

@@ -57,7 +57,7 @@ def _details(offer: Offer) -> list[str]:
         return [line.meaning, f"{line.quantity}: {line.threshold} ({line.origin})"]
     if offer.sort == "ground_reader":
         return [f"files ending in {', '.join(thing.suffixes)}"]
-    if offer.sort in ("report_writer", "section_figure"):
+    if offer.sort in ("report_writer", "section_figure", "trade_off_figure"):
         return []
     return [thing.source]
 

@@ -8,7 +8,8 @@ from pathlib import Path
 from tunnelcalc.cli.screen import console, metres, rounded, row, table
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.plugin.registry import load_plugins
-from tunnelcalc.tune import Tuned, tune
+from tunnelcalc.tune.advice import Advice
+from tunnelcalc.tune.tuning import Tuned, tune
 
 MOST_ROWS = 40
 
@@ -16,13 +17,14 @@ MOST_ROWS = 40
 def advise(
     project: Path,
     vary: Sequence[str],
+    held: Sequence[str],
     class_name: str | None,
     out: Path | None,
     plugin_files: Sequence[Path] = (),
 ) -> ExitCode:
     """Vary, write the advice, and show its head."""
     registry = load_plugins(files=plugin_files)
-    tuned = tune(project, registry, vary, class_name=class_name, out=out)
+    tuned = tune(project, registry, vary, held, class_name=class_name, out=out)
     _show(tuned)
     return tuned.exit_code
 
@@ -32,6 +34,8 @@ def _show(tuned: Tuned) -> None:
     screen.print(tuned.project.title, style="bold")
     if not tuned.advice:
         screen.print("every section has an adequate class: there is nothing to tune")
+    if tuned.held:
+        screen.print(f"with {', '.join(tuned.held)}", soft_wrap=True)
     made = table(
         f"What would make class {tuned.support_class} adequate, one change at a time",
         "at m",
@@ -43,16 +47,13 @@ def _show(tuned: Tuned) -> None:
         right=("at m", "from", "to"),
     )
     for one in tuned.advice[:MOST_ROWS]:
-        variation = one.variation
-        name = f"{variation.element}.{variation.parameter}".lstrip(".")
-        ends = [rounded(one.adequate_from, 4), rounded(one.adequate_to, 4)]
         made.add_row(
             *row(
                 metres(float(tuned.sections["chainage_m"][one.position])),
                 str(tuned.sections["ground_unit"][one.position]),
-                name,
-                *(ends if one.helps else ["none in", "range"]),
-                variation.unit,
+                one.trade_off.name,
+                *_ends(one),
+                one.trade_off.unit,
             )
         )
     if tuned.advice:
@@ -63,4 +64,14 @@ def _show(tuned: Tuned) -> None:
         "One parameter is changed at a time, by calculation alone: whether it can be built, and "
         "what else it changes, is for the engineer to judge."
     )
+    for what, reason in tuned.missing:
+        screen.print(f"not evaluated: {what}: {reason}", style="bold")
     screen.print(f"written: {tuned.folder}", soft_wrap=True)
+
+
+def _ends(advice: Advice) -> tuple[str, str]:
+    if advice.words:
+        return " or ".join(advice.words), ""
+    if advice.helps:
+        return rounded(advice.adequate_from, 4), rounded(advice.adequate_to, 4)
+    return ("no", "word") if advice.trade_off.of_words else ("none in", "range")

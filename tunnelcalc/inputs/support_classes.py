@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import math
 from collections import Counter
+from collections.abc import Iterator, Sequence
 from types import MappingProxyType
+from typing import NamedTuple
 
 from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.contract import Parameter, SupportKind
@@ -39,9 +41,9 @@ def read_support_classes(
         installed = entry.number("installed_at_m", INSTALLED_AT, "m", required=False)
         rate = entry.number("advance_m_per_day", ADVANCE, "m/day", required=False)
         elements = _elements(entry, registry, plugins, installed, smallest_radius_m)
-        _one_ring(entry, registry, elements)
-        if not entry.has("advance_m_per_day"):
-            _ask_for_advance(entry, registry, elements)
+        stated = math.inf if entry.has("advance_m_per_day") else math.nan  # wrongly: told already
+        for fault in class_faults(elements, stated, registry):
+            entry.complain(fault.key, fault.message, allowed=fault.allowed, fix=fault.fix)
         entry.finish()
         if name is not None:
             rate = math.nan if rate is None else rate
@@ -49,34 +51,38 @@ def read_support_classes(
     return tuple(classes)
 
 
-def _one_ring(entry: Reader, registry: Registry, elements: list[Element]) -> None:
-    """Rings of changed ground at different distances have no solution here."""
-    rings = [
-        element.label
-        for element in elements
-        if registry.support_kind(element.kind).reaction_form(element) == GroundRing.form
-    ]
+class ClassFault(NamedTuple):
+    """What is wrong with the elements of a class together."""
+
+    key: str
+    message: str
+    allowed: str
+    fix: str
+
+
+def class_faults(
+    elements: Sequence[Element], advance_m_per_day: float, registry: Registry
+) -> Iterator[ClassFault]:
+    """Rings of changed ground at different distances have no solution here; an element that ages
+    needs to know how fast the face moves on."""
+    forms = [registry.support_kind(one.kind).reaction_form(one) for one in elements]
+    labels = [one.label for one in elements]
+    rings = [label for label, form in zip(labels, forms, strict=True) if form == GroundRing.form]
     if len(rings) > 1:
-        entry.complain(
+        yield ClassFault(
             "elements",
             f"holds {' and '.join(rings)}, which each change the ground in a ring",
-            allowed="one such element a class",
-            fix="keep one of them",
+            "one such element a class",
+            "keep one of them",
         )
-
-
-def _ask_for_advance(entry: Reader, registry: Registry, elements: list[Element]) -> None:
-    """An element that ages needs to know how fast the face moves on."""
-    for element in elements:
-        form = registry.support_kind(element.kind).reaction_form(element)
-        if form == AdvanceIncrements.form:
-            entry.complain(
-                "advance_m_per_day",
-                f"is missing: {element.label} hardens while the face moves on",
-                allowed=ADVANCE.describe("m/day"),
-                fix="state the rate of advance of the class",
-            )
-            return
+    if AdvanceIncrements.form in forms and advance_m_per_day != advance_m_per_day:
+        yield ClassFault(
+            "advance_m_per_day",
+            f"is missing: {labels[forms.index(AdvanceIncrements.form)]} hardens while the face "
+            "moves on",
+            ADVANCE.describe("m/day"),
+            "state the rate of advance of the class",
+        )
 
 
 def _elements(
@@ -145,18 +151,17 @@ def _kind(item: Reader, registry: Registry) -> SupportKind | None:
 def _parameters(item: Reader, kind: SupportKind) -> dict[str, float | str]:
     values: dict[str, float | str] = {}
     for parameter in sorted(kind.parameters, key=lambda p: p.only_if is not None):
-        if parameter.only_if is not None:
+        if parameter.only_if is not None and not parameter.in_use(values):
             other, words = parameter.only_if
-            if values.get(other) not in words:
-                if item.has(parameter.name) and (other in values or not item.has(other)):
-                    chosen = f"with {other}: {values[other]}" if other in values else f"so: {other}"
-                    item.complain(
-                        parameter.name,
-                        f"has no use {chosen}" + ("" if other in values else " is not stated"),
-                        fix=f"remove it, or write {other}: {' or '.join(words)}",
-                    )
-                item.known[parameter.name] = None
-                continue
+            if item.has(parameter.name) and (other in values or not item.has(other)):
+                chosen = f"with {other}: {values[other]}" if other in values else f"so: {other}"
+                item.complain(
+                    parameter.name,
+                    f"has no use {chosen}" + ("" if other in values else " is not stated"),
+                    fix=f"remove it, or write {other}: {' or '.join(words)}",
+                )
+            item.known[parameter.name] = None
+            continue
         value = parameter_value(item, parameter)
         if value is not None:
             values[parameter.name] = value

@@ -11,15 +11,19 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.outputs.cells import number_text, number_texts, write_table
 from tunnelcalc.pipeline.plan import WHOLE_CLASS
 from tunnelcalc.section_curves import (
+    CAPACITY,
+    INSTALLED,
     CaseCurves,
     ReactionOfClass,
     ReactionOfElement,
+    ReactionOfGround,
     SectionCurves,
     StrengthEnvelope,
 )
 
 GROUND_REACTION_HEADER = (
     "stress_case",
+    "improved_ring",
     "support_pressure_mpa",
     "supported_closure_mm",
     "supported_closure_pct",
@@ -63,8 +67,7 @@ THRUST_MOMENT_HEADER = (
     "lining_moment_mnm_per_m",
     "point",
 )
-FACE, INSTALLED = "face", "installed"
-REST, CAPACITY, BEYOND = "equilibrium", "capacity", "beyond_capacity"
+FACE, REST = "face", "equilibrium"
 UNSUPPORTED, CRITICAL, IN_SITU = "unsupported", "critical", "in_situ"
 OTHER = ""
 
@@ -96,19 +99,28 @@ def _each_case(curves: SectionCurves, rows_of: RowsOf) -> Rows:
 
 
 def _ground_rows(case: CaseCurves, radius_m: float) -> Iterator[Sequence[str]]:
-    ground = case.ground
-    special = (
-        (0.0, UNSUPPORTED),
-        (ground.critical_pressure_mpa, CRITICAL),
-        (case.support.rest_pressure_mpa, REST),
-        (ground.in_situ_stress_mpa, IN_SITU),
-    )
+    """The ground that the class meets; then, where the class changes it, the ground before."""
+    rest = (case.support.rest_pressure_mpa, REST)
+    alone = (0.0, UNSUPPORTED)
+    if case.before is None:
+        yield from _curve_rows(case.ground, radius_m, "no", alone, rest)
+    else:
+        yield from _curve_rows(case.ground, radius_m, "yes", rest)
+        yield from _curve_rows(case.before, radius_m, "no", alone)
+
+
+def _curve_rows(
+    ground: ReactionOfGround, radius_m: float, improved: str, *own: tuple[float, str]
+) -> Iterator[Sequence[str]]:
+    critical, in_situ = ground.critical_pressure_mpa, ground.in_situ_stress_mpa
+    special = (*own, (critical, CRITICAL), (in_situ, IN_SITU))
     if not np.any(np.isfinite(ground.closure_mm)):
         return
     pct = ground.closure_mm / radius_m / 10
     columns = (ground.support_pressure_mpa, ground.closure_mm, pct, ground.plastic_radius_m)
     points = _points(ground.support_pressure_mpa, special)
-    yield from zip(*(number_texts(column) for column in columns), points, strict=True)
+    names = [improved] * len(points)
+    yield from zip(names, *(number_texts(column) for column in columns), points, strict=True)
 
 
 def _points(values: Array, special: Sequence[tuple[float, str]]) -> list[str]:
@@ -139,13 +151,10 @@ def _support_rows(case: CaseCurves, radius_m: float) -> Iterator[Sequence[str]]:
 
 
 def _element_rows(element: ReactionOfElement, rest_closure_mm: float) -> Iterator[Sequence[str]]:
-    points = list(zip(element.closure_mm.tolist(), element.pressure_mpa.tolist(), strict=True))
-    # Of a spring three points are told; any other line begins where the element acts.
-    first = (INSTALLED, CAPACITY, BEYOND) if len(points) == 3 else (INSTALLED,)
-    names = [*first, *[""] * (len(points) - len(first))]
+    points = zip(element.closure_mm.tolist(), element.pressure_mpa.tolist(), strict=True)
     rows = [
-        (closure, pressure, name)
-        for (closure, pressure), name in zip(points, names, strict=True)
+        (closure, pressure, element.marks.get(position, OTHER))
+        for position, (closure, pressure) in enumerate(points)
         if closure == closure
     ]
     if rest_closure_mm == rest_closure_mm and element.rest_pressure_mpa >= 0:

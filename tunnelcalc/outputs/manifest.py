@@ -1,4 +1,4 @@
-"""`run.json`, written last: what was run, on what, with what, and what came out."""
+"""The record of a folder, written last: what was run, on what, with what, and what came out."""
 
 from __future__ import annotations
 
@@ -17,6 +17,7 @@ import tunnelcalc
 from tunnelcalc.limits_statement import LIMITS
 from tunnelcalc.outputs.run_folder import MANIFEST, write_bytes
 from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import Project
 from tunnelcalc.results import RunResult
 from tunnelcalc.validity import FlagSettings
 
@@ -34,18 +35,10 @@ def write_manifest(
 ) -> None:
     """Write `run.json` into a folder in which every other file of the run stands."""
     project = result.project
-    manifest = {
-        "program": {"name": "tunnelcalc", "version": tunnelcalc.__version__},
-        "environment": {"python": platform.python_version(), "numpy": np.__version__},
-        "plugins": [asdict(source) for source in sorted(registry.sources, key=str)],
-        "title": project.title,
-        "started": started.isoformat(timespec="seconds"),
+    what = {
         "finished": finished.isoformat(timespec="seconds"),
         "exit_code": exit_code,
         "options": dict(options),
-        "methods": dict(result.methods),
-        "drainage": project.drainage or "not stated",
-        "criteria": asdict(project.criteria),
         "schedule": asdict(project.schedule),
         "counts": {
             "sections": result.sections.count,
@@ -60,15 +53,40 @@ def write_manifest(
         "gaps": [asdict(gap) for gap in project.gaps],
         "warnings": list(result.warnings),
         "not_evaluated": [asdict(incident) for incident in result.incidents],
+    }
+    write_record(folder, MANIFEST, project, registry, result.methods, started, what)
+
+
+def write_record(
+    folder: Path,
+    name: str,
+    project: Project,
+    registry: Registry,
+    methods: Mapping[str, str],
+    started: datetime,
+    what: Mapping[str, Any],
+) -> None:
+    """Write a record into a folder in which every other file stands: versions and project, then
+    `what` is its own, then inputs and outputs with their hashes, and the statement of limits."""
+    record = {
+        "program": {"name": "tunnelcalc", "version": tunnelcalc.__version__},
+        "environment": {"python": platform.python_version(), "numpy": np.__version__},
+        "plugins": [asdict(source) for source in sorted(registry.sources, key=str)],
+        "title": project.title,
+        "started": started.isoformat(timespec="seconds"),
+        "methods": dict(methods),
+        "drainage": project.drainage or "not stated",
+        "criteria": asdict(project.criteria),
+        **what,
         "inputs": [
             {"path": file.path, "sha256": hashlib.sha256(file.content).hexdigest()}
             for file in project.files
         ],
-        "outputs": list(_hashed(folder)),
+        "outputs": list(_hashed(folder, name)),
         "limits": list(LIMITS),
     }
-    text = json.dumps(manifest, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
-    write_bytes(folder / MANIFEST, text.encode())
+    text = json.dumps(record, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+    write_bytes(folder / name, text.encode())
 
 
 def _flag_settings(settings: FlagSettings) -> dict[str, Any]:
@@ -89,9 +107,9 @@ def _flag_settings(settings: FlagSettings) -> dict[str, Any]:
     }
 
 
-def _hashed(folder: Path) -> Iterable[dict[str, str]]:
+def _hashed(folder: Path, record: str) -> Iterable[dict[str, str]]:
     for path in sorted(folder.rglob("*")):
-        if path.is_file() and path != folder / MANIFEST:
+        if path.is_file() and path != folder / record:
             digest = hashlib.sha256()
             with path.open("rb") as stream:
                 while block := stream.read(HASH_BLOCK):

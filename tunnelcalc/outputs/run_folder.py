@@ -23,12 +23,14 @@ PART_SUFFIX = ".part"
 class Target:
     """Where a run goes: a numbered folder of the project, or one that the user named.
 
-    `by_option` is False where the program chose the folder `out` and not the user.
+    `by_option` is False where the program chose the folder `out` and not the user; `numbered` is
+    the project's folder in which those without a name are counted.
     """
 
     project_folder: Path
     out: Path | None
     by_option: bool = True
+    numbered: str = RUNS
 
     def __post_init__(self) -> None:
         if self.out is not None:
@@ -36,7 +38,7 @@ class Target:
 
     @property
     def parent(self) -> Path:
-        return self.project_folder / RUNS if self.out is None else self.out.parent
+        return self.project_folder / self.numbered if self.out is None else self.out.parent
 
     def check(self) -> None:
         """Raise InputError unless the folder is absent or empty."""

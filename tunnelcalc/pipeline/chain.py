@@ -49,6 +49,11 @@ def section_stages(
     project: Project, registry: Registry, plan: Sequence[PlannedClass]
 ) -> tuple[Stage, ...]:
     """The stages that look at each section by itself, with the project's methods."""
+    return (*ground_alone_stages(project, registry), *class_stages(project, registry, plan))
+
+
+def ground_alone_stages(project: Project, registry: Registry) -> tuple[Stage, ...]:
+    """What every section needs before any support class is looked at."""
     steps = chosen_steps(project, registry)
     has_ring = any(knows_ring(method) for method in steps.ground_reaction.methods)
     laws = (steps.strength, steps.deformation_modulus, steps.ground_reaction)
@@ -62,9 +67,15 @@ def section_stages(
         *ring,
         hazard_stage(),
         ground_reaction_stage(steps.ground_reaction),
-        support_stage(plan, steps, project.criteria),
-        choice_stage(),
     )
+
+
+def class_stages(
+    project: Project, registry: Registry, plan: Sequence[PlannedClass]
+) -> tuple[Stage, ...]:
+    """The support classes on every section, and which of them it requires."""
+    steps = chosen_steps(project, registry)
+    return (support_stage(plan, steps, project.criteria), choice_stage())
 
 
 def build_stages(

@@ -84,9 +84,10 @@ class Evaluated:
     """A class and its checks; `rest` and `responses` are the state at rest that they follow from.
 
     `installed_m` (e, n) is the unsupported closure where each element is installed, `acting_m`
-    (e, n) that where it begins to act.
+    (e, n) that where it begins to act. `ground` is as the class meets it, with its ring.
     """
 
+    ground: GroundCurve
     row: ClassRow
     checks: tuple[CheckRow, ...]
     rest: RestingState
@@ -165,7 +166,9 @@ def evaluate_class(
         missing_pressure_mpa(responses, credited, sections, acting, needed_mpa, criteria),
         class_capacities(planned, responses, credited)["class_capacity_mpa"],
     )
-    return Evaluated(row, tuple(checks), rest, responses, installed, acting, credited)
+    return Evaluated(
+        *(ground.curve, row, tuple(checks), rest, responses, installed, acting, credited)
+    )
 
 
 def _closure_at_m(

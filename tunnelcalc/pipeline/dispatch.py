@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from typing import Generic, TypeVar
 
@@ -19,7 +19,7 @@ from tunnelcalc.plugin.contract import (
     StrengthMethod,
 )
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Project, method_column
+from tunnelcalc.project import MethodChoice, Project, method_column
 from tunnelcalc.sections import Sections
 
 M = TypeVar("M", bound=Method)
@@ -107,3 +107,19 @@ def chosen_steps(project: Project, registry: Registry) -> ChosenSteps:
         ground_reaction=of("ground_reaction"),  # type: ignore[arg-type]
         closure_profile=of("closure_profile"),  # type: ignore[arg-type]
     )
+
+
+def method_sources(project: Project, registry: Registry) -> Mapping[str, str]:
+    """The methods of every step, each with its source."""
+    return {
+        step: "; ".join(_described(registry, step, choice, name) for name in choice.names)
+        for step, choice in project.methods.items()
+    }
+
+
+def _described(registry: Registry, step: str, choice: MethodChoice, name: str) -> str:
+    """A method with its source, and the ground units that it is for where they are named."""
+    units = [unit for unit, method in choice.by_unit.items() if method == name]
+    others = ["all other ground"] if len(choice.names) > 1 and name == choice.names[0] else []
+    where = f" ({', '.join((*units, *others))})" if units or others else ""
+    return f"{name}{where}: {registry.method(step, name).source}"

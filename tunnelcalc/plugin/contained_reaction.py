@@ -160,6 +160,7 @@ def _spread(reaction: Reaction, rows: Array, count: int) -> Reaction:
             reaction,
             pressure_and_slope=spread_function(reaction.pressure_and_slope),
             capacity_mpa=spread(reaction.capacity_mpa),
+            turns={name: spread(values) for name, values in reaction.turns.items()},
         )
     if isinstance(reaction, AdvanceIncrements):
         return replace(

@@ -25,6 +25,7 @@ from tunnelcalc.section_curves import SectionCurves, ThrustAndMoment
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.reaction import Reaction
 from tunnelcalc.support.ring_section import RingSection
+from tunnelcalc.trade_off import TradeOff
 from tunnelcalc.validity import Threshold
 from tunnelcalc.vocabulary import UNLIMITED, Limits, Sort
 
@@ -52,6 +53,10 @@ class Parameter:
     @property
     def sort(self) -> Sort:
         return Sort.CHOICE if self.choices else Sort.NUMBER
+
+    def in_use(self, values: Mapping[str, float | str]) -> bool:
+        """Whether an element with these values, words first, has a use for it."""
+        return self.only_if is None or values.get(self.only_if[0]) in self.only_if[1]
 
     def allowed(self) -> str:
         """The allowed values in words."""
@@ -422,3 +427,14 @@ class SectionFigure(Protocol):
         """Write into `folder`; returns the names of the files written: none, or a sheet that
         says so, where the curves that it draws are not known. The same curves give the same
         bytes."""
+
+
+class TradeOffFigure(Protocol):
+    """Draws what a parameter of a class does, for `tunnelcalc tune`."""
+
+    @property
+    def name(self) -> str: ...
+
+    def draw(self, trade_off: TradeOff, folder: Path) -> Iterable[str]:
+        """Write into `folder` files that begin with `trade_off.file_name`; returns their names.
+        The same trade-off gives the same bytes."""

@@ -24,6 +24,7 @@ from tunnelcalc.plugin.contract import (
     StrengthMethod,
     SupportCheck,
     SupportKind,
+    TradeOffFigure,
     ValidityFlag,
 )
 from tunnelcalc.verification import VerificationCheck
@@ -118,6 +119,15 @@ def tunnelcalc_register_report_writers(register: Callable[[ReportWriter], None])
 @hookspec
 def tunnelcalc_register_section_figures(register: Callable[[SectionFigure], None]) -> None:
     """Offer figures of the curves of one section, for `tunnelcalc curves`.
+
+    The figures of this distribution are always drawn; those of another where the project names
+    the plugin under `plugins:`.
+    """
+
+
+@hookspec
+def tunnelcalc_register_trade_off_figures(register: Callable[[TradeOffFigure], None]) -> None:
+    """Offer figures of what a parameter of a class does, for `tunnelcalc tune`.
 
     The figures of this distribution are always drawn; those of another where the project names
     the plugin under `plugins:`.

@@ -20,6 +20,7 @@ from tunnelcalc.plugin.contract import (
     SectionFigure,
     SupportCheck,
     SupportKind,
+    TradeOffFigure,
     ValidityFlag,
 )
 from tunnelcalc.plugin.files import HashedFile, files_of, load_file, refusal
@@ -41,6 +42,7 @@ SORTS = {
     "ground_reader": "tunnelcalc_register_ground_readers",
     "report_writer": "tunnelcalc_register_report_writers",
     "section_figure": "tunnelcalc_register_section_figures",
+    "trade_off_figure": "tunnelcalc_register_trade_off_figures",
 }
 """Each sort of thing that plugins offer, and the hook that offers it."""
 
@@ -169,6 +171,9 @@ class Registry:
 
     def section_figures(self, named: Iterable[str]) -> tuple[SectionFigure, ...]:
         return tuple(offer.thing for offer in self._taking_part("section_figure", named))
+
+    def trade_off_figures(self, named: Iterable[str]) -> tuple[TradeOffFigure, ...]:
+        return tuple(offer.thing for offer in self._taking_part("trade_off_figure", named))
 
     def _taking_part(self, sort: str, named: Iterable[str]) -> Iterator[Offer]:
         """What runs follows from the project, not from what else happens to be installed."""

@@ -8,7 +8,7 @@ is further: a ring does not react before it is closed.
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from typing import ClassVar, Literal
 
 from tunnelcalc.arrays import Array
@@ -40,13 +40,15 @@ class PressureOfClosure:
 
     `pressure_and_slope(closure_m)` takes (n,) and returns pressure (n,) [MPa] and its slope
     (n,) [MPa/m]; `capacity_mpa` is the pressure at the element's limit. It is called with as
-    many closures as there are sections.
+    many closures as there are sections. `turns` names the closures (n,) at which the element
+    changes its ways, for drawings: NaN where it never does. [m]
     """
 
     form: ClassVar[str] = "pressure_of_closure"
     pressure_and_slope: Callable[[Array], tuple[Array, Array]]
     capacity_mpa: Array
     acts_from_m: float = 0.0
+    turns: Mapping[str, Array] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)

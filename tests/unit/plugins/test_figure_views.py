@@ -14,6 +14,8 @@ from tunnelcalc_report.views import enlarged, whole
 
 from tunnelcalc import api
 
+SPRING = {0: api.INSTALLED, 1: api.CAPACITY, 2: api.BEYOND}
+
 
 def curves(
     free_mm: float = 50.0, rest_mm: float = 30.0, start_mm: float = 10.0, capacity: float = 0.8
@@ -27,7 +29,7 @@ def curves(
     at = start_mm + np.array([0, 1, 1.2]) * capacity / stiffness * 1000
     pressure = np.array([0, 1, 1.2]) * capacity
     element = api.ReactionOfElement(
-        "ring", 2.0, start_mm, stiffness, capacity, 0.4, 0.0, at, pressure
+        "ring", 2.0, start_mm, stiffness, capacity, 0.4, 0.0, at, pressure, SPRING
     )
     support = api.ReactionOfClass((element,), at, pressure, 0.4, rest_mm, 6.0)
     profile = api.ClosureAlongDrive(np.zeros(1), np.zeros(1), np.zeros(1))
@@ -102,7 +104,9 @@ def element(label: str, start_mm: float, capacity: float) -> api.ReactionOfEleme
     """20 MPa/m, like the ring."""
     at = start_mm + np.array([0, 1, 1.2]) * capacity / 20 * 1000
     pressure = np.array([0, 1, 1.2]) * capacity
-    return api.ReactionOfElement(label, 2.0, start_mm, 20.0, capacity, 0.0, 0.0, at, pressure)
+    return api.ReactionOfElement(
+        label, 2.0, start_mm, 20.0, capacity, 0.0, 0.0, at, pressure, SPRING
+    )
 
 
 def test_all_that_lies_off_the_enlarged_axes_is_named():

@@ -1,0 +1,127 @@
+"""A class with some of its values changed, and what is then still missing in it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass, replace
+from types import MappingProxyType
+
+from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.plugin.registry import Registry
+from tunnelcalc.project import Element, SupportClass
+from tunnelcalc.trade_off import full_name
+
+INSTALLED, ADVANCE_RATE = "installed_at_m", "advance_m_per_day"
+Value = float | str
+
+
+@dataclass(frozen=True, slots=True)
+class Change:
+    """One value of an element, or of the class where `element` is empty; `text` as it was asked."""
+
+    element: str
+    parameter: str
+    value: Value
+    text: str
+
+    @property
+    def name(self) -> str:
+        return full_name(self.element, self.parameter)
+
+
+@dataclass(frozen=True, slots=True)
+class Variation:
+    """The values of one parameter that are tried, rising, or else its words."""
+
+    element: str
+    parameter: str
+    unit: str
+    values: tuple[Value, ...]
+    whole: bool
+    text: str
+
+    @property
+    def name(self) -> str:
+        return full_name(self.element, self.parameter)
+
+    @property
+    def of_words(self) -> bool:
+        return isinstance(self.values[0], str)
+
+    def change(self, value: Value) -> Change:
+        return Change(self.element, self.parameter, value, self.text)
+
+
+@dataclass(frozen=True, slots=True)
+class Asked:
+    """What the user varies, one at a time, and what is held meanwhile."""
+
+    variations: tuple[Variation, ...]
+    held: tuple[Change, ...]
+
+    def beside(self, variation: Variation) -> tuple[Change, ...]:
+        """What is held while a parameter varies: all but that parameter itself."""
+        return tuple(change for change in self.held if change.name != variation.name)
+
+
+def changed(
+    chosen: SupportClass, changes: Sequence[Change], registry: Registry
+) -> tuple[SupportClass, tuple[Change, ...]]:
+    """The class with the changes, and those changes that have no use in it.
+
+    What a word leaves without use goes, and a choice that comes into use unsaid has its default.
+    """
+    of_class = [change for change in changes if not change.element]
+    for change in of_class:
+        chosen = _class_changed(chosen, change)
+    elements, idle = [], []
+    for element in chosen.elements:
+        own = [change for change in changes if change.element == element.label]
+        done = _element_changed(element, own, registry.support_kind(element.kind))
+        elements.append(done)
+        idle += [c for c in own if c.parameter != INSTALLED and c.parameter not in done.values]
+    return replace(chosen, elements=tuple(elements)), tuple(idle)
+
+
+def _class_changed(chosen: SupportClass, change: Change) -> SupportClass:
+    value = float(change.value)
+    if change.parameter == ADVANCE_RATE:
+        return replace(chosen, advance_m_per_day=value)
+    shift = value - installed_first_m(chosen)
+    moved = (replace(e, installed_at_m=e.installed_at_m + shift) for e in chosen.elements)
+    return replace(chosen, elements=tuple(moved))
+
+
+def installed_first_m(chosen: SupportClass) -> float:
+    """Distance behind the face at which the first element of a class is installed. [m]"""
+    return min(element.installed_at_m for element in chosen.elements)
+
+
+def _element_changed(element: Element, changes: Iterable[Change], kind: SupportKind) -> Element:
+    values: dict[str, Value] = dict(element.values)
+    for change in changes:
+        if change.parameter == INSTALLED:
+            element = replace(element, installed_at_m=float(change.value))
+        else:
+            values[change.parameter] = change.value
+    used: dict[str, Value] = {}
+    for parameter in in_order(kind):
+        if not parameter.in_use(used):
+            continue
+        if parameter.name in values:
+            used[parameter.name] = values[parameter.name]
+        elif parameter.default:
+            used[parameter.name] = parameter.default
+    return replace(element, values=MappingProxyType(used))
+
+
+def lacking(element: Element, kind: SupportKind) -> Iterator[Parameter]:
+    """The parameters that an element needs, by its own words, and does not state."""
+    for parameter in in_order(kind):
+        if parameter.in_use(element.values) and parameter.name not in element.values:
+            yield parameter
+
+
+def in_order(kind: SupportKind) -> list[Parameter]:
+    """The parameters of a kind, those that depend on a word last."""
+    return sorted(kind.parameters, key=lambda parameter: parameter.only_if is not None)
