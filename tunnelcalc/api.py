@@ -20,9 +20,7 @@ from tunnelcalc.plugin.contract import (
     GroundReactionMethod,
     GroundReader,
     LiningCheck,
-    Misfit,
     ModulusMethod,
-    Parameter,
     ReportWriter,
     RingKind,
     SectionFigure,
@@ -36,6 +34,7 @@ from tunnelcalc.plugin.contract import (
 )
 from tunnelcalc.plugin.flag import Condition, Flag, NumberOfFlag
 from tunnelcalc.plugin.hooks import hookimpl
+from tunnelcalc.plugin.parameter import Misfit, Parameter, WordTable, source_of
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project, SupportClass
 from tunnelcalc.results import ItemTotal, RunResult, Zone
@@ -135,6 +134,7 @@ __all__ = [
     "ValidityFlag",
     "VerificationCheck",
     "Where",
+    "WordTable",
     "Working",
     "Zone",
     "decoded",
@@ -142,5 +142,6 @@ __all__ = [
     "number_text",
     "of_element",
     "one_section",
+    "source_of",
     "write_table",
 ]

@@ -114,6 +114,36 @@ def number_fix(text: str) -> str:
     return "write a plain number with a decimal point, without unit or thousands separator"
 
 
+MOST_WORDS = 15
+NEAREST = 5
+
+
+def words_near(words: Sequence[str], written: str = "") -> str:
+    """The words of a choice for a message; of very many, those nearest to what was written."""
+    if len(words) <= MOST_WORDS:
+        return " or ".join(words)
+    near = sorted(words, key=lambda word: -_likeness(written, word)) if written else [*words]
+    return " or ".join(near[:NEAREST]) + f" or one of {len(words) - NEAREST} more"
+
+
+def meant(name: str, known: Iterable[str]) -> str | None:
+    """A question with the known names that a misspelt one most likely means, equally near ones
+    all; None where none is near."""
+    nearest = suggestion(name, (known := list(known)))
+    if nearest is None:
+        return None
+    least = _likeness(name, nearest)
+    near = sorted({nearest, *(word for word in known if _likeness(name, word) >= least)})
+    listed = " or ".join(
+        ", ".join(quoted(w) for w in part) for part in (near[:-1], near[-1:]) if part
+    )
+    return f"did you mean {listed}?"
+
+
+def _likeness(one: str, other: str) -> float:
+    return difflib.SequenceMatcher(None, other.lower(), one.strip().lower()).ratio()
+
+
 def suggestion(name: str, known: Iterable[str]) -> str | None:
     """The known name that a misspelt one most likely means."""
     by_lower = {candidate.lower(): candidate for candidate in known}

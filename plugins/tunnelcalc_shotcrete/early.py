@@ -88,6 +88,12 @@ def early_misfits(element: api.Element) -> Iterable[api.Misfit]:
     asked = ordinates(element)
     first_h = law.first_age_days * HOURS_PER_DAY
     for number, ordinate in enumerate(asked, 1):
+        if any(other.age_h == ordinate.age_h for other in asked[: number - 1]):
+            yield api.Misfit(
+                age_name(number),
+                f"is {ordinate.age_h:g} h, for which a strength is required already",
+                "state each age once, or lower early_strength to as many ages as there are",
+            )
         if ordinate.age_days < law.first_age_days * (1 - 1e-12):
             yield api.Misfit(
                 age_name(number),

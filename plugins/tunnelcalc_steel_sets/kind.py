@@ -27,6 +27,7 @@ from tunnelcalc_steel_sets.parameters import (
     beyond_yield,
     joint_misfits,
 )
+from tunnelcalc_steel_sets.plausible import AREA, DEPTH, INERTIA, SECTION, section_misfits
 from tunnelcalc_steel_sets.profile import (
     M_PER_MM,
     MPA_PER_GPA,
@@ -62,24 +63,23 @@ class SteelSets:
             "memory and checked against their own area and inertia",
             choices=(OWN, *packaged_sections()),
             default=OWN,
+            words_from=api.WordTable("designation", SECTION, section_misfits),
         ),
         Parameter(
-            "section_area_mm2",
+            AREA,
             "area of the profile",
             "mm2",
             Limits(100, 1e6),
             only_if=WHEN_OWN,
         ),
         Parameter(
-            "section_inertia_mm4",
+            INERTIA,
             "second moment of area of the profile",
             "mm4",
             Limits(1e3, 1e11),
             only_if=WHEN_OWN,
         ),
-        Parameter(
-            "section_depth_mm", "depth of the profile", "mm", Limits(10, 2000), only_if=WHEN_OWN
-        ),
+        Parameter(DEPTH, "depth of the profile", "mm", Limits(10, 2000), only_if=WHEN_OWN),
         *STEEL,
         Parameter("contact", "contact with the ground", choices=(EMBEDDED, BLOCKED)),
         Parameter(
@@ -116,7 +116,8 @@ class SteelSets:
 
     def misfits(self, element: api.Element, smallest_radius_m: float) -> Iterable[api.Misfit]:
         section = section_of(element)
-        of_depth = "section_depth_mm" if "section_depth_mm" in element.values else "profile"
+        own = element.values.get("profile", OWN) == OWN
+        of_depth = DEPTH if own else "profile"
         depth = section.depth_mm * M_PER_MM
         if element.choice("contact") == BLOCKED:
             depth += element.number("block_thickness_mm") * M_PER_MM
@@ -126,15 +127,8 @@ class SteelSets:
                 f"with blocks takes {depth:g} m, more than half the radius",
                 "correct the depth and block thickness, which are in mm",
             )
-        # No profile of this depth can have more than all its area at the two faces.
-        most = section.area_mm2 * section.depth_mm**2 / 4
-        if section.inertia_mm4 > most:
-            yield api.Misfit(
-                "section_inertia_mm4",
-                f"is {section.inertia_mm4:g} mm4, more than this area and depth can have, "
-                f"{most:g} mm4",
-                "correct the units: area in mm2, depth in mm, second moment in mm4",
-            )
+        if own:
+            yield from section_misfits({name: element.number(name) for name in SECTION})
         yield from joint_misfits(element)
 
     def reaction_form(self, element: api.Element) -> str:

@@ -1,4 +1,4 @@
-"""The profile of an element: the project's own, a designation of the table, or declared bars."""
+"""The profile of an element: the project's own, a designation of its table or of ours, or bars."""
 
 from __future__ import annotations
 
@@ -8,6 +8,7 @@ from functools import cache
 from tunnelcalc import api
 from tunnelcalc_steel_sets.formulas import Profile
 from tunnelcalc_steel_sets.lattice import Bar, LatticeGirder, lattice_girder
+from tunnelcalc_steel_sets.plausible import AREA, SECTION
 from tunnelcalc_steel_sets.sections_table import SteelSection, packaged_text, read_sections
 
 M_PER_MM = 1e-3
@@ -45,14 +46,11 @@ def section_of(element: api.Element) -> SectionOfElement:
             girder.area_mm2, girder.inertia_mm4, girder.depth_mm, float("inf"), "declared bars"
         )
     designation = str(element.values.get("profile", OWN))
-    if designation == OWN:
-        return SectionOfElement(
-            element.number("section_area_mm2"),
-            element.number("section_inertia_mm4"),
-            element.number("section_depth_mm"),
-            float("inf"),
-            "project",
-        )
+    if AREA in element.values:
+        row = element.values.get(api.source_of("profile"))
+        source = "project" if row is None else f"{designation}: {row}"
+        area, inertia, depth = (element.number(name) for name in SECTION)
+        return SectionOfElement(area, inertia, depth, float("inf"), source)
     found = packaged_sections()[designation]
     return SectionOfElement(
         found.area_mm2,

@@ -71,6 +71,7 @@ def full_project(without_profiles: bool = False) -> dict[str, Any]:
                 **DEFAULT_METHODS,
                 "strength": {"default": "hoek_brown_2002", "by_unit": {"clay": "mohr_coulomb"}},
             },
+            "tables": {"steel_sets": {"profile": "profiles.csv"}},
             "plugins": [REGISTRY.sources[0].plugin],
             "support_classes": [
                 {

@@ -33,8 +33,8 @@ ALL = [
     "  allowed: a number above 0, at most 100, in %",
     "  fix: write 1.0, with a decimal point",
     'project.yaml:45:1: key "carried_m" is unknown',
-    "  allowed: title, chainage, opening, methods, plugins, criteria, ground, support_classes, "
-    "schedule, flags",
+    "  allowed: title, chainage, opening, methods, plugins, criteria, ground, tables, "
+    "support_classes, schedule, flags",
     "  fix: remove it, or correct its name",
     (
         "ground.csv:3: the interval 40 to 70 m overlaps the interval 0 to 45 m of "

@@ -27,8 +27,8 @@ CASES: dict[str, Case] = {
     "key-unknown": (
         replaced("project.yaml", "carry_m: 5\n", "carry_m: 5\ncolour: grey\n"),
         'project.yaml:45:1: key "colour" is unknown',
-        "  allowed: title, chainage, opening, methods, plugins, criteria, ground, support_classes, "
-        "schedule, flags",
+        "  allowed: title, chainage, opening, methods, plugins, criteria, ground, tables, "
+        "support_classes, schedule, flags",
         "  fix: remove it, or correct its name",
     ),
     "key-missing": (
@@ -82,7 +82,7 @@ CASES: dict[str, Case] = {
         'project.yaml:10:3: key "methods.deformation_modulus" holds "hoek_diedrichs_2006"',
         "  allowed: barton_2002 or bieniawski_1978 or hoek_2002 or hoek_diederichs_2006 or "
         "hoek_diederichs_2006_simplified or serafim_pereira_1983",
-        "  fix: write hoek_diederichs_2006",
+        '  fix: did you mean "hoek_diederichs_2006"?',
     ),
     "plugin-misspelt": (
         replaced("project.yaml", "support_classes:\n", "plugins: [shotcret]\nsupport_classes:\n"),

@@ -19,8 +19,8 @@ class CrownDeadWeight:
     name = "crown_dead_weight"
     meaning = (
         "pressure at rest, the water on a watertight lining and the weight of the plastic zone "
-        "over the crown against the capacity of all elements: Hoek & Brown (1980), Underground "
-        "Excavations in Rock"
+        "over the crown against the capacity of all elements, what hardens as at 28 days, not for "
+        "its age when the crown loosens: Hoek & Brown (1980), Underground Excavations in Rock"
     )
     unit = "MPa"
     carries_load = True

@@ -7,7 +7,7 @@ from pathlib import Path
 
 from tunnelcalc.errors import ExitCode
 from tunnelcalc.pipeline.flags_stage import screening_lines
-from tunnelcalc.plugin.contract import Parameter
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import SORTS, Offer, load_plugins
 from tunnelcalc.validity import FlagSettings
 

@@ -25,7 +25,7 @@ UNIT, MINOR, MAJOR = "ground_unit", "minor_stress_mpa", "major_stress_mpa"
 SPECIMEN, DATE = "specimen", "date"
 FROM_TESTS = ("intact_strength_mpa", "mi")
 """What follows from tests."""
-STRESSES = {MINOR: Limits(0, 1000), MAJOR: Limits(0, 3000, above=True)}
+STRESSES = {MINOR: (Limits(0, 1000), "MPa"), MAJOR: (Limits(0, 3000, above=True), "MPa")}
 
 
 @dataclass(frozen=True, slots=True)
@@ -59,7 +59,7 @@ def read_tests(reader: Reader, folder: ProjectFolder, registry: Registry) -> Tes
     if raw is None:
         return Tests({}, None)
     table = typed_columns(
-        raw, reader.problems, STRESSES, "MPa", (UNIT, SPECIMEN, DATE), required=(UNIT, *STRESSES)
+        raw, reader.problems, STRESSES, (UNIT, SPECIMEN, DATE), required=(UNIT, *STRESSES)
     )
     if not all(table.has(name) for name in (UNIT, *STRESSES)):
         return Tests({}, None)

@@ -224,8 +224,7 @@ def _table(
     table = typed_columns(
         raw,
         reader.problems,
-        dict.fromkeys(levels, LEVELS),
-        "m",
+        dict.fromkeys(levels, (LEVELS, "m")),
         texts,
         required=(CHAINAGE, *levels, *texts),
         chainages=(CHAINAGE,),

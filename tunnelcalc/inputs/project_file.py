@@ -13,13 +13,14 @@ from tunnelcalc.inputs.level_tables import read_tunnel_level
 from tunnelcalc.inputs.method_choices import read_methods
 from tunnelcalc.inputs.notation import read_notation
 from tunnelcalc.inputs.opening import read_profiles
-from tunnelcalc.inputs.support_classes import parameter_value, read_support_classes
+from tunnelcalc.inputs.support_classes import idle_values, parameter_value, read_support_classes
 from tunnelcalc.inputs.values import Reader
+from tunnelcalc.inputs.word_tables import WordTables, idle_tables, read_word_tables
 from tunnelcalc.inputs.yaml_tree import Table, parse
 from tunnelcalc.outputs.run_folder import INPUTS, MANIFEST
 from tunnelcalc.plugin.contract import ClassCheck, ClassCheckWithOptions
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Criteria, Project, ScheduleRules
+from tunnelcalc.project import Criteria, Project, ScheduleRules, SupportClass
 from tunnelcalc.text import decoded, quoted, suggestion
 from tunnelcalc.vocabulary import Limits
 
@@ -91,7 +92,8 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
         demands = class_demands(of_classes, criteria)
         ground = read_ground(ground_reader, opening, folder, registry, methods, demands)
     radius = min((p.radius_m for p in opening.profiles), default=None) if opening else None
-    classes = read_support_classes(reader, registry, plugins, radius)
+    tables = read_word_tables(reader, folder, registry)
+    classes = read_support_classes(reader, registry, plugins, radius, tables)
     schedule = _schedule(reader)
     flags = read_flag_settings(reader, registry.flags(plugins))
     if ground is not None:
@@ -120,7 +122,7 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
         tests=ground.tests,
         notation=reader.notation,
         drainage=ground.drainage,
-        warnings=_warnings(ground, registry),
+        warnings=_warnings(ground, classes, tables, registry),
         files=tuple(sorted(folder.files.values(), key=lambda file: file.path)),
         flags=flags.settings,
     )
@@ -222,5 +224,12 @@ def _schedule(reader: Reader) -> ScheduleRules | None:
     return None if minimum is None or carry is None else ScheduleRules(minimum, carry)
 
 
-def _warnings(ground: Ground, registry: Registry) -> tuple[str, ...]:
-    return (*ground.warnings, *(str(failure) for failure in registry.failures))
+def _warnings(
+    ground: Ground, classes: Sequence[SupportClass], tables: WordTables, registry: Registry
+) -> tuple[str, ...]:
+    return (
+        *ground.warnings,
+        *idle_values(classes, registry),
+        *idle_tables(tables),
+        *(str(failure) for failure in registry.failures),
+    )

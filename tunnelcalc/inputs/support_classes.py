@@ -4,12 +4,14 @@ from __future__ import annotations
 
 import math
 from collections import Counter
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from types import MappingProxyType
 from typing import NamedTuple
 
 from tunnelcalc.inputs.values import Reader
-from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.inputs.word_tables import TABLES, RowValues, Words, WordTables
+from tunnelcalc.plugin.contract import SupportKind
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.project import Element, SupportClass
 from tunnelcalc.schedule.selection import NONE_ADEQUATE_NAME
@@ -19,11 +21,16 @@ from tunnelcalc.vocabulary import Limits
 
 INSTALLED_AT = Limits(0, 10000)
 ADVANCE = Limits(0, 100, above=True)
+NO_WORDS = Words()
 RESERVED_NAMES = (NONE_ADEQUATE_NAME, "not_decided")
 
 
 def read_support_classes(
-    reader: Reader, registry: Registry, plugins: tuple[str, ...], smallest_radius_m: float | None
+    reader: Reader,
+    registry: Registry,
+    plugins: tuple[str, ...],
+    smallest_radius_m: float | None,
+    tables: WordTables,
 ) -> tuple[SupportClass, ...]:
     """The classes, lightest first. Classes with problems are left out: they are told."""
     classes: list[SupportClass] = []
@@ -40,7 +47,7 @@ def read_support_classes(
         names.add(name or "")
         installed = entry.number("installed_at_m", INSTALLED_AT, "m", required=False)
         rate = entry.number("advance_m_per_day", ADVANCE, "m/day", required=False)
-        elements = _elements(entry, registry, plugins, installed, smallest_radius_m)
+        elements = _elements(entry, registry, plugins, installed, smallest_radius_m, tables)
         stated = math.inf if entry.has("advance_m_per_day") else math.nan  # wrongly: told already
         for fault in class_faults(elements, stated, registry):
             entry.complain(fault.key, fault.message, allowed=fault.allowed, fix=fault.fix)
@@ -85,12 +92,27 @@ def class_faults(
         )
 
 
+def idle_values(classes: Sequence[SupportClass], registry: Registry) -> Iterator[str]:
+    """What a class states and nothing is computed with; a class that is nothing but a name."""
+
+    def hardens(element: Element) -> bool:
+        return registry.support_kind(element.kind).reaction_form(element) == AdvanceIncrements.form
+
+    for one in classes:
+        if not one.elements:
+            yield f"class {one.name} has no elements: it is the opening without support"
+        if not math.isnan(one.advance_m_per_day) and not any(map(hardens, one.elements)):
+            rate = f"advance_m_per_day of class {one.name}"
+            yield f"{rate} is used by nothing: no element of the class hardens"
+
+
 def _elements(
     entry: Reader,
     registry: Registry,
     plugins: tuple[str, ...],
     class_installed_m: float | None,
     smallest_radius_m: float | None,
+    tables: WordTables,
 ) -> list[Element]:
     class_states_it = entry.has("installed_at_m")  # rightly or wrongly: that is told already
     elements: list[Element] = []
@@ -108,12 +130,12 @@ def _elements(
         if kind is None:
             continue
         before = len(item.problems)
-        values = _parameters(item, kind)
+        values = _parameters(item, kind, tables)
         item.finish()
         count[kind.name] += 1
         label = kind.name if count[kind.name] == 1 else f"{kind.name}_{count[kind.name]}"
         installed = own if own is not None else class_installed_m
-        if len(item.problems) > before or installed is None:
+        if values is None or len(item.problems) > before or installed is None:
             continue
         element = Element(kind.name, label, installed, MappingProxyType(values))
         try:
@@ -148,33 +170,64 @@ def _kind(item: Reader, registry: Registry) -> SupportKind | None:
     return None
 
 
-def _parameters(item: Reader, kind: SupportKind) -> dict[str, float | str]:
+def _parameters(
+    item: Reader, kind: SupportKind, tables: WordTables
+) -> dict[str, float | str] | None:
+    """The values of an element; None where a word of it is told to be wrong in its table."""
     values: dict[str, float | str] = {}
+    rows: list[RowValues | None] = []
     for parameter in sorted(kind.parameters, key=lambda p: p.only_if is not None):
-        if parameter.only_if is not None and not parameter.in_use(values):
-            other, words = parameter.only_if
-            if item.has(parameter.name) and (other in values or not item.has(other)):
-                chosen = f"with {other}: {values[other]}" if other in values else f"so: {other}"
-                item.complain(
-                    parameter.name,
-                    f"has no use {chosen}" + ("" if other in values else " is not stated"),
-                    fix=f"remove it, or write {other}: {' or '.join(words)}",
-                )
+        if not _has_use(item, parameter, values):
             item.known[parameter.name] = None
             continue
-        value = parameter_value(item, parameter)
+        added = tables.get((kind.name, parameter.name), NO_WORDS)
+        value: float | str | None
+        if added.unread and item.has(parameter.name):
+            value = item.text(parameter.name)
+            rows += [] if value in parameter.choices else [None]
+        else:
+            value = parameter_value(item, parameter, tuple(added.rows))
         if value is not None:
             values[parameter.name] = value
+        if isinstance(value, str) and value in added.rows:
+            rows.append(added.choose(value))
+    for row in rows:
+        if row is None:
+            return None
+        values |= row
     return values
 
 
-def parameter_value(item: Reader, parameter: Parameter) -> float | str | None:
-    """The value of a parameter as it is stated, or meant where it may stay unsaid."""
-    if parameter.choices:
-        required = not parameter.default
-        stated = item.choice(parameter.name, parameter.choices, required=required)
-        return stated if required or item.has(parameter.name) else parameter.default
-    return item.number(parameter.name, parameter.limits, parameter.unit)
+def _has_use(item: Reader, parameter: Parameter, values: Mapping[str, float | str]) -> bool:
+    """Whether a parameter is asked for with the choices made so far; else what is stated of it is
+    a problem, unless the choice itself has one."""
+    if parameter.only_if is None or parameter.in_use(values):
+        return True
+    other, words = parameter.only_if
+    if item.has(parameter.name) and (other in values or not item.has(other)):
+        chosen = f"with {other}: {values[other]}" if other in values else f"so: {other}"
+        item.complain(
+            parameter.name,
+            f"has no use {chosen}" + ("" if other in values else " is not stated"),
+            fix=f"remove it, or write {other}: {' or '.join(words)}",
+        )
+    return False
+
+
+def parameter_value(
+    item: Reader, parameter: Parameter, more_words: tuple[str, ...] = ()
+) -> float | str | None:
+    """The value of a parameter as it is stated, or meant where it may stay unsaid; a choice may
+    have more words than those that are declared."""
+    if not parameter.choices:
+        return item.number(parameter.name, parameter.limits, parameter.unit)
+    required = not parameter.default
+    otherwise = "write one of the allowed words"
+    if parameter.words_from is not None:
+        otherwise += f", or add yours to a table that {TABLES} names"
+    words = (*parameter.choices, *more_words)
+    stated = item.choice(parameter.name, words, required, otherwise)
+    return stated if required or item.has(parameter.name) else parameter.default
 
 
 def _fits(

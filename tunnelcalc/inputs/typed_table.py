@@ -127,8 +127,7 @@ def typed(
 def typed_columns(
     raw: RawTable,
     problems: Problems,
-    numbers: Mapping[str, Limits],
-    unit: str,
+    numbers: Mapping[str, tuple[Limits, str]],
     texts: Sequence[str],
     *,
     required: Sequence[str],
@@ -137,7 +136,7 @@ def typed_columns(
 ) -> TypedTable:
     """Read every cell of a table that has these columns and no others.
 
-    `numbers` are in `unit`; `chainages` are written in `notation`.
+    `numbers` have limits and a unit each; `chainages` are written in `notation`.
     """
     table = TypedTable(raw, problems)
     known = (*chainages, *numbers, *texts)
@@ -149,7 +148,7 @@ def typed_columns(
         elif name in chainages:
             table.numbers[name] = chainages_of(table, column, notation or Notation(), _nowhere)
         elif name in numbers:
-            table.numbers[name] = numbers_of(table, column, numbers[name], unit, _nowhere)
+            table.numbers[name] = numbers_of(table, column, *numbers[name], _nowhere)
         else:
             hint = suggestion(name, known)
             fix = f'did you mean "{hint}"?' if hint else "remove it"

@@ -9,7 +9,7 @@ import numpy as np
 from tunnelcalc.chainage import FORMS, ChainageError, Notation
 from tunnelcalc.errors import Problems, Where
 from tunnelcalc.inputs.yaml_tree import Listing, Scalar, Table, Tree
-from tunnelcalc.text import as_number, number_fix, quoted, suggestion
+from tunnelcalc.text import as_number, meant, number_fix, quoted, suggestion, words_near
 from tunnelcalc.vocabulary import Limits
 
 
@@ -121,18 +121,22 @@ class Reader:
             )
             return None
 
-    def choice(self, key: str, choices: Sequence[str], required: bool = True) -> str | None:
-        """One of several words."""
-        allowed = " or ".join(choices)
-        text = self.text(key, allowed, required)
+    def choice(
+        self,
+        key: str,
+        choices: Sequence[str],
+        required: bool = True,
+        otherwise: str = "write one of the allowed words",
+    ) -> str | None:
+        """One of several words; `otherwise` is the advice where none is near to what is written."""
+        text = self.text(key, words_near(choices), required)
         if text is None or text in choices:
             return text
-        hint = suggestion(text, choices)
         self.complain(
             key,
             f"holds {quoted(text)}",
-            allowed=allowed,
-            fix=f"write {hint}" if hint else "write one of the allowed words",
+            allowed=words_near(choices, text),
+            fix=meant(text, choices) or otherwise,
         )
         return None
 

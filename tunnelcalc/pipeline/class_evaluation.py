@@ -43,6 +43,7 @@ from tunnelcalc.support.equilibrium import pressure_at_closure
 from tunnelcalc.support.reaction import GroundRing, PressureOfClosure
 
 DOES_NOT_COUNT = "does not count: the project does not ask for it under criteria"
+HARDENED = "compared at rest, where what hardens has its final capacity; not while it is young"
 PLATEAU_STEPS = 64
 ROUNDING = 1e-9
 """A check that is at its limit where the reaction is at its own may miss it by rounding."""
@@ -309,7 +310,11 @@ def _check_rows(
             found, left_out = contained_class_evaluation(class_check, of_class, members)
             must_pass = counts(class_check, criteria)
             load = class_check.carries_load
-            rows.append(_row(found, left_out, unresolved, standing, load, must_pass, criteria))
+            note = "" if must_pass else DOES_NOT_COUNT
+            note = "; ".join(filter(None, (note, HARDENED if rest.paths else "")))
+            rows.append(
+                _row(found, left_out, unresolved, standing, load, must_pass, criteria, note)
+            )
     return rows
 
 
@@ -321,15 +326,16 @@ def _row(
     carries_load: bool,
     must_pass: bool,
     criteria: Criteria,
+    note: str = NO_REASON,
 ) -> CheckRow:
-    """A check that was made where there is an equilibrium, over all sections."""
+    """A check that was made where there is an equilibrium, over all sections, with a
+    note where there is no other reason to give."""
     count = unresolved.size
     demand, capacity = np.full((2, count), np.nan)
     demand[standing], capacity[standing] = found.values
     reason = unresolved.copy()
     reason[standing] = found.reason
-    if not must_pass:
-        reason[reason == NO_REASON] = DOES_NOT_COUNT
+    reason[reason == NO_REASON] = note
     counting = np.full(count, must_pass)
     counting[standing] &= ~left_out
     if carries_load:

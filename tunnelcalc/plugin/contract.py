@@ -18,6 +18,7 @@ from typing import Protocol, runtime_checkable
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.plugin.flag import Condition
+from tunnelcalc.plugin.parameter import Misfit, Parameter
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project
 from tunnelcalc.results import RunResult
@@ -27,49 +28,10 @@ from tunnelcalc.support.reaction import Reaction
 from tunnelcalc.support.ring_section import RingSection
 from tunnelcalc.trade_off import TradeOff
 from tunnelcalc.validity import Threshold
-from tunnelcalc.vocabulary import UNLIMITED, Limits, Sort
+from tunnelcalc.vocabulary import Limits
 
 SectionValues = Mapping[str, float | str]
 """The columns of one section by name, a number or a text each."""
-
-
-@dataclass(frozen=True, slots=True)
-class Parameter:
-    """A parameter of a support kind: validation and listings are made from this alone.
-
-    A parameter with `only_if = ("contact", ("blocked",))` is required when one of those choices
-    is made and refused otherwise; every other parameter is required. Only a choice may have a
-    `default`: the word that is meant where the project says nothing. No number has one.
-    """
-
-    name: str
-    meaning: str
-    unit: str = ""
-    limits: Limits = UNLIMITED
-    choices: tuple[str, ...] = ()
-    only_if: tuple[str, tuple[str, ...]] | None = None
-    default: str = ""
-
-    @property
-    def sort(self) -> Sort:
-        return Sort.CHOICE if self.choices else Sort.NUMBER
-
-    def in_use(self, values: Mapping[str, float | str]) -> bool:
-        """Whether an element with these values, words first, has a use for it."""
-        return self.only_if is None or values.get(self.only_if[0]) in self.only_if[1]
-
-    def allowed(self) -> str:
-        """The allowed values in words."""
-        return " or ".join(self.choices) if self.choices else self.limits.describe(self.unit)
-
-
-@dataclass(frozen=True, slots=True)
-class Misfit:
-    """Why the values of an element do not fit together, and what to do about it."""
-
-    parameter: str
-    message: str
-    fix: str
 
 
 @dataclass(frozen=True, slots=True)

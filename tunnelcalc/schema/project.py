@@ -23,7 +23,7 @@ from tunnelcalc.schema.parts import (
     text,
     without,
 )
-from tunnelcalc.schema.support import parameter_schema, support_classes
+from tunnelcalc.schema.support import parameter_schema, support_classes, word_tables
 from tunnelcalc.vocabulary import Limits
 
 DIALECT = "https://json-schema.org/draft/2020-12/schema"
@@ -46,6 +46,7 @@ def project_schema(registry: Registry) -> Schema:
         "ground": ground(),
         "methods": _methods(registry),
         "plugins": _plugins(registry),
+        "tables": word_tables(registry),
         "support_classes": support_classes(registry),
         "criteria": _criteria(registry),
         "schedule": _schedule(),

@@ -5,7 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from tunnelcalc.inputs.support_classes import ADVANCE, INSTALLED_AT, RESERVED_NAMES
-from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.inputs.word_tables import SOURCE
+from tunnelcalc.plugin.contract import SupportKind
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.schema.parts import (
     Schema,
@@ -14,6 +16,7 @@ from tunnelcalc.schema.parts import (
     listing,
     needs,
     number,
+    path,
     table,
     text,
     without,
@@ -44,6 +47,24 @@ def support_classes(registry: Registry) -> Schema:
         anyOf=[needs(INSTALLED), installed_by_all],
     )
     return listing("support classes, lightest first", one_class, minItems=1)
+
+
+def word_tables(registry: Registry) -> Schema:
+    """The tables that give words of choices a meaning, by kind and parameter."""
+    kinds = {}
+    for name in registry.names("support_kind"):
+        found = {
+            p.name: path(_columns(p.words_from.word_column, p.words_from.states))
+            for p in registry.support_kind(name).parameters
+            if p.words_from is not None
+        }
+        if found:
+            kinds[name] = table(f"tables for {name}", found)
+    return table("tables of the project's own words for parameters of support kinds", kinds)
+
+
+def _columns(word_column: str, states: tuple[str, ...]) -> str:
+    return f"table with the columns {', '.join((word_column, *states))} and perhaps {SOURCE}"
 
 
 def _installed(meaning: str) -> Schema:
@@ -95,6 +116,10 @@ def parameter_schema(parameter: Parameter) -> Schema:
         meaning += f"; only if {key} is {' or '.join(words)}"
     if parameter.default:
         meaning += f"; without it {parameter.default}"
+    if parameter.words_from is not None:
+        words = choice("", parameter.choices)["enum"]
+        meaning += f"; or a {parameter.words_from.word_column} of the project's table, under tables"
+        return {"description": meaning, "anyOf": [{"enum": words}, text("")]}
     if parameter.choices:
         return choice(f"{meaning}; {parameter.allowed()}", parameter.choices)
     return number(meaning, parameter.limits, parameter.unit)

@@ -7,7 +7,8 @@ import random
 from collections.abc import Iterator, Sequence
 from functools import lru_cache
 
-from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.plugin.contract import SupportKind
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.ring_sections import with_section
 from tunnelcalc.project import Element
 

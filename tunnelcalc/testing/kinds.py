@@ -8,7 +8,8 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from tunnelcalc.plugin.contract import Amount, Parameter, SupportKind
+from tunnelcalc.plugin.contract import Amount, SupportKind
+from tunnelcalc.plugin.parameter import Parameter, source_of
 from tunnelcalc.project import Element
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.reaction import FORMS, GroundRing, LinearSpring, PressureOfClosure
@@ -119,6 +120,22 @@ class KindConformance(Generated):
         assert not isinstance(words, str), "the words of a condition are a tuple"
         assert words
         assert set(words) <= set({p.name: p.choices for p in kind.parameters}[other])
+
+    def test_a_table_of_words_states_numbers_of_the_same_kind(
+        self, kind: SupportKind, parameter: Parameter
+    ) -> None:
+        table = parameter.words_from
+        if table is None:
+            return
+        assert parameter.choices, "a table adds words to a choice"
+        assert parameter.only_if is None, "a choice that takes words from a table is always asked"
+        of_name = {p.name: p for p in kind.parameters}
+        assert source_of(parameter.name) not in of_name
+        assert table.states, "a word stands for some values"
+        for name in table.states:
+            assert not of_name[name].choices
+            other, _ = of_name[name].only_if or ("", ())
+            assert other == parameter.name, f"{name} is asked for beside a word that states it"
 
     def test_an_element_reacts_in_the_form_that_is_announced(
         self, kind: SupportKind, element: Element

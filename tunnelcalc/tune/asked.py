@@ -9,7 +9,7 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.errors import Problem, Problems, Where
 from tunnelcalc.inputs.support_classes import ADVANCE, INSTALLED_AT, class_faults
-from tunnelcalc.plugin.contract import Misfit, Parameter
+from tunnelcalc.plugin.parameter import Misfit, Parameter
 from tunnelcalc.plugin.registry import Registry, describe
 from tunnelcalc.project import SupportClass
 from tunnelcalc.text import as_number, quoted, suggestion

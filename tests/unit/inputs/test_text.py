@@ -7,7 +7,19 @@ import math
 import pytest
 
 from tunnelcalc.errors import Problems
-from tunnelcalc.text import as_number, decoded, few, number_fix, quoted, suggestion
+from tunnelcalc.text import (
+    MOST_WORDS,
+    as_number,
+    decoded,
+    few,
+    meant,
+    number_fix,
+    quoted,
+    suggestion,
+    words_near,
+)
+
+PROFILES = tuple(f"{series} {size}" for series in ("HA", "HB") for size in range(100, 300, 20))
 
 
 @pytest.mark.parametrize(
@@ -102,3 +114,25 @@ def test_a_byte_order_mark_is_no_text():
     problems = Problems()
     assert decoded("f.csv", b"\xef\xbb\xbfa", problems) == "a"
     assert len(problems) == 0
+
+
+def test_of_few_words_all_are_told_and_of_many_the_nearest():
+    few_words = PROFILES[:MOST_WORDS]
+    assert words_near(few_words, "HB 281") == " or ".join(few_words)
+    near = words_near(PROFILES, "HB 281")
+    assert near.startswith("HB 280 or ")
+    assert near.endswith(" or one of 15 more")
+    assert words_near(PROFILES).startswith("HA 100 or HA 120 or ")
+
+
+@pytest.mark.parametrize(
+    ("written", "question"),
+    [
+        ("HB280", 'did you mean "HB 280"?'),
+        (" hb 280", 'did you mean "HB 280"?'),
+        ("HC 280", 'did you mean "HA 280" or "HB 280"?'),
+        ("circular", None),
+    ],
+)
+def test_the_nearest_word_is_asked_for_and_equally_near_ones_all(written, question):
+    assert meant(written, PROFILES) == question

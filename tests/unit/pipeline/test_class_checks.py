@@ -7,6 +7,7 @@ import pytest
 from unit.pipeline.grounds import evaluated, sections_of
 from unit.pipeline.projects import BOLTS, SHOTCRETE, STEEL_SETS, element, project
 
+from tunnelcalc.pipeline.class_evaluation import DOES_NOT_COUNT, HARDENED
 from tunnelcalc.pipeline.plan import check_lines, plan_classes
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.support.adequacy import Outcome
@@ -101,6 +102,20 @@ class TestCrownDeadWeight:
             free = evaluated(sections, MIXED, chosen_checks=chosen)
             others = np.delete(free["check_factor_of_safety"][0], at)
             assert free["class_factor_of_safety"][0, 0] == np.nanmin(others) > weight
+
+    @pytest.mark.parametrize("said", [True, False])
+    def test_of_a_ring_that_hardens_the_row_says_that_its_final_capacity_counts(self, said):
+        """The capacity is that of 28 days, as of the ring that is hard from the first."""
+        young = {"ring": [element("shotcrete", SHOTCRETE | {"hardening": "meschke_1996"})]}
+        keys = {"advance_m_per_day": 4.0, "chosen_checks": {"crown_dead_weight": said}}
+        found, (at,) = of_check(sections_of(2, gsi=30.0), young, "crown_dead_weight", **keys)
+        np.testing.assert_allclose(found["check_capacity"][:, at], RING_MPA, rtol=1e-14)
+        told = HARDENED if said else f"{DOES_NOT_COUNT}; {HARDENED}"
+        assert found["check_reason"][:, at].tolist() == [told] * 2
+        rigid = {"ring": [element("shotcrete", SHOTCRETE)]}
+        keys.pop("advance_m_per_day")
+        found, (at,) = of_check(sections_of(2, gsi=30.0), rigid, "crown_dead_weight", **keys)
+        assert found["check_reason"][:, at].tolist() == ["" if said else DOES_NOT_COUNT] * 2
 
     def test_where_the_unit_weight_is_not_known_it_is_not_evaluated(self):
         sections = sections_of(vertical_stress_mpa=5.0, unit_weight_kn_m3=np.nan, cover_m=np.nan)

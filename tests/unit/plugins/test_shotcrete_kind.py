@@ -248,6 +248,20 @@ class TestEarlyStrength:
         found = misfits(hardening("meschke_1996", **falling))
         assert found == {"early_strength_2_mpa": "is 1 MPa, less than the 2 MPa of an earlier age"}
 
+    @pytest.mark.parametrize("strength", [2.0, 10.0])
+    def test_an_age_that_is_stated_twice_is_refused(self, strength):
+        twice = {**self.TWO, "early_age_2_hours": 6.0, "early_strength_2_mpa": strength}
+        found = misfits(hardening("meschke_1996", **twice))
+        text = "is 6 h, for which a strength is required already"
+        assert found == {"early_age_2_hours": text}
+
+    def test_ages_may_stand_in_any_order_and_strength_may_stay(self):
+        turned = {**self.TWO, "early_age_1_hours": 24.0, "early_age_2_hours": 6.0}
+        falling = {"early_strength_1_mpa": "is 2 MPa, less than the 10 MPa of an earlier age"}
+        assert misfits(hardening("meschke_1996", **turned)) == falling
+        level = {**self.TWO, "early_strength_2_mpa": 2.0}
+        assert misfits(hardening("meschke_1996", **level)) == {}
+
     def test_modulus_and_strength_of_a_law_are_its_own(self):
         law = hardening_law(hardening("chang_stille_1993"))
         ages = np.array([0.5, 3.0])

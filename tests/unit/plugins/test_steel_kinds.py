@@ -7,6 +7,7 @@ import pytest
 from tunnelcalc_steel_sets.checks import Travel, Yield
 from tunnelcalc_steel_sets.girders import LatticeGirders
 from tunnelcalc_steel_sets.kind import SteelSets, blocks_of
+from tunnelcalc_steel_sets.plausible import MOST_DIVISOR, SECTION, section_misfits
 from tunnelcalc_steel_sets.profile import packaged_sections, section_of
 
 from tunnelcalc.api import Element, LinearSpring, PressureOfClosure, Sections
@@ -121,6 +122,58 @@ class TestProfile:
             )
             embedded = SETS.reaction(SECTIONS, designated("HEB 140"))
             assert np.all(blocked.capacity_mpa <= embedded.capacity_mpa)
+
+
+class TestPlausibleSection:
+    """A h^2 = 4000 x 140^2 = 78.4e6 mm4: at most a fourth of it, 19.6e6 mm4, two points; at least
+    that of a rhombus, a 24th, 3.267e6 mm4 (independent calculation)."""
+
+    @pytest.mark.parametrize("inertia", [3.27e6, 1.4e7, 1.95e7])
+    def test_between_the_bounds_nothing_is_told(self, inertia):
+        assert misfits(SETS, sets(section_inertia_mm4=inertia)) == {}
+
+    @pytest.mark.parametrize(
+        ("inertia", "told"), [(3.26e6, "less than a rhombus"), (1.97e7, "more than this area")]
+    )
+    def test_an_own_section_beyond_them_is_refused(self, inertia, told):
+        found = misfits(SETS, sets(section_inertia_mm4=inertia))
+        assert set(found) == {"section_inertia_mm4"}
+        assert told in found["section_inertia_mm4"]
+
+    @pytest.mark.parametrize("name", list(packaged_sections()))
+    def test_a_rolled_section_is_far_from_both_about_both_axes(self, name):
+        """Of a flat rectangle in place of the flanges about the weak axis: b^3 tf / 6."""
+        row = packaged_sections()[name]
+        assert not list(section_misfits(values(row.area_mm2, row.inertia_mm4, row.height_mm)))
+        weak = row.width_mm**3 * row.flange_thickness_mm / 6
+        assert not list(section_misfits(values(row.area_mm2, weak, row.width_mm)))
+
+    def test_a_rhombus_lies_on_the_bound(self):
+        """Width 2 w (1 - 2 |y| / h): integrated by strips, a solid rhombus of 100 by 200 mm."""
+        y = (np.arange(200_000) + 0.5) / 200_000 * 200 - 100
+        width = 100 * (1 - np.abs(y) / 100)
+        area, inertia = width.sum() * 200 / y.size, (width * y**2).sum() * 200 / y.size
+        assert inertia / (area * 200**2) == pytest.approx(1 / MOST_DIVISOR, rel=1e-6)
+
+
+def values(area, inertia, depth):
+    return dict(zip(SECTION, (area, inertia, depth), strict=True))
+
+
+class TestProjectTable:
+    ROW = {**OWN, "profile": "ARCH", "profile_source": "sections.csv:3, mill sheet"}  # noqa: RUF012
+
+    def test_a_row_is_as_good_as_an_own_section_and_names_its_source(self):
+        element = designated("ARCH", **self.ROW)
+        section, own = section_of(element), section_of(sets())
+        assert section.source == "ARCH: sections.csv:3, mill sheet"
+        assert own.source == "project"
+        assert (section.area_mm2, section.inertia_mm4, section.depth_mm) == tuple(OWN.values())
+        lines = {line.symbol: line for line in SETS.lines({"radius_m": 4.0}, element)}
+        assert lines["As"].source == "ARCH: sections.csv:3, mill sheet"
+
+    def test_one_too_deep_for_the_opening_is_refused_by_its_name(self):
+        assert set(misfits(SETS, designated("ARCH", **self.ROW), 0.25)) == {"profile"}
 
 
 class TestBeyondYield:

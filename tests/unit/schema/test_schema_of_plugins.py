@@ -7,7 +7,7 @@ from dataclasses import dataclass
 import pytest
 from jsonschema import Draft202012Validator
 
-from tunnelcalc.plugin.contract import Parameter
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import Offer, PluginSource, Registry
 from tunnelcalc.schema import project_schema
 from tunnelcalc.vocabulary import Limits

@@ -98,10 +98,13 @@ WORDS = api.Parameter("sort", "invented", choices=("a", "b"))
 SILENT = api.Parameter("amount_m", "", "m", api.Limits(0, 10))
 OF_NUMBER = replace(NAME, name="other_m", only_if=("sort", ("c",)))
 
+FROM_TABLE = api.WordTable("name", (NAME.name,), lambda values: ())
+"""States a number that is asked for beside any word."""
 KIND_TESTS = [name for name in dir(testing.KindConformance) if name.startswith("test_")]
 BY_PARAMETER = {
     "test_a_parameter_is_a_choice_or_a_number_with_unit_and_range",
     "test_a_condition_names_a_choice_of_the_same_kind",
+    "test_a_table_of_words_states_numbers_of_the_same_kind",
 }
 BY_KIND = {
     "test_a_kind_says_what_it_is_and_names_each_parameter_once",
@@ -149,6 +152,12 @@ def test_a_sound_kind_passes(test):
             "test_a_condition_names_a_choice_of_the_same_kind": (
                 kind_with(parameters=(WORDS, OF_NUMBER)),
                 kind_with(parameters=(WORDS, replace(OF_NUMBER, only_if=("sort", "a")))),
+            ),
+            "test_a_table_of_words_states_numbers_of_the_same_kind": (
+                kind_with(parameters=(replace(WORDS, words_from=FROM_TABLE), NAME)),
+                kind_with(
+                    parameters=(replace(WORDS, words_from=replace(FROM_TABLE, states=())), NAME)
+                ),
             ),
             "test_an_element_reacts_in_the_form_that_is_announced": (
                 kind_with(form="magic"),
