@@ -13,7 +13,7 @@ from tunnelcalc_shotcrete.early import early_misfits, early_parameters
 from tunnelcalc_shotcrete.formulas import M_PER_MM, ring_volume_m3_per_m
 from tunnelcalc_shotcrete.hardening import EUROCODE_COEFFICIENTS
 from tunnelcalc_shotcrete.laws import EUROCODE, LAW_NAMES, NO_HARDENING, hardening_law
-from tunnelcalc_shotcrete.lines import reaction_lines
+from tunnelcalc_shotcrete.lines import lines_at_age, reaction_lines
 from tunnelcalc_shotcrete.ring import (
     AT_INSTALLATION,
     FROM_DISTANCE,
@@ -133,3 +133,8 @@ class Shotcrete:
 
     def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
         return reaction_lines(values, element)
+
+    def lines_at_age(
+        self, values: api.SectionValues, element: api.Element, age_days: float
+    ) -> Sequence[api.SheetLine]:
+        return lines_at_age(values, element, age_days)

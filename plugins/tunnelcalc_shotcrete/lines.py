@@ -9,7 +9,11 @@ import numpy as np
 from tunnelcalc import api
 from tunnelcalc_shotcrete.early import governing
 from tunnelcalc_shotcrete.formulas import MPA_PER_GPA
-from tunnelcalc_shotcrete.hardening import HOURS_PER_DAY, MESCHKE_JOINT_HOURS
+from tunnelcalc_shotcrete.hardening import (
+    HOURS_PER_DAY,
+    MESCHKE_JOINT_HOURS,
+    MESCHKE_STIFFNESS_JOINT_HOURS,
+)
 from tunnelcalc_shotcrete.laws import CHANG_STILLE, EUROCODE, HardeningLaw, hardening_law
 from tunnelcalc_shotcrete.ring import Ring, ring_of
 
@@ -20,6 +24,10 @@ PROJECT = "project"
 ALONG = "advance of the face"
 EARLY_CHANG = "min(1.105*exp(-0.743*t_a^(-0.70)), 1)"
 EARLY_EUROCODE = "min(exp(s_c*(1 - sqrt(28/t_a))), 1)"
+MODULUS_CHANG = "min(1.062*exp(-min(0.446*age^(-0.60), 700)), 1)"
+MODULUS_EUROCODE = "min(exp(0.3*s_c*(1 - sqrt(28/age))), 1)"
+MODULUS_MESCHKE = "min(0.0468*24*age - 0.00211*(24*age)^2, 1)"
+MODULUS_MESCHKE_LATER = "min(max(0.0468*8 - 0.00211*8^2, (0.9506 + 32.89/(24*age - 6))^(-0.5)), 1)"
 MESCHKE_FIRST_DAY = "0.489*((t_h + 0.12)/24)^0.72453"
 MESCHKE_LATER = "min(max(0.489*(24.12/24)^0.72453, 1.027*exp(-17.8/t_h)), 1)"
 
@@ -36,15 +44,68 @@ def reaction_lines(values: api.SectionValues, element: api.Element) -> Sequence[
     work.add("Ec", "Young's modulus", "E_gpa*1000", modulus, "MPa", PROJECT)
     stiffness, capacity = (float(row[0]) for row in ring.spring(radius))
     when = "" if hardening_law(element) is None else ", at 28 days"
-    if ring.thin:
-        formula, source = "Ec*t/((1 - nu_c^2)*R*(R - t/2))", THIN
-        most, most_source = "scc*t/R", THIN
-    else:
-        formula = "Ec*(R^2 - r^2)/((1 + nu_c)*R*((1 - 2*nu_c)*R^2 + r^2))"
-        source, most, most_source = LAME, "scc/2*(1 - r^2/R^2)", HOEK_BROWN
+    formula, source, most, most_source = ring_formulas(ring)
     work.add("K", f"stiffness of the ring{when}", formula, stiffness, "MPa/m", source)
     work.add("pmax", f"capacity of the ring{when}", most, capacity, "MPa", most_source)
     return work.lines
+
+
+def lines_at_age(
+    values: api.SectionValues, element: api.Element, age_days: float
+) -> Sequence[api.SheetLine]:
+    """Stiffness of the ring at an age, and the capacity that a load of that age is compared with;
+    R, r and t are those of `reaction_lines`."""
+    law, ring = hardening_law(element), ring_of(element)
+    assert law is not None
+    age, radius = np.array([age_days]), float(values["radius_m"])
+    known = {
+        "R": radius,
+        "t": ring.thickness_m,
+        "r": radius - ring.thickness_m,
+        "nu_c": ring.poisson_ratio,
+        "E_28": ring.modulus_mpa,
+        "s_c": law.coefficient,
+        "age": age_days,
+        "t_0": law.first_age_days,
+    }
+    work = api.Working(known, law.source)
+    stiffness, capacity = (float(x[0]) for x in ring.at_age(np.array([radius]), law, age))
+    ratio = float(law.modulus_ratio(age)[0])
+    hours = age_days * HOURS_PER_DAY
+    formula = modulus_formula(law, hours)
+    work.add("share_E", "modulus over that at 28 days", formula, ratio)
+    modulus = ring.modulus_mpa * ratio
+    work.add("Ec", "Young's modulus at that age", "E_28*share_E", modulus, "MPa")
+    formula, source, most, most_source = ring_formulas(ring)
+    work.add("K", "stiffness of the ring at that age", formula, stiffness, "MPa/m", source)
+    compared = float(law.compared_age_days(age)[0])
+    meaning = "age of the strength: not less than the first at which the law is trusted"
+    work.add("t_a", meaning, "max(age, t_0)", compared, "day")
+    _add_strength(work, law, compared, ring.strength_mpa)
+    strength = ring.strength_mpa * float(law.compared_strength_ratio(age)[0])
+    work.add("scc_a", "strength at that age", "scc*share", strength, "MPa")
+    most = most.replace("scc", "scc_a")
+    work.add("pmax", "capacity of the ring at that age", most, capacity, "MPa", most_source)
+    return work.lines
+
+
+def modulus_formula(law: HardeningLaw, hours: float) -> str:
+    """Share of Young's modulus at `age`."""
+    if hours == 0:
+        return "0"
+    if law.name == CHANG_STILLE:
+        return MODULUS_CHANG
+    if law.name == EUROCODE:
+        return MODULUS_EUROCODE
+    return MODULUS_MESCHKE if hours < MESCHKE_STIFFNESS_JOINT_HOURS else MODULUS_MESCHKE_LATER
+
+
+def ring_formulas(ring: Ring) -> tuple[str, str, str, str]:
+    """Stiffness and capacity, each with its source."""
+    if ring.thin:
+        return "Ec*t/((1 - nu_c^2)*R*(R - t/2))", THIN, "scc*t/R", THIN
+    formula = "Ec*(R^2 - r^2)/((1 + nu_c)*R*((1 - 2*nu_c)*R^2 + r^2))"
+    return formula, LAME, "scc/2*(1 - r^2/R^2)", HOEK_BROWN
 
 
 def stress_lines(values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
@@ -65,6 +126,7 @@ def young_stress_lines(
     pressure, age = float(values["worst_pressure_mpa"]), float(values["worst_age_days"])
     distance = float(values["worst_distance_m"])
     work.add("x_w", "distance behind the face, where it is worst", "", distance, "m", ALONG)
+    work.add("p", "pressure there, with water: see the steps", "", pressure, "MPa", ALONG)
     _add_stress(work, ring, radius, pressure)
     strength = float(found.capacity[0])
     if np.isnan(age):

@@ -9,7 +9,7 @@ import pytest
 from contract.test_developers_example import printed_block
 
 from tunnelcalc import api, testing
-from tunnelcalc.plugin.sheet_contract import ClassLines, ElementLines
+from tunnelcalc.plugin.sheet_contract import AgeingLines, ClassLines, ElementLines
 from tunnelcalc.testing.class_checks import applies, ways_of
 from tunnelcalc.testing.reactions import capacity_of
 
@@ -31,6 +31,12 @@ ELEMENTS = [
     pytest.param(offer.thing, element, id=named(offer.thing, element))
     for offer in REGISTRY.of_sort("support_kind")
     for element in CHECKED.elements_of(offer.thing)
+]
+HARDENING = [
+    pytest.param(offer.thing, element, id=named(offer.thing, element))
+    for offer in REGISTRY.of_sort("support_kind")
+    for element in CHECKED.elements_of(offer.thing)
+    if offer.thing.reaction_form(element) == api.AdvanceIncrements.form
 ]
 CHECKS = [
     pytest.param(check, element, id=named(check, element)) for check, element in CHECKED.pairs()
@@ -76,6 +82,20 @@ def test_the_lines_of_a_kind_give_its_stiffness_and_capacity(kind, element):
     assert last(lines, "pmax") == capacity_of(reaction)[0]
     assert agree(lines)
     assert all(line.formula and line.source for line in lines)
+
+
+@pytest.mark.parametrize("age_days", [0.0, 1e-7, 0.001, 0.2, 0.34, 1.0, 1.3, 9.0, 400.0])
+@pytest.mark.parametrize(("kind", "element"), HARDENING)
+def test_the_lines_of_a_kind_that_hardens_give_both_at_any_age(kind, element, age_days):
+    section, values = one(element)
+    assert isinstance(kind, AgeingLines)
+    lines = kind.lines_at_age(values, element, age_days)
+    stiffness, capacity = kind.reaction(section, element).at_age(np.array([age_days]))
+    assert last(lines, "K") == stiffness[0]
+    assert last(lines, "pmax") == capacity[0]
+    assert agree(lines)
+    symbols = [line.symbol for line in lines]
+    assert symbols.index("K") < symbols.index("pmax")
 
 
 @pytest.mark.parametrize(("check", "element"), CHECKS)

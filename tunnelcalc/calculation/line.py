@@ -4,9 +4,9 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
-from tunnelcalc.calculation.formula import FormulaError, evaluate, sides
+from tunnelcalc.calculation.formula import FormulaError, evaluate, renamed, sides
 
 CLOSED_FORM = 1e-10
 QUADRATURE = 1e-8
@@ -33,6 +33,14 @@ class SheetLine:
     result: float
     unit: str = ""
     source: str = ""
+    on_screen: bool = True
+    """else it is one of many alike, and stands in files alone"""
+
+    def with_names(self, names: Mapping[str, str]) -> SheetLine:
+        """The line with other names for some quantities."""
+        inputs = {names.get(name, name): value for name, value in self.inputs.items()}
+        symbol = names.get(self.symbol, self.symbol)
+        return replace(self, symbol=symbol, formula=renamed(self.formula, names), inputs=inputs)
 
     @property
     def tolerance(self) -> float:

@@ -9,6 +9,7 @@ from typing import Any
 
 from tunnelcalc.calculation.line import SheetBlock, SheetLine
 from tunnelcalc.calculation.working import Working
+from tunnelcalc.explain.advance_block import AdvanceBlock, advance_positions
 from tunnelcalc.explain.class_sums import (
     DEFINITION,
     add_capacities,
@@ -17,6 +18,7 @@ from tunnelcalc.explain.class_sums import (
     share_formula,
 )
 from tunnelcalc.explain.offered import Lines, differ, last, lines_of, method_lines, plugin_of
+from tunnelcalc.explain.ring_blocks import RingedGround
 from tunnelcalc.explain.section import ComputedSection, StressCase
 from tunnelcalc.outputs.cells import number_text
 from tunnelcalc.outputs.tables import OUTCOME_WORDS
@@ -29,19 +31,12 @@ from tunnelcalc.pipeline.element_loads import (
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass, PlannedElement
 from tunnelcalc.plugin.contract import ClassCheck, SectionValues, SupportCheck
-from tunnelcalc.support.reaction import GroundRing
 
 SPRINGS = (
     "elements in parallel, each from its own closure at installation: Hoek & Brown (1980), "
     "Carranza-Torres & Fairhurst (2000)"
 )
 ZERO_PRESSURE = 0.0
-
-
-RING_NOTE = (
-    "bolts change the ground in a ring from their installation on: its curve is that of the law "
-    "with the ring, less the movement before; only its results stand here"
-)
 
 
 @dataclass(slots=True)
@@ -74,7 +69,12 @@ class CaseBlocks:
         found = self.section.evaluated(self.case, planned)
         for position, item in enumerate(planned.elements):
             yield self._element(planned, item, found, position)
-        yield self._equilibrium(planned, found)
+        ringed = RingedGround.of_class(self.section, self.case, found)
+        if ringed is not None and bool(found.rest.converged[0]):
+            advances = found.rest.advanced is not None
+            yield from ringed.blocks(planned, self.title, advances=advances)
+        yield from self._advance(planned, found)
+        yield self._equilibrium(planned, found, ringed)
         yield from self._checks(planned, found)
         yield self._adequacy(planned, found)
 
@@ -150,7 +150,21 @@ class CaseBlocks:
         title = f"Class {what}, installed {number_text(element.installed_at_m)} m behind the face"
         return SheetBlock(title + self.title, (x, *share_lines, *work.lines, *shown), notes)
 
-    def _equilibrium(self, planned: PlannedClass, found: Evaluated) -> SheetBlock:
+    def _advance(self, planned: PlannedClass, found: Evaluated) -> Iterator[SheetBlock]:
+        """The steps of each element that hardens while the face moves on."""
+        for position in advance_positions(found):
+            assert found.rest.advanced is not None
+            written = AdvanceBlock(
+                self.section, self.case, planned, found, found.rest.advanced, int(position)
+            )
+            label = planned.elements[position].element.label
+            title = f"Class {planned.support_class.name}, {label}, along the advance of the face"
+            yield written.block(f"{title}{self.title}")
+            self.differences += written.differences
+
+    def _equilibrium(
+        self, planned: PlannedClass, found: Evaluated, ringed: RingedGround | None
+    ) -> SheetBlock:
         """Pressure at which ground and elements are at rest."""
         rest, values = found.rest, self.case.values
         pressure = float(rest.support_pressure_mpa[0])
@@ -159,9 +173,10 @@ class CaseBlocks:
             return SheetBlock(
                 title, (), ("ground and support have no equilibrium that can be computed",)
             )
-        lines, notes = self._law(pressure, "at rest")
-        if any(isinstance(r.reaction, GroundRing) for r in found.responses):
-            lines, notes = (), (RING_NOTE,)
+        if ringed is None:
+            lines, notes = self._law(pressure, "at rest")
+        else:
+            lines, notes = ringed.at_rest(pressure)
         start = SheetLine(
             "p_i",
             "support pressure at rest, root of the last line",

@@ -23,13 +23,13 @@ def plugin_of(section: ComputedSection, sort: str, name: str) -> str:
 
 
 def lines_of(
-    thing: Any, who: str, call: Callable[[Any], Sequence[SheetLine]]
+    thing: Any, who: str, call: Callable[[Any], Sequence[SheetLine]], by: str = "lines"
 ) -> tuple[Lines, Notes]:
-    """The lines of a thing, and a note where it has none or fails.
+    """The lines of a thing, which its method `by` gives, and a note where it has none or fails.
 
     A stranger's lines cost their own rows, never the sheet.
     """
-    if not callable(getattr(thing, "lines", None)):
+    if not callable(getattr(thing, by, None)):
         return (), (f"given by {who}, which shows no formula",)
     try:
         found = tuple(call(thing))

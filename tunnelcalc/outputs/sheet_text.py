@@ -28,7 +28,8 @@ def sheet_text(sheet: Sheet) -> str:
     for block in sheet.blocks:
         lines += [*_wrapped(block.title, ""), "-" * min(len(block.title), WIDTH)]
         for line in block.lines:
-            lines += _text_of_line(line)
+            if line.on_screen:
+                lines += _text_of_line(line)
         for note in block.notes:
             lines += _wrapped(note, "", "  ")
         lines.append("")

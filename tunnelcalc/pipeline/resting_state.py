@@ -74,19 +74,34 @@ class AgeingPath:
     def worst(self, water_mpa: Array) -> dict[str, Array]:
         """The state (n,) where it is used most for its capacity of the same age. Water (n,) adds
         to the pressure once the element carries any. [MPa]"""
-        loaded = self.pressure_mpa > 0
-        pressure = self.pressure_mpa + np.where(loaded, water_mpa, 0)
-        use = np.full(loaded.shape, -1.0)
-        with np.errstate(divide="ignore"):
-            np.divide(pressure, self.capacity_mpa, out=use, where=loaded)
-        unknown = np.isnan(pressure) | np.isnan(self.capacity_mpa)
-        at = np.argmax(np.where(unknown, np.inf, use), axis=0), np.arange(loaded.shape[1])
+        pressure = self._with_water_mpa(water_mpa)
+        at = self.worst_state(water_mpa), np.arange(pressure.shape[1])
         return {
             "worst_pressure_mpa": pressure[at],
             "worst_capacity_mpa": self.capacity_mpa[at],
             "worst_age_days": self.age_days[at],
             "worst_distance_m": self.distance_m[at],
         }
+
+    def worst_state(self, water_mpa: Array) -> Array:
+        """(n,) its number along the advance."""
+        loaded, pressure = self.pressure_mpa > 0, self._with_water_mpa(water_mpa)
+        use = np.full(loaded.shape, -1.0)
+        with np.errstate(divide="ignore"):
+            np.divide(pressure, self.capacity_mpa, out=use, where=loaded)
+        unknown = np.isnan(pressure) | np.isnan(self.capacity_mpa)
+        return np.argmax(np.where(unknown, np.inf, use), axis=0)
+
+    def _with_water_mpa(self, water_mpa: Array) -> Array:
+        return self.pressure_mpa + np.where(self.pressure_mpa > 0, water_mpa, 0)
+
+
+@dataclass(frozen=True, slots=True)
+class Advanced:
+    """A class along the advance, and the table of the ground's pressure that it was followed by."""
+
+    states: Advance
+    table: PressureTable
 
 
 @dataclass(frozen=True, slots=True)
@@ -107,6 +122,8 @@ class RestingState:
     """The equilibrium of elements that do not age; None with those that do."""
     paths: dict[int, AgeingPath]
     """By the position of each element that ages."""
+    advanced: Advanced | None = None
+    """How elements that age came to rest; None without them."""
 
 
 def acting_from_m(installed_at_m: float, reaction: Reaction) -> float:
@@ -290,6 +307,7 @@ def _of_advance(
             for position, reaction in enumerate(reactions)
             if isinstance(reaction, AdvanceIncrements)
         },
+        Advanced(found, table),
     )
 
 

@@ -7,7 +7,7 @@ and the sheet tells where both disagree. `tunnelcalc.api.Working` puts lines tog
 `values` holds the columns of one section. What a run computed from the same thing is compared
 with the line of this symbol, if there is one:
 
-    kinds of support    K stiffness [MPa/m], pmax capacity [MPa]
+    kinds of support    K stiffness [MPa/m], pmax capacity [MPa]; at an age, too
     checks              demand, capacity, in the unit of the check
     closure profiles    share [-]
     laws of the ground  X = Rp / R [-], u_R = u / R [-], and pcr where they have it
@@ -25,6 +25,7 @@ from typing import Protocol, runtime_checkable
 from tunnelcalc.calculation.line import SheetLine
 from tunnelcalc.plugin.contract import SectionValues
 from tunnelcalc.project import Element
+from tunnelcalc.support.reaction import GroundRing
 
 
 @runtime_checkable
@@ -57,6 +58,27 @@ class ReactionLines(Protocol):
 
     def lines(self, values: SectionValues, pressure_mpa: float) -> Sequence[SheetLine]:
         """The state of the wall under a pressure, `u_R` the last."""
+
+
+@runtime_checkable
+class RingedReactionLines(Protocol):
+    """Laws of the ground that hold with a ring of other strength, as bolts make it."""
+
+    def lines_with_ring(
+        self, values: SectionValues, ring: GroundRing, pressure_mpa: float
+    ) -> Sequence[SheetLine]:
+        """The state of the wall with the ring from the beginning, `u_R` the last."""
+
+
+@runtime_checkable
+class AgeingLines(Protocol):
+    """Kinds of support that harden."""
+
+    def lines_at_age(
+        self, values: SectionValues, element: Element, age_days: float
+    ) -> Sequence[SheetLine]:
+        """Stiffness K and then capacity pmax at an age, which formulas call `age`; they may use the
+        results of `lines` by their symbols."""
 
 
 @runtime_checkable

@@ -57,10 +57,12 @@ class Advance(NamedTuple):
     (k, n): `distance_m` behind the face, `closure_m`, `fictitious_pressure_mpa` pf. (e, k, n):
     `age_days`, 0 before installation and NaN for elements that do not age, and
     `element_pressure_mpa`. (n,): `support_pressure_mpa`, `plastic_ratio` and `converged` at
-    rest far from the face. `begins_at_m` (e, n): closure from which each element acts.
+    rest far from the face. `begins_at_m` (e, n): closure from which each element acts. `within_m`
+    (2, k - 1, n): distances within each step at which ages are taken for its mean stiffness.
     """
 
     distance_m: Array
+    within_m: Array
     closure_m: Array
     fictitious_pressure_mpa: Array
     age_days: Array
@@ -164,6 +166,7 @@ def advance(
         pressure[row, last] = step.element(row, rest.moved_m, every)[0]
     return Advance(
         distance,
+        within,
         np.where(good, closure, np.nan),
         face,
         ages,

@@ -9,6 +9,7 @@ own cell.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 
@@ -25,6 +26,19 @@ width at the kink that some laws have where the ground yields, then evenly in th
 closure."""
 BEYOND_KINK = 1 - 1e-9
 """Of the critical pressure: already in the yielding branch."""
+
+
+class Cell(NamedTuple):
+    """A cubic between two nodes, (k,) each: closures [m], pressures [MPa] and the slopes that keep
+    it monotone [MPa/m]."""
+
+    start_m: Array
+    end_m: Array
+    start_mpa: Array
+    end_mpa: Array
+    start_mpa_per_m: Array
+    end_mpa_per_m: Array
+    secant_mpa_per_m: Array
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,6 +58,18 @@ class PressureTable:
     def pressure_and_slope(self, closure_m: Array, index: Array) -> tuple[Array, Array]:
         """Pressure (k,) [MPa] and its slope (k,) [MPa/m] at closures (k,) [m] of the sections at
         `index`; outside the table the cubics of its ends."""
+        cell = self.cell(closure_m, index)
+        width, fall = cell.end_m - cell.start_m, cell.end_mpa - cell.start_mpa
+        first, last, secant = cell.start_mpa_per_m, cell.end_mpa_per_m, cell.secant_mpa_per_m
+        wide = width > 0
+        part = np.divide(closure_m - cell.start_m, width, out=np.zeros_like(fall), where=wide)
+        curved = (first + last - 2 * secant) * part
+        bent = 3 * secant - 2 * first - last
+        rise = width * part * (first + part * (bent + curved))
+        return cell.start_mpa + rise, first + part * (2 * bent + 3 * curved)
+
+    def cell(self, closure_m: Array, index: Array) -> Cell:
+        """The cell of closures (k,) [m] of the sections at `index`."""
         cell = locate(self.closure_m, closure_m, index)
         start, end = self.closure_m[cell, index], self.closure_m[cell + 1, index]
         above, below = self.pressure_mpa[cell, index], self.pressure_mpa[cell + 1, index]
@@ -55,11 +81,7 @@ class PressureTable:
             np.minimum(np.maximum(self.slope_mpa_per_m[at, index], 3 * secant), 0)
             for at in (cell, cell + 1)
         )
-        part = np.divide(closure_m - start, width, out=np.zeros_like(fall), where=wide)
-        curved = (first + last - 2 * secant) * part
-        bent = 3 * secant - 2 * first - last
-        rise = width * part * (first + part * (bent + curved))
-        return above + rise, first + part * (2 * bent + 3 * curved)
+        return Cell(start, end, above, below, first, last, secant)
 
 
 def pressure_table(curve: GroundCurve, radius_m: Array, least_closure_m: Array) -> PressureTable:

@@ -6,7 +6,8 @@ from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, replace
 from types import MappingProxyType
 
-from tunnelcalc.plugin.contract import Parameter, SupportKind
+from tunnelcalc.plugin.contract import SupportKind
+from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import Element, SupportClass
 from tunnelcalc.trade_off import full_name

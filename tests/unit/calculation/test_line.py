@@ -64,3 +64,11 @@ def test_a_working_puts_in_what_came_before():
 def test_a_block_lists_the_lines_that_disagree():
     wrong = line("2*x", 7.0, x=3.0)
     assert SheetBlock("t", (line("2*x", 6.0, x=3.0), wrong)).disagreements == (wrong,)
+
+
+def test_other_names_stand_in_symbol_formula_and_numbers():
+    line = SheetLine("K", "stiffness", "Ec*t/R^2", {"Ec": 6.0, "t": 2.0, "R": 2.0}, 3.0)
+    other = line.with_names({"K": "K_1a", "Ec": "Ec_1a"})
+    assert (other.symbol, other.formula) == ("K_1a", "Ec_1a*t/R^2")
+    assert other.inputs == {"Ec_1a": 6.0, "t": 2.0, "R": 2.0}
+    assert not other.disagrees()

@@ -14,6 +14,7 @@ from tunnelcalc.api import Limits, Sections, SectionValues, SheetLine
 from tunnelcalc.builtin.methods.lines import (
     disturbed_ring,
     finite_strain,
+    improved_ring,
     mohr_coulomb,
     softening,
 )
@@ -56,6 +57,11 @@ class Law:
 
     def lines(self, values: SectionValues, pressure_mpa: float) -> Sequence[SheetLine]:
         return self.lines_of(values, pressure_mpa, self.source)
+
+    def lines_with_ring(
+        self, values: SectionValues, ring: api.GroundRing, pressure_mpa: float
+    ) -> Sequence[SheetLine]:
+        return improved_ring.wall_lines(self.name, values, ring, pressure_mpa, self.source)
 
 
 def _named(sections: Sections, names: tuple[str, ...]) -> dict[str, Any]:

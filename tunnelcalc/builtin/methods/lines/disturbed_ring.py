@@ -1,4 +1,4 @@
-"""Ground reaction with a disturbed ring, line by line: what holds depends on what has yielded.
+"""Ground reaction with a ring of other ground, line by line: it depends on what has yielded.
 
 Symbols with _d belong to the ring, those without to the mass beyond it; _w to the state in which
 the wall just yields, _c to the edge of the plastic part of the ring.
@@ -13,20 +13,24 @@ import numpy as np
 from tunnelcalc.api import SectionValues, SheetLine, Working
 from tunnelcalc.builtin.methods.lines import hoek_brown
 from tunnelcalc.builtin.methods.lines.hoek_brown import FLOW_RULE, LAME, MOVEMENT
-from tunnelcalc.builtin.methods.lines.symbols import known, number, row
-from tunnelcalc.ground_reaction.disturbed_ring import DisturbedRingCurve
-from tunnelcalc.ground_reaction.ring_laws import RingZones
+from tunnelcalc.builtin.methods.lines.ring_laws import (
+    OF_MASS,
+    HoekBrownRing,
+    PlasticPart,
+    RingLines,
+)
+from tunnelcalc.builtin.methods.lines.symbols import known, row
+from tunnelcalc.ground_reaction.disturbed_ring import DisturbedRingCurve, RingCurve
 from tunnelcalc.ground_reaction.ring_zones import (
+    AnyZones,
     drop_beside_yielded_mass,
     elastic_drop,
 )
 
-RING_COLUMNS = ("ring_mb", "ring_s", "ring_a", "ring_modulus_mpa")
-OF_RING = {"mb": "mb_d", "s": "s_d", "a": "a_d", "E": "E_d", "G": "G_d", "X": "X_c"}
-OF_MASS = {"pcr": "pcr_u", "p_i": "p_d", "X": "X_u", "u_R": "V", "M_cr": "M_u", "J": "J_u"}
+RING_COLUMNS = ("ring_mb", "ring_s", "ring_a", "ring_modulus_mpa", "disturbed_thickness_m")
+OF_RING = {"E": "E_d", "G": "G_d"}
 AT_YIELD = {name: f"{name}_w" for name in ("D", "p_d", "X_u", "V", "M_u", "J_u")}
 
-CRITERION = "Hoek-Brown criterion in the ring"
 DEVIATOR = "(2*G_d*V + (1 - 2*nu)*D)/(2*(1 - nu))"
 """Half of st - sr of an elastic ring at its outer edge, from the movement of the mass."""
 
@@ -35,35 +39,53 @@ def wall_lines(
     values: SectionValues, pressure_mpa: float, source: str, curve: DisturbedRingCurve
 ) -> Sequence[SheetLine]:
     """The wall under a pressure; `curve` is that of the one section."""
+    of_ring = known(values, RING_COLUMNS)
+    return layered_lines(HoekBrownRing(), values, of_ring, pressure_mpa, source, curve)
+
+
+def layered_lines(
+    law: RingLines,
+    values: SectionValues,
+    of_ring: Mapping[str, float],
+    pressure_mpa: float,
+    source: str,
+    curve: RingCurve,
+) -> Sequence[SheetLine]:
+    """The wall of a ring of any strength under a pressure.
+
+    `of_ring` holds thickness t_d and what differs from the mass, by symbols with _d.
+    """
     zones = curve.zones
     if not float(zones.log_ratio[0]) > 0:
-        return hoek_brown.wall_lines(values, pressure_mpa, source)
-    columns = (*hoek_brown.COLUMNS, *RING_COLUMNS, "radius_m", "disturbed_thickness_m")
-    work = Working({**known(values, columns), "p_i": pressure_mpa}, source)
-    _add_constants(work, zones, number(values, "radius_m"))
-    _add_critical(work, curve)
-    if pressure_mpa >= float(curve.critical_pressure_mpa[0]):
-        _add_elastic_ring(work, zones, pressure_mpa, curve)
+        return law.without_ring(values, pressure_mpa, source)
+    columns = (*law.columns, "radius_m")
+    work = Working({**known(values, columns), **of_ring, "p_i": pressure_mpa}, source)
+    _add_constants(work, law, zones)
+    _add_critical(work, law, curve)
+    moved = float(curve.at(row(pressure_mpa)).closure_ratio[0])
+    if not np.isfinite(moved):
+        work.add("u_R", hoek_brown.BEYOND, "", moved, "", MOVEMENT)
+    elif pressure_mpa >= float(curve.critical_pressure_mpa[0]):
+        _add_elastic_ring(work, law, zones, pressure_mpa, curve)
     else:
-        _add_yielded_ring(work, zones, pressure_mpa, curve)
+        _add_yielded_ring(work, law, zones, pressure_mpa, curve)
     return work.lines
 
 
-def _add_constants(work: Working, zones: RingZones, radius_m: float) -> None:
+def _add_constants(work: Working, law: RingLines, zones: AnyZones) -> None:
     hoek_brown.add_stiffness(work, float(zones.mass.shear_modulus_mpa[0]))
     hoek_brown.add_stiffness(work, float(zones.ring.shear_modulus_mpa[0]), OF_RING)
     formula = "(1 + sin(radians(psi)))/(1 - sin(radians(psi)))"
     dilation = float(zones.ring.dilation[0])
     work.add("Kpsi", "slope of the plastic strains", formula, dilation, "", FLOW_RULE)
     ratio = float(np.exp(zones.log_ratio[0]))
-    work.add("r_d", "outer radius of the ring", "R + t_d", radius_m * ratio, "m", "geometry")
+    radius = work.known["R"] * ratio
+    work.add("r_d", "outer radius of the ring", "R + t_d", radius, "m", "geometry")
     work.add("k_d", "square of R over r_d", "(R/r_d)^2", ratio**-2, "", "geometry")
-    hoek_brown.add_critical_pressure(
-        work, float(zones.mass.critical_pressure_mpa[0]), {"pcr": "pcr_u"}
-    )
+    law.add_critical(work, zones)
 
 
-def _add_critical(work: Working, curve: DisturbedRingCurve) -> None:
+def _add_critical(work: Working, law: RingLines, curve: RingCurve) -> None:
     """The pressure below which the wall yields, with the mass as it then is."""
     zones, critical = curve.zones, float(curve.critical_pressure_mpa[0])
     if not critical > 0:
@@ -72,19 +94,22 @@ def _add_critical(work: Working, curve: DisturbedRingCurve) -> None:
         return
     work.known["pcr"] = critical
     edge = zones.edge(zones.wall_place(row(critical)), row(0.0))
-    strength = float(edge.half_strength[0])
-    formula = "sci*(mb_d*pcr/sci + s_d)^a_d/2"
-    work.add("T_w", "half the strength at the wall", formula, strength, "MPa", CRITERION)
+    strength, formula = float(edge.half_strength[0]), f"{law.strength_at_yield}/2"
+    work.add("T_w", "half the strength at the wall", formula, strength, "MPa", law.criterion)
     formula = "p0 - pcr - T_w*(1 - k_d)"
     drop = float(edge.drop_mpa[0])
     work.add("D_w", "fall of radial stress at r_d", formula, drop, "MPa", LAME)
-    _add_mass(work, zones, drop, AT_YIELD)
-    formula = "k_d*sci*(mb_d*pcr/sci + s_d)^a_d/2 = (2*G_d*V_w + (1 - 2*nu)*D_w)/(2*(1 - nu))"
+    _add_mass(work, law, zones, drop, AT_YIELD)
+    formula = f"k_d*{law.strength_at_yield}/2 = (2*G_d*V_w + (1 - 2*nu)*D_w)/(2*(1 - nu))"
     work.add("pcr", "pressure below which the wall yields, root of", formula, critical, "MPa", LAME)
 
 
 def _add_mass(
-    work: Working, zones: RingZones, drop_mpa: float, more: Mapping[str, str] | None = None
+    work: Working,
+    law: RingLines,
+    zones: AnyZones,
+    drop_mpa: float,
+    more: Mapping[str, str] | None = None,
 ) -> None:
     """p_d and the movement V of the mass at r_d under it."""
     names = {short: (more or {}).get(long, long) for short, long in OF_MASS.items()}
@@ -92,11 +117,11 @@ def _add_mass(
     drop = (more or {}).get("D", "D")
     meaning = "radial stress at r_d"
     work.add(names["p_i"], meaning, f"p0 - {drop}", pressure, "MPa", "equilibrium")
-    hoek_brown.add_wall(work, zones.mass, pressure, names)
+    law.add_mass(work, zones, pressure, names)
 
 
 def _add_elastic_ring(
-    work: Working, zones: RingZones, pressure_mpa: float, curve: DisturbedRingCurve
+    work: Working, law: RingLines, zones: AnyZones, pressure_mpa: float, curve: RingCurve
 ) -> None:
     released = row(float(zones.ring.in_situ_stress_mpa[0]) - pressure_mpa)
     drop, _ = elastic_drop(zones, released)
@@ -109,7 +134,7 @@ def _add_elastic_ring(
         fall = float(drop[0])
         formula = "(p0 - p_i)*k_d/(k_d + (1 - (1 - G_d/G)/(2*(1 - nu)))*(1 - k_d))"
         work.add("D", meaning, formula, fall, "MPa", LAME)
-    _add_mass(work, zones, fall)
+    _add_mass(work, law, zones, fall)
     if yielded:
         formula = f"k_d*D + (1 - k_d)*{DEVIATOR} = k_d*(p0 - p_i)"
         work.add("D", f"{meaning}, root of", formula, fall, "MPa", LAME)
@@ -122,19 +147,15 @@ def _add_elastic_ring(
 
 
 def _add_yielded_ring(
-    work: Working, zones: RingZones, pressure_mpa: float, curve: DisturbedRingCurve
+    work: Working, law: RingLines, zones: AnyZones, pressure_mpa: float, curve: RingCurve
 ) -> None:
     point = curve.at(row(pressure_mpa))
-    moved = float(point.closure_ratio[0])
-    if not np.isfinite(moved):
-        work.add("u_R", hoek_brown.BEYOND, "", moved, "", MOVEMENT)
-        return
-    wholly, depth, edge_power = _add_edge(work, zones, pressure_mpa)
-    edge = zones.edge(row(edge_power), row(depth))
-    fall = float(edge.drop_mpa[0])
+    part = PlasticPart.of_zones(zones, row(pressure_mpa))
+    edge, depth = part.edge, float(part.depth[0])
+    _add_edge(work, law, zones, part)
     interface = zones.interface(edge.drop_mpa)
-    _add_mass(work, zones, fall)
-    if not wholly:
+    _add_mass(work, law, zones, float(edge.drop_mpa[0]))
+    if not part.wholly:
         formula = f"exp(2*(y_c - ln(r_d/R)))*T_c = {DEVIATOR}"
         work.add(
             "y_c", "ln(c/R), c the edge of the plastic part, root of", formula, depth, "", LAME
@@ -147,46 +168,26 @@ def _add_yielded_ring(
     work.add("X_c", "edge over the radius", "exp(y_c)", float(np.exp(depth)), "", "geometry")
     dilating = ""
     if float(zones.ring.dilation[0]) != 1:
-        brittle = bool(zones.ring.s[0] == 0)
-        hoek_brown.add_ring_integral(work, zones.ring, depth, edge_power, OF_RING, brittle)
+        law.add_integral(work, zones, part)
         dilating = " - (Kpsi - 1)*(1 - nu)*J"
-    outside = wholly or float(interface.mass.plastic_ratio[0]) > 1
+    outside = part.wholly or float(interface.mass.plastic_ratio[0]) > 1
     _add_ratio(work, "r_d/R*X_u" if outside else "X_c", float(point.plastic_ratio[0]))
     formula = (
         "(X_c^(Kpsi + 1)*(2*G_d*u_c + (1 - 2*nu)*(p0 - sr_c)) - (1 - 2*nu)*(p0 - p_i)"
         f"{dilating})/(2*G_d)"
     )
-    work.add("u_R", "closure over the radius", formula, moved, "", MOVEMENT)
+    work.add("u_R", "closure over the radius", formula, float(point.closure_ratio[0]), "", MOVEMENT)
 
 
-def _add_edge(work: Working, zones: RingZones, pressure_mpa: float) -> tuple[bool, float, float]:
-    """The edge of the ring's plastic part; whether all of it has yielded, y and N^(1-a) there."""
-    ring = zones.ring
-    power = zones.wall_place(row(pressure_mpa))
-    found, all_of_it = zones.front(power)
-    wholly, depth = bool(all_of_it[0]), float(found[0])
-    edge_power = float((power + (1 - ring.a) * ring.mb * found)[0])
-    edge = zones.edge(row(edge_power), found)
-    formula = "(mb_d*p_i/sci + s_d)^(1 - a_d)"
-    work.add("M_i", "N^(1-a) at the wall", formula, float(power[0]), "", CRITERION)
-    work.known["y_c"] = depth
-    if wholly:
-        work.add("y_c", "all of the ring has yielded", "ln(r_d/R)", depth, "", "geometry")
-    number_ = float(edge_power ** (1 / (1 - ring.a[0])))
-    formula = "(M_i + (1 - a_d)*mb_d*y_c)^(1/(1 - a_d))"
-    work.add("N_c", "N at the edge", formula, number_, "", "equilibrium of the ring")
-    formula = "sci*(N_c - s_d)/mb_d"
-    work.add(
-        "sr_c", "radial stress at the edge", formula, float(edge.radial_mpa[0]), "MPa", CRITERION
-    )
-    formula, strength = "sci*N_c^a_d/2", float(edge.half_strength[0])
-    work.add("T_c", "half the strength at the edge", formula, strength, "MPa", CRITERION)
+def _add_edge(work: Working, law: RingLines, zones: AnyZones, part: PlasticPart) -> None:
+    """The edge of the ring's plastic part."""
+    law.add_edge(work, zones, part)
     formula = "exp(2*(y_c - ln(r_d/R)))"
-    work.add("k_c", "square of c over r_d", formula, float(edge.relief[0]), "", "geometry")
+    relief = float(part.edge.relief[0])
+    work.add("k_c", "square of c over r_d", formula, relief, "", "geometry")
     formula = "p0 - sr_c - T_c*(1 - k_c)"
-    drop = float(edge.drop_mpa[0])
+    drop = float(part.edge.drop_mpa[0])
     work.add("D", "fall of radial stress at r_d", formula, drop, "MPa", LAME)
-    return wholly, depth, edge_power
 
 
 def _add_ratio(work: Working, formula: str, ratio: float) -> None:

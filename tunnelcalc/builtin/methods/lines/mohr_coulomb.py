@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 
 import numpy as np
 
@@ -53,13 +53,12 @@ def wall_lines(
     curve, peak = curve_of(values, brittle), curve_of(values, False)
     add_stiffness(work, float(curve.shear_modulus_mpa[0]))
     add_dilation(work, float(curve.dilation[0]))
-    _add_strength(work, peak, {})
+    add_strength(work, peak, {})
     critical = float(curve.critical_pressure_mpa[0])
-    formula = "max((2*p0 - q)/(2 + k1), 0)"
-    work.add("pcr", "pressure below which the wall yields", formula, critical, "MPa", CRITICAL)
+    add_critical_pressure(work, critical, {})
     if brittle:
-        _add_strength(work, curve, RESIDUAL_NAMES)
-    _add_wall(work, curve, pressure_mpa, RESIDUAL_NAMES if brittle else {})
+        add_strength(work, curve, RESIDUAL_NAMES)
+    add_wall(work, curve, pressure_mpa, RESIDUAL_NAMES if brittle else {})
     return work.lines
 
 
@@ -73,15 +72,23 @@ def elastic_lines(values: SectionValues, pressure_mpa: float, source: str) -> Se
     return work.lines
 
 
-def _add_strength(work: Working, curve: MohrCoulombCurve, names: dict[str, str]) -> None:
+def add_critical_pressure(work: Working, critical_mpa: float, names: Mapping[str, str]) -> None:
+    """The pressure below which the wall yields."""
+    formula, meaning = "max((2*p0 - q)/(2 + k1), 0)", "pressure below which the wall yields"
+    work.add("pcr", meaning, formula, critical_mpa, "MPa", CRITICAL, names)
+
+
+def add_strength(work: Working, curve: MohrCoulombCurve, names: Mapping[str, str]) -> None:
+    """Slope and unconfined strength."""
     slope, strength = float(curve.friction_slope[0]), float(curve.unconfined_strength_mpa[0])
     work.add("k1", "slope of the strength, k - 1", SLOPE, slope, "", CRITERION, names)
     work.add("q", "unconfined strength", STRENGTH, strength, "MPa", CRITERION, names)
 
 
-def _add_wall(
-    work: Working, curve: MohrCoulombCurve, pressure_mpa: float, names: dict[str, str]
+def add_wall(
+    work: Working, curve: MohrCoulombCurve, pressure_mpa: float, names: Mapping[str, str]
 ) -> None:
+    """Plastic ratio and closure of a wall under a pressure `p_i`; `names` as in `hoek_brown`."""
     point = curve.at(row(pressure_mpa))
     ratio, moved = float(point.plastic_ratio[0]), float(point.closure_ratio[0])
     if pressure_mpa >= float(curve.critical_pressure_mpa[0]):
