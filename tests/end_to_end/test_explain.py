@@ -74,7 +74,9 @@ def test_what_the_tables_say_of_a_section_stands_in_its_sheet(at, class_name, wh
     told = ("in_situ_stress_mpa", "mb", "cohesion_mpa", "deformation_modulus_mpa", "closure_mm")
     told += ("installation_closure_mm", "support_pressure_mpa", "supported_closure_mm")
     told += ("supported_closure_pct", "supported_plastic_radius_m", "factor_of_safety")
-    told += ("demand", "capacity")
+    told += ("demand", "capacity", "first_failure_pressure_mpa", "first_failure_closure_mm")
+    told += ("full_mobilisation_pressure_mpa", "full_mobilisation_closure_mm")
+    told += ("missing_pressure_mpa",)
     missing = [
         (table, column, row[column])
         for table in ("sections", "classes", "checks")

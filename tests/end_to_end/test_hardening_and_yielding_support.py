@@ -10,6 +10,8 @@ from pathlib import Path
 import pytest
 from end_to_end.projects import GROUND, PROJECT, UNITS, completed, rows, run, tunnelcalc
 
+from tunnelcalc.cli.main import main
+
 CLASSES = """\
 support_classes:
   - name: young
@@ -78,6 +80,24 @@ support_classes:
         block_thickness_mm: 75
         block_width_mm: 200
         block_modulus_gpa: 10
+"""
+
+GROUTED = """\
+  - name: grouted
+    installed_at_m: 0.5
+    elements:
+      - kind: grouted_rock_bolts
+        diameter_mm: 25
+        length_m: 3.5
+        spacing_around_m: 1.2
+        spacing_along_m: 1.2
+        friction_factor: 0.6
+        bar_strength_mpa: 500
+        bar_strength_is: yield
+        service_factor: 1
+        bond_kn_per_m: 150
+        anchorage_length_m: 1.0
+        pattern_rules: none
 """
 
 
@@ -212,3 +232,33 @@ def damaged(tmp_path: Path, old: str, new: str) -> str:
 )
 def test_what_does_not_fit_together_is_refused(tmp_path, old, new, told):
     assert told in damaged(tmp_path, old, new)
+
+
+LIMITS = (
+    "first_failure_pressure_mpa",
+    "first_failure_closure_mm",
+    "full_mobilisation_pressure_mpa",
+    "full_mobilisation_closure_mm",
+    "missing_pressure_mpa",
+)
+
+
+@pytest.mark.parametrize("name", ["young", "late_invert", "grouted"])
+def test_limits_are_told_in_the_table_and_in_the_sheet(name, tmp_path, capsys):
+    project = write(tmp_path / "project", text().replace("criteria:", GROUTED + "criteria:"))
+    completed(project)
+    folder = project / "runs" / "0001"
+    told = [row for row in rows(folder / "classes.csv") if row["support_class"] == name]
+    assert told
+    for row in told:
+        assert row["missing_pressure_mpa"]
+        if name != "grouted":
+            assert all(row[column] for column in LIMITS)
+        first, full = (float(row[column] or "inf") for column in (LIMITS[1], LIMITS[3]))
+        assert first <= full * (1 + 1e-9)
+    weak = max(told, key=lambda row: float(row["missing_pressure_mpa"]))
+    assert float(weak["missing_pressure_mpa"]) > 0
+    assert weak["first_failure_closure_mm"]
+    main(["explain", str(folder), "--at", weak["chainage_m"], "--class", name])
+    screen = set(capsys.readouterr().out.split())
+    assert {weak[column] for column in LIMITS} <= screen

@@ -10,6 +10,7 @@ from typing import Any
 from tunnelcalc.calculation.line import SheetBlock, SheetLine
 from tunnelcalc.calculation.working import Working
 from tunnelcalc.explain.advance_block import AdvanceBlock, advance_positions
+from tunnelcalc.explain.class_limits import limits_block
 from tunnelcalc.explain.class_sums import (
     DEFINITION,
     add_capacities,
@@ -76,6 +77,8 @@ class CaseBlocks:
         yield from self._advance(planned, found)
         yield self._equilibrium(planned, found, ringed)
         yield from self._checks(planned, found)
+        radius = _number(self.case.values, "radius_m")
+        yield limits_block(planned, found, self.section.project.criteria, radius, self.title)
         yield self._adequacy(planned, found)
 
     def _law(self, pressure_mpa: float, where: str) -> tuple[Lines, tuple[str, ...]]:
@@ -194,7 +197,7 @@ class CaseBlocks:
         terms = []
         for position, item in enumerate(planned.elements):
             own = f"_{position + 1}"
-            acting = _acting_m(found, position) * MM_PER_M
+            acting = float(found.acting_m[position, 0]) * MM_PER_M
             formula = share_formula(found.responses[position], own)
             work.known |= {
                 f"K{own}": float(found.responses[position].stiffness_mpa_per_m[0]),
@@ -315,13 +318,6 @@ class CaseBlocks:
         word = "adequate" if bool(row.adequate[0]) else "not adequate"
         title = f"Class {planned.support_class.name}: adequacy{self.title}"
         return SheetBlock(title, (*work.lines, limit, factor, least), (f"the class is {word}",))
-
-
-def _acting_m(found: Evaluated, position: int) -> float:
-    """Closure from which an element counts: beside one that ages, that of the supported wall."""
-    if found.rest.state is not None:
-        return float(found.acting_m[position, 0])
-    return float(found.rest.closure_m[0] - found.rest.element_moved_m[position, 0])
 
 
 def _number(values: SectionValues, name: str) -> float:

@@ -14,8 +14,10 @@ from tunnelcalc.pipeline.dispatch import Chosen, ChosenSteps, closure_share
 from tunnelcalc.pipeline.element_loads import (
     class_capacities,
     class_columns,
+    credited_capacities_mpa,
     element_columns,
     element_water_mpa,
+    given_at_limit_mpa,
     missing_pressure_mpa,
 )
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
@@ -25,9 +27,9 @@ from tunnelcalc.pipeline.resting_state import (
     RestingState,
     acting_from_m,
     at_rest,
-    system_limits,
 )
 from tunnelcalc.pipeline.ring_curves import curve_of_class
+from tunnelcalc.pipeline.system_limits import limited_elements, system_limits
 from tunnelcalc.plugin.contained_reaction import ElementResponse, contained_reaction
 from tunnelcalc.plugin.contract import ClosureProfileMethod
 from tunnelcalc.plugin.isolation import (
@@ -40,11 +42,10 @@ from tunnelcalc.project import Criteria
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import class_outcome, load_check, rule_check
 from tunnelcalc.support.equilibrium import pressure_at_closure
-from tunnelcalc.support.reaction import GroundRing, PressureOfClosure
+from tunnelcalc.support.reaction import GroundRing
 
 DOES_NOT_COUNT = "does not count: the project does not ask for it under criteria"
 HARDENED = "compared at rest, where what hardens has its final capacity; not while it is young"
-PLATEAU_STEPS = 64
 ROUNDING = 1e-9
 """A check that is at its limit where the reaction is at its own may miss it by rounding."""
 UNRESOLVED = "ground and support have no equilibrium that can be computed"
@@ -85,7 +86,9 @@ class Evaluated:
     """A class and its checks; `rest` and `responses` are the state at rest that they follow from.
 
     `installed_m` (e, n) is the unsupported closure where each element is installed, `acting_m`
-    (e, n) that where it begins to act. `ground` is as the class meets it, with its ring.
+    (e, n) that from which it counts its movement: the unsupported one where it begins to act,
+    with elements that age that of the supported wall. `ground` is as the
+    class meets it, with its ring.
     """
 
     ground: GroundCurve
@@ -97,6 +100,10 @@ class Evaluated:
     acting_m: Array
     credited_mpa: Array
     """(e, n) capacity of each element that counts where capacities are added up."""
+    needed_mpa: Array
+    """(n,) pressure at which the ground of the class rests at the limit of closure."""
+    given_mpa: Array
+    """(e, n) what each element gives there."""
 
 
 def evaluate_class(
@@ -111,6 +118,7 @@ def evaluate_class(
     them. Classes of the same sections may share their tables."""
     needed_mpa = sections["limit_pressure_mpa"]
     radius = sections["radius_m"]
+    limit_m = radius * criteria.closure_pct / 100
     profile = steps.closure_profile
     responses = tuple(
         contained_reaction(item.kind, sections, item.element) for item in planned.elements
@@ -134,13 +142,17 @@ def evaluate_class(
         tables or PressureTables(),
     )
     if any(isinstance(response.reaction, GroundRing) for response in responses):
-        limit_m = radius * criteria.closure_pct / 100
         needed_mpa = pressure_at_closure(ground.curve, radius, limit_m)
     supported = _Supported.of(planned, responses, rest, ground.reason, sections)
     checked = checked_capacities_mpa(supported, planned, responses)
-    credited = credited_capacities_mpa(responses, checked, rest, sections, acting, criteria)
+    credited = credited_capacities_mpa(responses, checked, rest, limit_m)
     checks = _check_rows(supported, planned, responses, credited, criteria)
-    limits = system_limits(ground.curve, radius, responses, checked, acting, rest)
+    elements = limited_elements(
+        ground.curve, supported.sections, planned, responses, checked, rest, supported.standing
+    )
+    limits = system_limits(ground.curve, radius, elements, rest)
+    factor = criteria.factor_of_safety
+    given = given_at_limit_mpa(elements, credited, rest.acting_m, limit_m, factor)
     closure_pct = rest.closure_m / radius * 100
     loads = [check.carries_load for item in planned.elements for check in item.checks]
     outcome = class_outcome(
@@ -164,11 +176,12 @@ def evaluate_class(
         limits.first_failure_closure_m * MM_PER_M,
         limits.full_pressure_mpa,
         limits.full_closure_m * MM_PER_M,
-        missing_pressure_mpa(responses, credited, sections, acting, needed_mpa, criteria),
+        missing_pressure_mpa(needed_mpa, given),
         class_capacities(planned, responses, credited)["class_capacity_mpa"],
     )
     return Evaluated(
-        *(ground.curve, row, tuple(checks), rest, responses, installed, acting, credited)
+        *(ground.curve, row, tuple(checks), rest, responses, installed, rest.acting_m),
+        *(credited, needed_mpa, given),
     )
 
 
@@ -232,6 +245,9 @@ def checked_capacities_mpa(
     for position, (item, response) in enumerate(zip(planned.elements, responses, strict=True)):
         columns = element_columns(supported.rest, response, position, supported.water_mpa[position])
         full = {**columns, "element_pressure_mpa": response.capacity_mpa}
+        path = supported.rest.paths.get(position)
+        if path is not None:
+            full |= path.hard_at(response.capacity_mpa)
         at_capacity = supported.sections.with_columns(full).take(standing)
         share = np.ones(standing.size)
         for check in item.checks:
@@ -243,41 +259,6 @@ def checked_capacities_mpa(
                 share = np.minimum(share, np.where(own >= 1 - ROUNDING, 1.0, own))
         found[position, standing] = response.capacity_mpa[standing] * share
     return found
-
-
-def credited_capacities_mpa(
-    responses: Sequence[ElementResponse],
-    checked_mpa: Array,
-    rest: RestingState,
-    sections: Sections,
-    acting_m: Array,
-    criteria: Criteria,
-) -> Array:
-    """(e, n) capacity of each element that counts where capacities are added up: of an
-    element that gives way no more than the load at which it first does, and nothing of bolts that
-    change the ground. [MPa]"""
-    credited = checked_mpa.copy()
-    limit = sections["radius_m"] * criteria.closure_pct / 100
-    for position, response in enumerate(responses):
-        if isinstance(response.reaction, GroundRing):
-            credited[position] = np.where(np.isnan(checked_mpa[position]), np.nan, 0.0)
-        elif isinstance(response.reaction, PressureOfClosure):
-            at_rest_m = np.maximum(rest.element_moved_m[position], 0)
-            moved = np.maximum(limit - acting_m[position], at_rest_m)
-            given = _first_plateau_mpa(response.reaction, moved)
-            credited[position] = np.minimum(checked_mpa[position], given)
-    return credited
-
-
-def _first_plateau_mpa(reaction: PressureOfClosure, moved_m: Array) -> Array:
-    """(n,) pressure at which an element first goes on without more load, up to a movement (n,);
-    without such a plateau the pressure there. [MPa]"""
-    plateau = np.full(moved_m.size, np.nan)
-    for step in range(1, PLATEAU_STEPS + 1):
-        pressure, slope = reaction.pressure_and_slope(moved_m * step / PLATEAU_STEPS)
-        first = np.isnan(plateau) & (slope == 0) & (pressure > 0)
-        plateau = np.where(first, pressure, plateau)
-    return np.where(np.isnan(plateau), pressure, plateau)
 
 
 def _check_rows(

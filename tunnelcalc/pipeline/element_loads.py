@@ -10,11 +10,14 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.ground_stages import MM_PER_M
 from tunnelcalc.pipeline.plan import PlannedClass
-from tunnelcalc.pipeline.resting_state import RestingState, acting_from_m, pressure_of
+from tunnelcalc.pipeline.resting_state import RestingState, acting_from_m
 from tunnelcalc.plugin.contained_reaction import ElementResponse
-from tunnelcalc.project import Criteria
 from tunnelcalc.sections import Sections, of_element
-from tunnelcalc.support.reaction import PressureOfClosure
+from tunnelcalc.support.element_reactions import ElementReaction
+from tunnelcalc.support.followed import Followed
+from tunnelcalc.support.reaction import GroundRing, PressureOfClosure
+
+PLATEAU_STEPS = 64
 
 
 def element_columns(
@@ -105,20 +108,73 @@ def class_capacities(
     return {"class_capacity_mpa": whole, "ring_capacity_mpa": rings}
 
 
-def missing_pressure_mpa(
+def credited_capacities_mpa(
     responses: Sequence[ElementResponse],
-    credited_mpa: Array,
-    sections: Sections,
-    acting_m: Array,
-    needed_mpa: Array,
-    criteria: Criteria,
+    checked_mpa: Array,
+    rest: RestingState,
+    limit_m: Array,
 ) -> Array:
+    """(e, n) capacity of each element that counts where capacities are added up: of an
+    element that gives way no more than the load at which it first does, and nothing of bolts that
+    change the ground; up to a closure limit (n,) [m]. [MPa]"""
+    credited = checked_mpa.copy()
+    for position, response in enumerate(responses):
+        if isinstance(response.reaction, GroundRing):
+            credited[position] = np.where(np.isnan(checked_mpa[position]), np.nan, 0.0)
+        elif isinstance(response.reaction, PressureOfClosure):
+            at_rest_m = np.maximum(rest.element_moved_m[position], 0)
+            moved = np.maximum(limit_m - rest.acting_m[position], at_rest_m)
+            given = _first_plateau_mpa(response.reaction, moved)
+            credited[position] = np.minimum(checked_mpa[position], given)
+    return credited
+
+
+def _first_plateau_mpa(reaction: PressureOfClosure, moved_m: Array) -> Array:
+    """(n,) pressure at which an element first goes on without more load, up to a movement (n,);
+    without such a plateau the pressure there. [MPa]"""
+    plateau = np.full(moved_m.size, np.nan)
+    for step in range(1, PLATEAU_STEPS + 1):
+        pressure, slope = reaction.pressure_and_slope(moved_m * step / PLATEAU_STEPS)
+        first = np.isnan(plateau) & (slope == 0) & (pressure > 0)
+        plateau = np.where(first, pressure, plateau)
+    return np.where(np.isnan(plateau), pressure, plateau)
+
+
+def given_at_limit_mpa(
+    elements: Sequence[ElementReaction],
+    credited_mpa: Array,
+    acting_m: Array,
+    limit_m: Array,
+    factor_of_safety: float,
+) -> Array:
+    """(e, n) what each element gives when the wall has moved to the limit of closure (n,) [m], no
+    more than its capacity over the required factor. [MPa]
+
+    Of an element that ages it is what it carries at that moment of the advance, by its capacity of
+    that age; where the wall rests before the limit, what it carries once pushed there, hard.
+    """
+    given = np.empty(credited_mpa.shape)
+    for row, element in enumerate(elements):
+        moved = np.maximum(limit_m - acting_m[row], 0)
+        capacity = credited_mpa[row]
+        if isinstance(element, Followed):
+            capacity = np.minimum(capacity, element.capacity_at_mpa(moved))
+        pressure = element.pressure_and_slope(moved)[0]
+        given[row] = np.minimum(pressure, capacity / factor_of_safety)
+    return given
+
+
+def missing_pressure_mpa(needed_mpa: Array, given_mpa: Array) -> Array:
     """(n,) by how much a class falls short at the limit of closure: the pressure that the ground
-    then needs, less what its elements give there, each no more than its capacity over the required
-    factor; 0 where nothing is missing, NaN with elements that age. [MPa]"""
-    limit = sections["radius_m"] * criteria.closure_pct / 100
-    given = np.zeros(sections.count)
-    for response, credited, acts in zip(responses, credited_mpa, acting_m, strict=True):
-        pressure = pressure_of(response.reaction, np.maximum(limit - acts, 0))
-        given = given + np.minimum(pressure, credited / criteria.factor_of_safety)
+    needs to rest there, less what the elements give there (e, n); 0 where nothing is missing. [MPa]
+
+    With elements that age the wall may pass the limit while the face is still near. What is missing
+    is then what the face still holds at that moment (where no element is past its capacity): the
+    pressure to be added before the face moves on. It is on the safe side: with more support the
+    wall would come to the limit later, and find the elements harder. Bolts that change the ground
+    are taken to hold so far: the first failure says where they do not.
+    """
+    given = np.zeros(needed_mpa.size)
+    for own in given_mpa:
+        given = given + own
     return np.maximum(needed_mpa - given, 0)

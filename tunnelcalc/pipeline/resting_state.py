@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 import numpy as np
 
@@ -23,8 +23,8 @@ from tunnelcalc.support.element_reactions import (
     Spring,
 )
 from tunnelcalc.support.equilibrium import equilibrium
+from tunnelcalc.support.followed import Followed
 from tunnelcalc.support.general_equilibrium import GeneralEquilibrium, general_equilibrium
-from tunnelcalc.support.mobilisation import first_failure, full_mobilisation
 from tunnelcalc.support.pressure_table import PressureTable, pressure_table
 from tunnelcalc.support.reaction import (
     AdvanceIncrements,
@@ -36,6 +36,8 @@ from tunnelcalc.support.reaction import (
 
 ADVANCE_STEPS = 64
 """After each element begins to act: leaves about 1e-4 of the load."""
+HARD_AGE_DAYS = 28.0
+"""Of strength and stiffness that a project declares: what the wall meets when it moves on later."""
 
 
 class PressureTables:
@@ -63,13 +65,43 @@ class PressureTables:
 
 @dataclass(frozen=True, slots=True)
 class AgeingPath:
-    """An ageing element along the advance, at k distances of each section, (k, n) each."""
+    """An ageing element along the advance, at k distances of each section, (k, n) each; and how it
+    goes on at the end, when it is hard: stiffness (n,) [MPa/m], capacity (n,) [MPa], age (n,)."""
 
     distance_m: Array
     closure_m: Array
     age_days: Array
     pressure_mpa: Array
     capacity_mpa: Array
+    hard_stiffness_mpa_per_m: Array
+    hard_capacity_mpa: Array
+    hard_age_days: Array
+
+    def followed(self, capacity_mpa: Array, begins_m: Array) -> Followed:
+        """Its reaction, counted from a closure (n,), with a capacity (n,) in the end: while young
+        it has the same share of its own."""
+        share = np.divide(
+            capacity_mpa,
+            self.hard_capacity_mpa,
+            out=np.ones_like(capacity_mpa),
+            where=self.hard_capacity_mpa > 0,
+        )
+        return Followed.of_history(
+            self.closure_m - begins_m,
+            self.pressure_mpa,
+            self.capacity_mpa * np.minimum(share, 1),
+            self.hard_stiffness_mpa_per_m,
+            capacity_mpa,
+        )
+
+    def hard_at(self, pressure_mpa: Array) -> dict[str, Array]:
+        """The columns of `worst` for an element that is hard and carries a pressure (n,). [MPa]"""
+        return {
+            "worst_pressure_mpa": pressure_mpa,
+            "worst_capacity_mpa": self.hard_capacity_mpa,
+            "worst_age_days": self.hard_age_days,
+            "worst_distance_m": self.distance_m[-1],
+        }
 
     def worst(self, water_mpa: Array) -> dict[str, Array]:
         """The state (n,) where it is used most for its capacity of the same age. Water (n,) adds
@@ -109,7 +141,8 @@ class RestingState:
     """Ground and class at rest on n sections.
 
     (n,): `support_pressure_mpa`, `closure_m`, `plastic_ratio`, `converged`; (e, n):
-    `element_pressure_mpa`, `element_moved_m`.
+    `element_pressure_mpa`, `element_moved_m`, and `acting_m`, the closure from which each
+    element counts its movement.
     """
 
     support_pressure_mpa: Array
@@ -117,9 +150,9 @@ class RestingState:
     plastic_ratio: Array
     element_pressure_mpa: Array
     element_moved_m: Array
+    acting_m: Array
     converged: Array
-    state: GeneralEquilibrium | None
-    """The equilibrium of elements that do not age; None with those that do."""
+    state: GeneralEquilibrium
     paths: dict[int, AgeingPath]
     """By the position of each element that ages."""
     advanced: Advanced | None = None
@@ -160,7 +193,7 @@ def _of_constant(
     curve: GroundCurve, radius_m: Array, reactions: Sequence[Reaction], acting_m: Array
 ) -> RestingState:
     """Elements that do not age: in the usual case all are springs, which has its own fast way."""
-    elements = [_element(reaction, radius_m) for reaction in reactions]
+    elements = [element_of(reaction, radius_m) for reaction in reactions]
     if all(_is_plain_spring(reaction) for reaction in reactions):
         stiffness = [r.stiffness_mpa_per_m for r in reactions if isinstance(r, LinearSpring)]
         plain = equilibrium(curve, radius_m, np.array(stiffness).reshape(acting_m.shape), acting_m)
@@ -176,77 +209,35 @@ def _of_constant(
         )
     else:
         rest = general_equilibrium(curve, radius_m, elements, acting_m)
-    return RestingState(
-        rest.support_pressure_mpa,
-        rest.closure_m,
-        rest.plastic_ratio,
-        rest.element_pressure_mpa,
-        rest.element_moved_m,
-        rest.converged,
-        rest,
-        {},
-    )
+    return _resting(rest, acting_m, {})
 
 
-@dataclass(frozen=True, slots=True)
-class SystemLimits:
-    """Pressure [MPa] and closure [m] when the first element reaches its limit, and at full
-    mobilisation, (n,) each; NaN where they are not reached, or not defined: with elements that age
-    or change the ground."""
-
-    first_failure_pressure_mpa: Array
-    first_failure_closure_m: Array
-    full_pressure_mpa: Array
-    full_closure_m: Array
-
-
-def system_limits(
-    curve: GroundCurve,
-    radius_m: Array,
-    responses: Sequence[ElementResponse],
-    capacity_mpa: Array,
+def _resting(
+    state: GeneralEquilibrium,
     acting_m: Array,
-    rest: RestingState,
-) -> SystemLimits:
-    """The limits of a class whose elements have these capacities (e, n)."""
-    unknown = np.full(radius_m.size, np.nan)
-    reactions = [response.reaction for response in responses]
-    if rest.state is None or any(isinstance(reaction, GroundRing) for reaction in reactions):
-        return SystemLimits(unknown, unknown, unknown, unknown)
-    elements = [
-        _element(_with_capacity(reaction, capacity), radius_m)
-        for reaction, capacity in zip(reactions, capacity_mpa, strict=True)
-    ]
-    failure = first_failure(curve, radius_m, elements, acting_m, rest.state)
-    full = full_mobilisation(curve, radius_m, elements, acting_m, rest.state)
-    return SystemLimits(
-        *(
-            np.where(np.isfinite(values), values, np.nan)
-            for limit in (failure, full)
-            for values in (limit.support_pressure_mpa, limit.closure_m)
-        )
+    paths: dict[int, AgeingPath],
+    advanced: Advanced | None = None,
+) -> RestingState:
+    return RestingState(
+        state.support_pressure_mpa,
+        state.closure_m,
+        state.plastic_ratio,
+        state.element_pressure_mpa,
+        state.element_moved_m,
+        acting_m,
+        state.converged,
+        state,
+        paths,
+        advanced,
     )
-
-
-def _with_capacity(reaction: Reaction, capacity_mpa: Array) -> Reaction:
-    if isinstance(reaction, LinearSpring | PressureOfClosure):
-        return replace(reaction, capacity_mpa=capacity_mpa)
-    return reaction
-
-
-def pressure_of(reaction: Reaction, moved_m: Array) -> Array:
-    """(n,) pressure of an element that does not age for a movement (n,) since it acts; NaN of one
-    that does. [MPa]"""
-    if isinstance(reaction, AdvanceIncrements):
-        return np.full(moved_m.shape, np.nan)
-    return _element(reaction, np.ones_like(moved_m)).pressure_and_slope(moved_m)[0]
 
 
 def _is_plain_spring(reaction: Reaction) -> bool:
     return isinstance(reaction, LinearSpring) and reaction.beyond == "not_declared"
 
 
-def _element(reaction: Reaction, radius_m: Array) -> ElementReaction:
+def element_of(reaction: Reaction, radius_m: Array) -> ElementReaction:
+    """A reaction that does not age, as the equilibrium needs to know it."""
     if isinstance(reaction, LinearSpring):
         stiffness, capacity = reaction.stiffness_mpa_per_m, reaction.capacity_mpa
         if reaction.beyond == "yields":
@@ -289,26 +280,27 @@ def _of_advance(
         if isinstance(reaction, AdvanceIncrements):
             elements.append(Ageing(_stiffness_of(reaction), np.full(count, float(installed)), acts))
         else:
-            elements.append(Constant(_element(reaction, radius), acts))
+            elements.append(Constant(element_of(reaction, radius), acts))
     table = tables.of(curve, sections, share)
     rate = np.full(count, advance_m_per_day)
     found = advance(curve, radius, table, share, elements, rate, Begins.WALL, ADVANCE_STEPS)
     closure = np.where(found.converged, found.closure_m[-1], np.nan)
-    return RestingState(
+    moved = closure - found.begins_at_m
+    state = GeneralEquilibrium(
         found.support_pressure_mpa,
         closure,
         found.plastic_ratio,
         found.element_pressure_mpa[:, -1],
-        closure - found.begins_at_m,
+        np.zeros(moved.shape, dtype=np.int8),
+        moved,
         found.converged,
-        None,
-        {
-            position: _path(found, position, reaction)
-            for position, reaction in enumerate(reactions)
-            if isinstance(reaction, AdvanceIncrements)
-        },
-        Advanced(found, table),
     )
+    paths = {
+        position: _path(found, position, reaction)
+        for position, reaction in enumerate(reactions)
+        if isinstance(reaction, AdvanceIncrements)
+    }
+    return _resting(state, found.begins_at_m, paths, Advanced(found, table))
 
 
 def _stiffness_of(reaction: AdvanceIncrements) -> Callable[[Array], Array]:
@@ -317,10 +309,14 @@ def _stiffness_of(reaction: AdvanceIncrements) -> Callable[[Array], Array]:
 
 def _path(found: Advance, position: int, reaction: AdvanceIncrements) -> AgeingPath:
     capacity = np.stack([reaction.at_age(age)[1] for age in found.age_days[position]])
+    hard_age = np.maximum(found.age_days[position, -1], HARD_AGE_DAYS)
     return AgeingPath(
         found.distance_m,
         found.closure_m,
         found.age_days[position],
         found.element_pressure_mpa[position],
         capacity,
+        reaction.at_age(hard_age)[0],
+        reaction.final_capacity_mpa,
+        hard_age,
     )

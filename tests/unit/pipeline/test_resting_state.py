@@ -57,7 +57,9 @@ def test_ageing_elements_give_the_same_bits_for_any_chunk(chunk):
 
     whole = run(made.ground)
     pieces = [run(made.ground.take(slice(i, i + chunk))) for i in range(0, 4, chunk)]
-    for name in ("class_closure_mm", "class_support_pressure_mpa", "check_demand"):
+    columns = ("class_closure_mm", "class_support_pressure_mpa", "check_demand")
+    columns += ("class_first_failure_closure_mm", "class_full_pressure_mpa")
+    for name in (*columns, "class_missing_pressure_mpa"):
         together = np.concatenate([piece[name] for piece in pieces])
         assert together.tobytes() == whole[name].tobytes()
 
