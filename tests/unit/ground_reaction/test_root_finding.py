@@ -85,13 +85,23 @@ def test_nan_is_not_converged_and_spoils_no_other():
     assert found.value[0] == alone.value[0]
 
 
-def test_too_slow_a_function_is_marked_and_not_passed_off_as_a_root():
-    """A bracket of 600 decades cannot be halved down to its low end in 100 steps."""
+def test_a_jump_beside_zero_ends_the_search_instead_of_using_up_its_steps():
+    """Rounding turns a very steep closure into steps: the function jumps at 3e-19 of its bracket,
+    and has no slope that tells where."""
 
-    def function(x, index):
-        return np.where(x < 1e-300, -1.0, 1.0), np.zeros_like(x)
+    def staircase(x, index):
+        return np.where(x < 3e-19, -1e5, x), np.ones_like(x)
 
-    found = increasing_roots(function, np.zeros(1), np.full(1, 1e300), np.full(1, 1e299))
+    found = increasing_roots(staircase, np.zeros(1), np.ones(1), np.full(1, 0.5))
+    assert found.converged[0]
+    assert found.value[0] == pytest.approx(3e-19, abs=2e-24)
+
+
+def test_what_is_not_known_in_the_middle_of_the_bracket_is_not_a_root():
+    def unknown(x, index):
+        return np.full_like(x, np.nan), np.ones_like(x)
+
+    found = increasing_roots(unknown, np.zeros(1), np.ones(1), np.full(1, 0.5))
     assert not found.converged[0]
 
 
