@@ -134,8 +134,7 @@ def _ended(arguments: list[str]) -> int:
     try:
         return main(arguments)
     except SystemExit as ended:
-        assert isinstance(ended.code, int)
-        return ended.code
+        return int(ended.code or 0)
     except Exception:
         traceback.print_exc()
         return 1
