@@ -9,7 +9,7 @@ import numpy as np
 from tunnelcalc import api
 from tunnelcalc_shotcrete.early import governing, ordinates
 from tunnelcalc_shotcrete.kind import Shotcrete
-from tunnelcalc_shotcrete.laws import hardening_law
+from tunnelcalc_shotcrete.laws import HardeningLaw, hardening_law
 from tunnelcalc_shotcrete.lines import early_lines, stress_lines, young_stress_lines
 from tunnelcalc_shotcrete.ring import ring_of
 
@@ -45,8 +45,9 @@ class YoungHoopStress:
 
     name = "young_hoop_stress"
     meaning = (
-        "hoop stress against the strength at the same age, where it is worst along the advance; "
-        "compared from the first age on at which the hardening law is trusted"
+        "hoop stress against the strength at the same age, where it is worst along the advance, "
+        "from the first age on at which the hardening law is trusted, with what the ring carries "
+        "then; where a law asks for tests up to days of age, load before is not evaluated"
     )
     applies_to = APPLIES_TO
     unit = "MPa"
@@ -63,7 +64,8 @@ class YoungHoopStress:
         # A ring that never carries anything has no worst age: its strength is the final one.
         unloaded = (pressure == 0) & np.isnan(age)
         share = law.compared_strength_ratio(np.where(unloaded, np.inf, age))
-        return api.Evaluation(stress, ring.strength_mpa * share)
+        early = (sections["early_pressure_mpa"] > 0) & law.tests_before
+        return api.Evaluation(stress, ring.strength_mpa * share, early, loaded(law), younger(law))
 
     def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
         found = self.evaluate(api.one_section(values), element)
@@ -94,3 +96,18 @@ class EarlyStrength:
 
     def lines(self, values: api.SectionValues, element: api.Element) -> Sequence[api.SheetLine]:
         return early_lines(element)
+
+
+def loaded(law: HardeningLaw) -> str:
+    """Why a ring that carries load before the first age of a law is not evaluated."""
+    return (
+        f"the ring carries load before {law.first_age_words}, from which {law.name} is trusted: "
+        "take another law, or close the ring later (closed_ring: from_distance)"
+    )
+
+
+def younger(law: HardeningLaw) -> str:
+    """What the check leaves open where it is evaluated."""
+    if law.tests_before:
+        return ""
+    return f"compared from {law.first_age_words} on, as {law.name} is trusted; not before"

@@ -109,7 +109,8 @@ class Shotcrete:
         if law is None:
             return api.LinearSpring(*ring.spring(radius), acts_from_m=from_m)
         _, final = ring.spring(radius)
-        return api.AdvanceIncrements(partial(ring.at_age, radius, law), final, from_m)
+        at_age = partial(ring.at_age, radius, law)
+        return api.AdvanceIncrements(at_age, final, from_m, law.first_age_days)
 
     def amounts(self, sections: api.Sections, element: api.Element) -> Iterable[api.Amount]:
         radius, thickness = sections["radius_m"], element.number("thickness_mm") * M_PER_MM

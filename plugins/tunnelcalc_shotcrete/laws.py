@@ -1,9 +1,12 @@
 """Hardening laws by the names that a project may write, and the age from which each is trusted.
 
 Stiffness follows the law from age 0 on, so that young shotcrete takes its load. Strength is
-compared with the load from the first age of the law on. Nothing is lost by that: the load never
-falls while the face moves away, so that what was carried before is carried at the first age too.
-Before it the capacity is that of the first age, and never 0.
+compared with the load from the first age of the law on. The load never falls while the face moves
+away, so that what was carried before is carried at the first age too, and is compared there. But
+the ring was weaker before, and by how much the law does not say. A law that is trusted from hours
+on is used so, and the rows of the check tell it. One whose source asks for tests up to an age of
+days says nothing about a ring that carries load before: there the check is not evaluated.
+Capacities of the reaction before the first age are that of the first age, and never 0.
 """
 
 from __future__ import annotations
@@ -46,6 +49,7 @@ class HardeningLaw:
 
     Both functions take ages (n,) [day] and return shares (n,) [-]; that of strength holds from
     `first_age_days` on, that of stiffness at any age. `coefficient` is s of EN 1992-1-1.
+    `tests_before` says that the source asks for tests at younger ages.
     """
 
     name: str
@@ -54,6 +58,15 @@ class HardeningLaw:
     strength_ratio: Callable[[Array], Array]
     modulus_ratio: Callable[[Array], Array]
     coefficient: float = float("nan")
+    tests_before: bool = False
+
+    @property
+    def first_age_words(self) -> str:
+        """The first age in a unit that reads well."""
+        hours = self.first_age_days * HOURS_PER_DAY
+        if hours < 1:
+            return f"{hours * 60:g} min"
+        return f"{hours:g} h" if hours < HOURS_PER_DAY else f"{self.first_age_days:g} days"
 
     def compared_age_days(self, age_days: Array) -> Array:
         """Age (n,) of the strength that a load at an age (n,) is compared with. [day]"""
@@ -92,6 +105,7 @@ def hardening_law(element: api.Element) -> HardeningLaw | None:
             partial(eurocode_strength_ratio, cement_coefficient=coefficient),
             partial(continued_eurocode_modulus_ratio, cement_coefficient=coefficient),
             coefficient,
+            tests_before=True,
         )
     return None
 

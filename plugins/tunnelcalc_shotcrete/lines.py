@@ -127,6 +127,9 @@ def young_stress_lines(
     distance = float(values["worst_distance_m"])
     work.add("x_w", "distance behind the face, where it is worst", "", distance, "m", ALONG)
     work.add("p", "pressure there, with water: see the steps", "", pressure, "MPa", ALONG)
+    early = float(values["early_pressure_mpa"])
+    meaning = f"pressure at {law.first_age_words}, with water; younger ages are not compared"
+    work.add("p_0", meaning, "", early, "MPa", ALONG)
     _add_stress(work, ring, radius, pressure)
     strength = float(found.capacity[0])
     if np.isnan(age):

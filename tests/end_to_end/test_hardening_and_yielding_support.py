@@ -43,7 +43,7 @@ support_classes:
         hardening: en_1992_1_1
         cement_class: R
         closed_ring: from_distance
-        closed_at_m: 8
+        closed_at_m: 9                  # after the 3 days from which the code gives strengths
         reinforcement: mesh
       - kind: lattice_girders
         bars: three
@@ -213,7 +213,7 @@ def damaged(tmp_path: Path, old: str, new: str) -> str:
             "has no use with hardening: none",
             id="early-strength-without-a-law",
         ),
-        pytest.param("closed_at_m: 8", "closed_at_m: 0.5", "before the installation", id="closed"),
+        pytest.param("closed_at_m: 9", "closed_at_m: 0.5", "before the installation", id="closed"),
         pytest.param(
             "slip_load_kn: 300", "slip_load_kn: 3000", "before the joints slide", id="slip"
         ),
@@ -232,6 +232,30 @@ def damaged(tmp_path: Path, old: str, new: str) -> str:
 )
 def test_what_does_not_fit_together_is_refused(tmp_path, old, new, told):
     assert told in damaged(tmp_path, old, new)
+
+
+@pytest.mark.parametrize("rate", ["2", "40"])
+def test_a_ring_loaded_before_its_law_is_trusted_never_passes(tmp_path, rate):
+    """EN 1992-1-1:2004, 3.1.2(5): strengths up to 3 days are based on tests."""
+    at_once = (
+        text()
+        .replace("closed_ring: from_distance", "closed_ring: at_installation")
+        .replace("        closed_at_m: 9    ", "        #")
+        .replace("advance_m_per_day: 2.5", f"advance_m_per_day: {rate}")
+    )
+    project = write(tmp_path / "project", at_once)
+    assert run(project).returncode == 3
+    found = checks(project / "runs" / "0001", support_class="late_invert")
+    found = [row for row in found if row["check"] == "young_hoop_stress"]
+    early = [row for row in found if row["outcome"] == "not_evaluated"]
+    assert early
+    assert all("carries load before 3 days" in row["reason"] for row in early)
+    # What rests before the ring is loaded at all has nothing to compare.
+    assert all(row in early or float(row["demand"]) == 0 for row in found)
+    classes = rows(project / "runs" / "0001" / "classes.csv")
+    wrong = {row["chainage_m"] for row in early}
+    of_class = [r for r in classes if r["support_class"] == "late_invert"]
+    assert {r["adequate"] for r in of_class if r["chainage_m"] in wrong} == {"no"}
 
 
 LIMITS = (

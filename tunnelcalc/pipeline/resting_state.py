@@ -38,6 +38,8 @@ ADVANCE_STEPS = 64
 """After each element begins to act: leaves about 1e-4 of the load."""
 HARD_AGE_DAYS = 28.0
 """Of strength and stiffness that a project declares: what the wall meets when it moves on later."""
+SAME_AGE = 1e-9
+"""Of an age: what differs by less is rounding of distance over speed."""
 
 
 class PressureTables:
@@ -76,6 +78,7 @@ class AgeingPath:
     hard_stiffness_mpa_per_m: Array
     hard_capacity_mpa: Array
     hard_age_days: Array
+    trusted_from_days: float = 0.0
 
     def followed(self, capacity_mpa: Array, begins_m: Array) -> Followed:
         """Its reaction, counted from a closure (n,), with a capacity (n,) in the end: while young
@@ -101,6 +104,7 @@ class AgeingPath:
             "worst_capacity_mpa": self.hard_capacity_mpa,
             "worst_age_days": self.hard_age_days,
             "worst_distance_m": self.distance_m[-1],
+            "early_pressure_mpa": np.zeros_like(pressure_mpa),
         }
 
     def worst(self, water_mpa: Array) -> dict[str, Array]:
@@ -113,7 +117,18 @@ class AgeingPath:
             "worst_capacity_mpa": self.capacity_mpa[at],
             "worst_age_days": self.age_days[at],
             "worst_distance_m": self.distance_m[at],
+            "early_pressure_mpa": self.early_pressure_mpa(water_mpa),
         }
+
+    def early_pressure_mpa(self, water_mpa: Array) -> Array:
+        """(n,) with water (n,), at the age from which its capacity is trusted. [MPa]
+
+        The load never falls while the face moves away: nothing is 0 here that was carried before.
+        """
+        early = self.age_days <= self.trusted_from_days * (1 + SAME_AGE)
+        pressure = self._with_water_mpa(water_mpa)
+        unknown = np.any(np.isnan(pressure), axis=0)
+        return np.where(unknown, np.nan, np.max(np.where(early, pressure, 0), axis=0))
 
     def worst_state(self, water_mpa: Array) -> Array:
         """(n,) its number along the advance."""
@@ -278,7 +293,10 @@ def _of_advance(
     for reaction, installed in zip(reactions, installed_at_m, strict=True):
         acts = np.full(count, acting_from_m(installed, reaction))
         if isinstance(reaction, AdvanceIncrements):
-            elements.append(Ageing(_stiffness_of(reaction), np.full(count, float(installed)), acts))
+            trusted = reaction.trusted_from_days
+            elements.append(
+                Ageing(_stiffness_of(reaction), np.full(count, float(installed)), acts, trusted)
+            )
         else:
             elements.append(Constant(element_of(reaction, radius), acts))
     table = tables.of(curve, sections, share)
@@ -319,4 +337,5 @@ def _path(found: Advance, position: int, reaction: AdvanceIncrements) -> AgeingP
         reaction.at_age(hard_age)[0],
         reaction.final_capacity_mpa,
         hard_age,
+        reaction.trusted_from_days,
     )

@@ -90,13 +90,14 @@ class Evaluation:
     A rule may leave sections out that lack an optional input: `left_out` marks them, and
     `left_out_reason` says what is missing. They are listed as not evaluated and do not count
     against the class. A load check that leaves a section out makes the class not adequate
-    there.
+    there. `note` stands beside every row that is evaluated.
     """
 
     demand: Array
     capacity: Array
     left_out: Array | None = None
     left_out_reason: str = ""
+    note: str = ""
 
 
 class SupportCheck(Protocol):
@@ -104,7 +105,9 @@ class SupportCheck(Protocol):
 
     `evaluate` finds in the sections, besides the ground and the radius: `support_pressure_mpa`,
     `supported_closure_mm`, `supported_plastic_radius_m` of the class, and `element_pressure_mpa`,
-    `element_capacity_mpa` of the element.
+    `element_capacity_mpa` of the element. Of one that ages also `worst_pressure_mpa`,
+    `worst_capacity_mpa`, `worst_age_days` and `worst_distance_m`, where along the advance it is
+    used most, and `early_pressure_mpa`, with water, at the age from which its capacity is trusted.
     """
 
     @property

@@ -92,7 +92,7 @@ def contained_evaluation(
 ) -> tuple[Contained, Array]:
     """Demand and capacity of a check, and the mask of sections that a rule leaves out.
 
-    A row that is left out is NaN and carries the check's own reason. Only rules may leave rows
+    A row that is left out is NaN and carries the check's own reason, others its note. Only rules may leave rows
     out: in a load check they stay marked as faults.
     """
 
@@ -115,6 +115,7 @@ def _contained_check(
 ) -> tuple[Contained, Array]:
     def call(part: Sections) -> Sequence[Array]:
         evaluation = evaluate(part)
+        notes.append(str(evaluation.note))
         if evaluation.left_out is None:
             return (evaluation.demand, evaluation.capacity, np.zeros(part.count))
         left_out = np.asarray(evaluation.left_out, dtype=float)
@@ -127,12 +128,15 @@ def _contained_check(
         )
 
     reasons: list[str] = []
+    notes: list[str] = []
     found = contained(call, sections, ("demand", "capacity", "left_out"))
     left_out = found.values[2] > 0
     values, reason = found.values[:2], found.reason
     if np.any(left_out):
         values[:, left_out] = np.nan
         reason[left_out] = reasons[0]
+    if any(notes):
+        reason = np.where(reason == NO_REASON, notes[-1], reason).astype(object)
     return Contained(values, reason), left_out & (not carries_load)
 
 

@@ -94,7 +94,8 @@ def advance(
     elements : one or more.
     advance_rate_m_per_day : (n,) above 0; inf for a face that is far at once. [m/day]
     begins : the closure from which the elements count their movement.
-    steps : how many after each ageing element begins to act; each constant one adds one.
+    steps : how many after each ageing element begins to act; each constant one adds one, and so
+        does each age from which a capacity is trusted.
 
     Returns
     -------
@@ -125,7 +126,14 @@ def advance(
     every = np.arange(count)
     starts = [element.acts_from_m for element in elements]
     graded = [isinstance(element, Ageing) for element in elements]
-    distance, within = distances_along(share, radius_m, starts, graded, steps)
+    marked = [
+        element.trusted_at_m(advance_rate_m_per_day)
+        for element in elements
+        if isinstance(element, Ageing) and element.trusted_from_days > 0
+    ]
+    distance, within = distances_along(
+        share, radius_m, [*starts, *marked], [*graded, *(False for _ in marked)], steps
+    )
     last = len(distance) - 1
     unsupported = table.free_closure_m * np.stack([share(x) for x in distance])
     unsupported[last] = table.free_closure_m

@@ -35,7 +35,8 @@ def distances_along(
     ----------
     share : share (n,) of the final closure for distances (n,) behind the face [m].
     radius_m : (n,) R. [m]
-    starts_m : one or more, (n,) where an element begins to act, 0 or more. [m]
+    starts_m : one or more, (n,) where an element begins to act, or a state is asked for besides,
+        0 or more. [m]
     graded : for each start, whether steps are laid from there on.
     steps : how many from each of these.
 

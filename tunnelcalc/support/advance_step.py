@@ -20,11 +20,20 @@ class Ageing:
     `stiffness_at` takes ages (n,) [day] and returns stiffness (n,) >= 0 [MPa/m];
     `installed_at_m` (n,) is the distance behind the face where its age is 0, `acts_from_m` (n,)
     that from which it reacts, as of a ring that is closed later; not less than the first. [m]
+    Its state at `trusted_from_days` is among those computed, unless 0.
     """
 
     stiffness_at: Callable[[Array], Array]
     installed_at_m: Array
     acts_from_m: Array
+    trusted_from_days: float = 0.0
+
+    def trusted_at_m(self, advance_m_per_day: Array) -> Array:
+        """Distance (n,) behind the face at which it has that age; where it acts later, or for a
+        face that is far at once, where it begins to act. [m]"""
+        days = np.where(np.isfinite(advance_m_per_day), self.trusted_from_days, 0)
+        rate = np.where(np.isfinite(advance_m_per_day), advance_m_per_day, 0)
+        return np.maximum(self.installed_at_m + days * rate, self.acts_from_m)
 
     def age_days(self, distance_m: Array, advance_rate_m_per_day: Array) -> Array:
         """Age at distances (n,) or (k, n) behind the face [m]; 0 before installation. [day]"""

@@ -58,12 +58,15 @@ class AdvanceIncrements:
     `at_age(age_days)` takes (n,) days since installation, 0 and very large ones too, and returns
     stiffness (n,) [MPa/m] and capacity (n,) [MPa] at that age; `final_capacity_mpa` is the one
     that the element is in the end checked against. The class must state its rate of advance.
+    `trusted_from_days` is the first age at which the capacity is known; checks find the pressure
+    on the element at that age.
     """
 
     form: ClassVar[str] = "advance_increments"
     at_age: Callable[[Array], tuple[Array, Array]]
     final_capacity_mpa: Array
     acts_from_m: float = 0.0
+    trusted_from_days: float = 0.0
 
 
 @dataclass(frozen=True, slots=True)

@@ -30,7 +30,13 @@ STATE = (
     "element_water_mpa",
     "element_acts_from_m",
 )
-AGEING = ("worst_pressure_mpa", "worst_capacity_mpa", "worst_age_days", "worst_distance_m")
+AGEING = (
+    "worst_pressure_mpa",
+    "worst_capacity_mpa",
+    "worst_age_days",
+    "worst_distance_m",
+    "early_pressure_mpa",
+)
 """What stands in the sections for every element, and for one that ages besides."""
 
 

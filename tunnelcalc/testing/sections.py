@@ -100,6 +100,7 @@ def sections_at_rest(
             "worst_capacity_mpa": capacity,
             "worst_age_days": np.full(RADII_M.shape, 28.0),
             "worst_distance_m": 4 * RADII_M,
+            "early_pressure_mpa": np.zeros(RADII_M.shape),
             "ring_capacity_mpa": capacity,
             "class_capacity_mpa": capacity,
         }

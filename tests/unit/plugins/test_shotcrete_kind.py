@@ -168,8 +168,12 @@ class TestHardening:
 class TestYoungStress:
     CHECK = YoungHoopStress()
 
-    def worst(self, pressure, age):
-        columns = {"worst_pressure_mpa": pressure, "worst_age_days": age}
+    def worst(self, pressure, age, early=(0.0, 0.0)):
+        columns = {
+            "worst_pressure_mpa": pressure,
+            "worst_age_days": age,
+            "early_pressure_mpa": early,
+        }
         return SECTIONS.with_columns({name: np.array(v) for name, v in columns.items()})
 
     def test_only_hardening_shotcrete_is_checked_while_young(self):
@@ -187,6 +191,21 @@ class TestYoungStress:
         element = hardening("chang_stille_1993")
         found = self.CHECK.evaluate(self.worst([0.2, 0.2], [0.0, 0.25]), element)
         assert found.capacity[0] == found.capacity[1] == pytest.approx(30 * 0.156, abs=0.016)
+
+    def test_load_before_the_age_from_which_the_code_holds_is_not_evaluated(self):
+        """EN 1992-1-1:2004, 3.1.2(5): strengths up to 3 days are based on tests."""
+        given = self.worst([0.2, 0.2], [3.0, 7.0], [1e-9, 0.0])
+        found = self.CHECK.evaluate(given, hardening("en_1992_1_1"))
+        assert found.left_out.tolist() == [True, False]
+        assert "carries load before 3 days" in found.left_out_reason
+
+    @pytest.mark.parametrize(
+        ("law", "first"), [("chang_stille_1993", "6 h"), ("meschke_1996", "6 min")]
+    )
+    def test_laws_from_hours_on_tell_what_is_not_compared(self, law, first):
+        found = self.CHECK.evaluate(self.worst([0.2, 0.2], [1, 1], [0.1, 0.0]), hardening(law))
+        assert not np.any(found.left_out)
+        assert f"compared from {first} on" in found.note
 
     def test_demand_over_capacity_is_that_of_the_reaction(self):
         """Check and reaction speak of the same limit at every age."""

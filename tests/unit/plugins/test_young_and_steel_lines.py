@@ -65,6 +65,7 @@ def test_young_stress_at_any_age(law, age, theory):
         "radius_m": 4.0,
         "worst_pressure_mpa": 0.2,
         "worst_age_days": age,
+        "early_pressure_mpa": 0.0,
         "worst_distance_m": 3.0,
     }
     lines = YoungHoopStress().lines(values, element)
@@ -81,6 +82,7 @@ def test_a_ring_that_carries_nothing_has_lines_too():
         "radius_m": 4.0,
         "worst_pressure_mpa": 0.0,
         "worst_age_days": np.nan,
+        "early_pressure_mpa": 0.0,
         "worst_distance_m": np.nan,
     }
     lines = YoungHoopStress().lines(values, ring(hardening="meschke_1996"))
