@@ -177,6 +177,10 @@ class StageError(Exception):
     """A stage of the pipeline needs a column that neither the inputs nor an earlier stage give."""
 
 
+class PluginError(Exception):
+    """A plugin failed where nothing can be told without it."""
+
+
 class DuplicateNameError(Exception):
     """Two plugins offer the same thing under one name."""
 

@@ -84,6 +84,11 @@ class SupportClass:
     """Rate at which the face moves on; NaN where the project does not say."""
 
 
+AddedWords = Mapping[tuple[str, str], Mapping[str, Mapping[str, float | str]]]
+"""Words that tables of a project add to a choice, by kind and parameter, each with the values of
+the element that it stands for."""
+
+
 @dataclass(frozen=True, slots=True)
 class Criteria:
     """What makes a class adequate."""
@@ -171,6 +176,7 @@ class Project:
     warnings: tuple[str, ...]
     files: tuple[InputFile, ...]
     flags: FlagSettings = field(default_factory=FlagSettings)
+    words: AddedWords = field(default_factory=dict)
 
     @property
     def class_names(self) -> tuple[str, ...]:

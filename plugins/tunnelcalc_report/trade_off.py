@@ -180,7 +180,9 @@ def _closure(axes: Axes, trade_off: api.TradeOff) -> None:
 
 
 def _length(axes: Axes, trade_off: api.TradeOff) -> None:
-    looks = {**LENGTH.looks(), **({"linestyle": "none"} if trade_off.of_words else {})}
+    # A section is adequate or not: the length does not change evenly from value to value.
+    between = {"linestyle": "none"} if trade_off.of_words else {"drawstyle": "steps-mid"}
+    looks = {**LENGTH.looks(), **between}
     axes.plot(_positions(trade_off), adequate_m(trade_off), **looks, clip_on=False, zorder=4)
     whole = float(np.sum(trade_off.length_m))
     axes.axhline(whole, **OF_LIMIT.looks())

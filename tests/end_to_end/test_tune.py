@@ -142,7 +142,7 @@ def test_a_thicker_ring_helps_from_the_edge_on(advised, tmp_path):
     assert 60 < edge < 400
     assert told["adequate_to"] == "400"
     old = "thickness_mm: 60"
-    for value, expected in ((edge + 1e-4, "yes"), (edge - 1e-4, "no"), (400, "yes")):
+    for value, expected in ((edge, "yes"), (edge - 1e-4, "no"), (400, "yes")):
         new = f"thickness_mm: {value}"
         assert adequate_in_a_run(tmp_path / str(value), old, new) == expected
 
@@ -153,7 +153,7 @@ def test_a_distance_that_helps_has_two_edges(advised, tmp_path):
     low, high = float(told["adequate_from"]), float(told["adequate_to"])
     assert 0.5 < low < high < 2
     old = "installed_at_m: 2"
-    tried = ((low - 1e-5, "no"), (low + 1e-5, "yes"), (high - 1e-5, "yes"), (high + 1e-5, "no"))
+    tried = ((low - 1e-5, "no"), (low, "yes"), (high, "yes"), (high + 1e-5, "no"))
     for value, expected in tried:
         new = f"installed_at_m: {value}"
         assert adequate_in_a_run(tmp_path / str(value), old, new) == expected
@@ -197,7 +197,9 @@ def test_the_screen_shows_both_and_where_the_tables_are(tmp_path):
     edge = float(advice(project, SILTSTONE, "thickness_mm")["adequate_from"])
     words = siltstone.split()
     assert words[:3] == ["15.0", "siltstone", "shotcrete.thickness_mm"]
-    assert float(words[3]) == pytest.approx(edge, rel=1e-3)
+    assert edge <= float(words[3]) == pytest.approx(edge, rel=1e-3)
+    new = f"thickness_mm: {words[3]}"
+    assert adequate_in_a_run(tmp_path / "printed", "thickness_mm: 60", new) == "yes"
     assert words[4:] == ["400", "mm"]
     assert gouge.split()[:2] == ["25.0", "gouge"]
     assert "none in" in gouge

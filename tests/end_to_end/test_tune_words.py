@@ -11,7 +11,9 @@ from pathlib import Path
 
 import pytest
 from end_to_end.projects import completed, files_of, rows, tunnelcalc
+from tunnelcalc_steel_sets.kind import SteelSets
 
+from tunnelcalc.cli.main import main
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.tune.tuning import tune
 
@@ -189,6 +191,14 @@ REFUSED = {
             "  fix: leave one of the two out\n"
         ],
     ),
+    "the-same-word-twice": (
+        ("steel_sets.joints=rigid,sliding,rigid",),
+        (),
+        [
+            '--vary holds "steel_sets.joints=rigid,sliding,rigid", which names "rigid" more than '
+            "once\n  allowed: each word once\n  fix: leave the others out\n"
+        ],
+    ),
     "held-and-varied-alone": (
         ("steel_sets.spacing_m=1:2",),
         ("spacing_m=1.5",),
@@ -223,6 +233,62 @@ def test_every_problem_is_told_at_once(tmp_path, name):
     count = sum(message.startswith("--") for message in told)
     assert ended.stderr.endswith(f"{count} problem{'s' if count > 1 else ''} found\n")
     assert files_of(project) == before
+
+
+OWN = """\
+designation,section_area_mm2,section_inertia_mm4,section_depth_mm
+MY 1,3400,8640000,120
+MY 2,7800,57000000,200
+"""
+
+
+def write_with_own(folder: Path, profile: str) -> Path:
+    """The project with sets of a section of its own table."""
+    key = "tables: {steel_sets: {profile: sections.csv}}\nsupport_classes:\n"
+    text = PROJECT.replace("support_classes:\n", key)
+    project = write(folder, text.replace("profile: HEB 120", f"profile: {profile}"))
+    (project / "sections.csv").write_text(OWN, encoding="utf-8")
+    return project
+
+
+def test_words_of_the_projects_own_table_vary_as_a_run_with_each_finds(tmp_path):
+    project = write_with_own(tmp_path / "project", "MY 1")
+    vary = ("--vary", "steel_sets.profile=MY 1,MY 2,HEB 200", "--vary", "steel_sets.spacing_m=1:2")
+    ended = tunnelcalc("tune", project, *vary, folder=project)
+    assert (ended.returncode, ended.stderr) == (0, "")
+    tried = rows(project / "tuned" / "0001" / "trade_off.csv")
+    named = ("factor_of_safety", "supported_closure_pct", "adequate")
+    for word in ("MY 1", "MY 2", "HEB 200"):
+        run_folder = completed(write_with_own(tmp_path / word, word))
+        expected = {row["chainage_m"]: row for row in rows(run_folder / "classes.csv")}
+        found = [row for row in tried if row["parameter_value"] == word]
+        assert found
+        for row in found:
+            assert all(row[name] == expected[row["chainage_m"]][name] for name in named), word
+
+
+def test_a_word_of_the_projects_table_is_suggested_among_few(tmp_path):
+    project = write_with_own(tmp_path / "project", "MY 1")
+    ended = tunnelcalc("tune", project, "--vary", "steel_sets.profile=MY 11", folder=project)
+    assert ended.returncode == 2
+    assert 'did you mean "MY 1"?' in ended.stderr
+    assert "more\n" in ended.stderr  # of many words few are listed
+    assert len(ended.stderr) < 400
+
+
+def test_a_plugin_that_fails_is_no_mistake_of_the_user(tmp_path, monkeypatch, capsys):
+    def fails(*_: object) -> None:
+        raise KeyError("anything")
+
+    project = write(tmp_path / "project")
+    # The project itself is judged first, then what is tried.
+    calls = iter([lambda *_: (), lambda *_: (), lambda *_: ()])
+    monkeypatch.setattr(SteelSets, "misfits", lambda *given: next(calls, fails)(*given))
+    ended = main(["tune", str(project), "--vary", "steel_sets.spacing_m=1:2"])
+    assert ended == 1
+    told = capsys.readouterr().err
+    assert "the plugin of steel_sets failed with KeyError" in told
+    assert "problem" not in told
 
 
 def test_a_word_that_ages_needs_the_rate_of_advance(tmp_path):

@@ -14,7 +14,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 import tunnelcalc
-from tunnelcalc.errors import ExitCode, FolderHeldError, InputError
+from tunnelcalc.errors import ExitCode, FolderHeldError, InputError, PluginError
 
 if TYPE_CHECKING:
     from tunnelcalc.cli.problem_report import Report
@@ -188,6 +188,9 @@ def main(arguments: Sequence[str] | None = None) -> int:
     except FolderHeldError as error:
         print(f"tunnelcalc: {error}", file=sys.stderr)
         return ExitCode.HELD
+    except PluginError as error:
+        print(f"tunnelcalc: {error}; report it to the maker of the plugin", file=sys.stderr)
+        return ExitCode.INTERNAL
     except KeyboardInterrupt:
         print("tunnelcalc: interrupted; nothing was written", file=sys.stderr)
         return ExitCode.INTERRUPTED

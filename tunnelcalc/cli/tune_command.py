@@ -12,6 +12,7 @@ from tunnelcalc.tune.advice import Advice
 from tunnelcalc.tune.tuning import Tuned, tune
 
 MOST_ROWS = 40
+SCREEN_DIGITS = 4
 
 
 def advise(
@@ -73,5 +74,5 @@ def _ends(advice: Advice) -> tuple[str, str]:
     if advice.words:
         return " or ".join(advice.words), ""
     if advice.helps:
-        return rounded(advice.adequate_from, 4), rounded(advice.adequate_to, 4)
+        return advice.ends(SCREEN_DIGITS, rounded)
     return ("no", "word") if advice.trade_off.of_words else ("none in", "range")

@@ -15,7 +15,7 @@ from tunnelcalc.inputs.notation import read_notation
 from tunnelcalc.inputs.opening import read_profiles
 from tunnelcalc.inputs.support_classes import idle_values, parameter_value, read_support_classes
 from tunnelcalc.inputs.values import Reader
-from tunnelcalc.inputs.word_tables import WordTables, idle_tables, read_word_tables
+from tunnelcalc.inputs.word_tables import WordTables, added_words, idle_tables, read_word_tables
 from tunnelcalc.inputs.yaml_tree import Table, parse
 from tunnelcalc.outputs.run_folder import INPUTS, MANIFEST
 from tunnelcalc.plugin.contract import ClassCheck, ClassCheckWithOptions
@@ -125,6 +125,7 @@ def _read(reader: Reader, folder: ProjectFolder, registry: Registry) -> Project:
         warnings=_warnings(ground, classes, tables, registry),
         files=tuple(sorted(folder.files.values(), key=lambda file: file.path)),
         flags=flags.settings,
+        words=added_words(tables),
     )
 
 

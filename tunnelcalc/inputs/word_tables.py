@@ -19,6 +19,7 @@ from tunnelcalc.inputs.values import Reader
 from tunnelcalc.plugin.contract import SupportKind
 from tunnelcalc.plugin.parameter import Parameter, WordTable, source_of
 from tunnelcalc.plugin.registry import Registry, describe
+from tunnelcalc.project import AddedWords
 from tunnelcalc.text import quoted
 
 TABLES = "tables"
@@ -67,6 +68,14 @@ def read_word_tables(reader: Reader, folder: ProjectFolder, registry: Registry) 
         of_kind.finish()
     tables.finish()
     return found
+
+
+def added_words(tables: WordTables) -> AddedWords:
+    """The words of tables in which nothing is wrong."""
+    return {
+        place: {word: row for word, row in words.rows.items() if row is not None}
+        for place, words in tables.items()
+    }
 
 
 def idle_tables(tables: WordTables) -> Iterator[str]:

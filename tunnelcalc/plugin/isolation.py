@@ -92,8 +92,8 @@ def contained_evaluation(
 ) -> tuple[Contained, Array]:
     """Demand and capacity of a check, and the mask of sections that a rule leaves out.
 
-    A row that is left out is NaN and carries the check's own reason, others its note. Only rules may leave rows
-    out: in a load check they stay marked as faults.
+    A row that is left out is NaN and carries the check's own reason, others its note. Only
+    rules may leave rows out: in a load check they stay marked as faults.
     """
 
     return _contained_check(

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 
 import numpy as np
 
 from tunnelcalc.trade_off import TradeOff
 from tunnelcalc.tune.changes import Change, Variation
+from tunnelcalc.tune.ends import inward
 from tunnelcalc.tune.trial import Trial
 
 HALVINGS = 20
@@ -30,6 +31,11 @@ class Advice:
     @property
     def helps(self) -> bool:
         return bool(self.words) or self.adequate_from == self.adequate_from
+
+    def ends(self, digits: int, text: Callable[[float, int], str]) -> tuple[str, str]:
+        """The range as it is printed to some significant digits: never wider than it is."""
+        low, high, needed = inward(self.adequate_from, self.adequate_to, digits)
+        return text(low, needed), text(high, needed)
 
     @property
     def verdict(self) -> str:

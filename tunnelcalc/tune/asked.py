@@ -3,16 +3,17 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping, Sequence
+from dataclasses import replace
 
 import numpy as np
 
-from tunnelcalc.arrays import Array
-from tunnelcalc.errors import Problem, Problems, Where
+from tunnelcalc.errors import PluginError, Problem, Problems, Where
 from tunnelcalc.inputs.support_classes import ADVANCE, INSTALLED_AT, class_faults
+from tunnelcalc.plugin.contract import SupportKind
 from tunnelcalc.plugin.parameter import Misfit, Parameter
 from tunnelcalc.plugin.registry import Registry, describe
-from tunnelcalc.project import SupportClass
-from tunnelcalc.text import as_number, quoted, suggestion
+from tunnelcalc.project import Project, SupportClass
+from tunnelcalc.text import as_number, quoted, suggestion, words_near
 from tunnelcalc.tune.changes import (
     ADVANCE_RATE,
     INSTALLED,
@@ -38,10 +39,11 @@ OF_CLASS = {
 class Reading:
     """Reads texts NAME=VALUES about one class."""
 
-    def __init__(self, chosen: SupportClass, registry: Registry, radius_m: Array) -> None:
+    def __init__(self, project: Project, chosen: SupportClass, registry: Registry) -> None:
         self.chosen = chosen
         self.registry = registry
-        self.smallest_radius_m = float(np.min(radius_m))
+        self.words = project.words
+        self.smallest_radius_m = float(np.min(project.ground["radius_m"]))
         self.problems = Problems()
 
     def asked(self, vary: Sequence[str], held: Sequence[str]) -> Asked:
@@ -80,8 +82,15 @@ class Reading:
         element, parameter, stated = place
         values: tuple[Value, ...]
         if parameter.choices:
-            words = [self._word(VARY, text, parameter, word) for word in stated.split(",")]
-            values = tuple(dict.fromkeys(word for word in words if word is not None))
+            named = [self._word(VARY, text, parameter, word) for word in stated.split(",")]
+            words = [word for word in named if word is not None]
+            values = tuple(dict.fromkeys(words))
+            for word in values:
+                if words.count(str(word)) > 1:
+                    message = (
+                        f"holds {quoted(text)}, which names {quoted(str(word))} more than once"
+                    )
+                    self._tell(VARY, message, "each word once", "leave the others out")
         else:
             values = self._range(text, parameter, stated)
         whole = parameter.limits.whole
@@ -107,7 +116,8 @@ class Reading:
         word = word.strip()
         if word in parameter.choices:
             return word
-        self._refuse(option, text, "word", parameter.allowed(), _meant(word, parameter.choices))
+        allowed = words_near(parameter.choices, word)
+        self._refuse(option, text, "word", allowed, _meant(word, parameter.choices))
         return None
 
     def _parameter(self, option: str, text: str) -> tuple[str, Parameter, str] | None:
@@ -132,11 +142,16 @@ class Reading:
                 self._refuse(option, text, "element", " or ".join(labels), fix)
                 return None
             kind = self.registry.support_kind(kinds[element])
-            known = OF_ELEMENT | {parameter.name: parameter for parameter in kind.parameters}
+            known = OF_ELEMENT | {one.name: self._with_words(kind, one) for one in kind.parameters}
         if wanted not in known:
             self._refuse(option, text, "parameter", ", ".join(known), _meant(wanted, known))
             return None
         return element, known[wanted], stated.strip()
+
+    def _with_words(self, kind: SupportKind, parameter: Parameter) -> Parameter:
+        """The parameter with the words that a table of the project adds."""
+        added = self.words.get((kind.name, parameter.name), {})
+        return replace(parameter, choices=(*parameter.choices, *added))
 
     def _only_once(self, option: str, named: Sequence[Change | Variation]) -> None:
         names = [one.name for one in named]
@@ -155,9 +170,8 @@ class Reading:
         reason: Misfit | None = None
         lacks: dict[tuple[str, str], None] = {}
         for value in variation.values:
-            made, idle = changed(
-                self.chosen, (*asked.beside(variation), variation.change(value)), self.registry
-            )
+            changes = (*asked.beside(variation), variation.change(value))
+            made, idle = changed(self.chosen, changes, self.registry, self.words)
             if any(change.name == variation.name for change in idle):
                 self._tell_idle(VARY, variation.element, variation.parameter, variation.text)
                 return variation
@@ -197,8 +211,8 @@ class Reading:
             try:
                 found = tuple(kind.misfits(element, self.smallest_radius_m))
             except (Exception, SystemExit) as error:  # a stranger's plugin may raise anything
-                told = f"cannot be judged: the plugin failed with {describe(error)}"
-                found = (Misfit(element.label, told, "report it to the maker of the plugin"),)
+                failed = f"the plugin of {kind.name} failed with {describe(error)}"
+                raise PluginError(f"{element.label} cannot be judged: {failed}") from error
             yield from found
         for fault in class_faults(made.elements, made.advance_m_per_day, self.registry):
             yield Misfit(fault.key, fault.message, fault.fix)
@@ -210,7 +224,7 @@ class Reading:
             for variation in asked.variations:
                 for value in variation.values:
                     changes = (*asked.beside(variation), variation.change(value))
-                    _, idle = changed(self.chosen, changes, self.registry)
+                    _, idle = changed(self.chosen, changes, self.registry, self.words)
                     used = used or (change in changes and change not in idle)
             if not used and all(change.name == one.name for one in asked.variations):
                 message = f"holds {quoted(change.text)}, which {VARY} changes"

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from types import MappingProxyType
 
 from tunnelcalc.plugin.contract import SupportKind
 from tunnelcalc.plugin.parameter import Parameter
 from tunnelcalc.plugin.registry import Registry
-from tunnelcalc.project import Element, SupportClass
+from tunnelcalc.project import AddedWords, Element, SupportClass
 from tunnelcalc.trade_off import full_name
 
 INSTALLED, ADVANCE_RATE = "installed_at_m", "advance_m_per_day"
@@ -66,11 +66,15 @@ class Asked:
 
 
 def changed(
-    chosen: SupportClass, changes: Sequence[Change], registry: Registry
+    chosen: SupportClass,
+    changes: Sequence[Change],
+    registry: Registry,
+    words: AddedWords = MappingProxyType({}),
 ) -> tuple[SupportClass, tuple[Change, ...]]:
     """The class with the changes, and those changes that have no use in it.
 
     What a word leaves without use goes, and a choice that comes into use unsaid has its default.
+    A word that a table of the project adds brings the values of its row, and takes them with it.
     """
     of_class = [change for change in changes if not change.element]
     for change in of_class:
@@ -78,9 +82,9 @@ def changed(
     elements, idle = [], []
     for element in chosen.elements:
         own = [change for change in changes if change.element == element.label]
-        done = _element_changed(element, own, registry.support_kind(element.kind))
+        done, unused = _element_changed(element, own, registry.support_kind(element.kind), words)
         elements.append(done)
-        idle += [c for c in own if c.parameter != INSTALLED and c.parameter not in done.values]
+        idle += unused
     return replace(chosen, elements=tuple(elements)), tuple(idle)
 
 
@@ -98,8 +102,11 @@ def installed_first_m(chosen: SupportClass) -> float:
     return min(element.installed_at_m for element in chosen.elements)
 
 
-def _element_changed(element: Element, changes: Iterable[Change], kind: SupportKind) -> Element:
-    values: dict[str, Value] = dict(element.values)
+def _element_changed(
+    element: Element, changes: Sequence[Change], kind: SupportKind, words: AddedWords
+) -> tuple[Element, list[Change]]:
+    of_rows = _of_rows(element.values, kind, words)
+    values = {name: value for name, value in element.values.items() if name not in of_rows}
     for change in changes:
         if change.parameter == INSTALLED:
             element = replace(element, installed_at_m=float(change.value))
@@ -113,7 +120,20 @@ def _element_changed(element: Element, changes: Iterable[Change], kind: SupportK
             used[parameter.name] = values[parameter.name]
         elif parameter.default:
             used[parameter.name] = parameter.default
-    return replace(element, values=MappingProxyType(used))
+    unused = [c for c in changes if c.parameter != INSTALLED and c.parameter not in used]
+    made = MappingProxyType({**used, **_of_rows(used, kind, words)})
+    return replace(element, values=made), unused
+
+
+def _of_rows(
+    values: Mapping[str, Value], kind: SupportKind, words: AddedWords
+) -> Mapping[str, Value]:
+    """What the words of an element stand for, by the tables of the project."""
+    found: dict[str, Value] = {}
+    for parameter in kind.parameters:
+        rows = words.get((kind.name, parameter.name), {})
+        found |= rows.get(str(values.get(parameter.name)), {})
+    return found
 
 
 def lacking(element: Element, kind: SupportKind) -> Iterator[Parameter]:

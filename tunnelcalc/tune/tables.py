@@ -13,6 +13,8 @@ from tunnelcalc.trade_off import TradeOff
 from tunnelcalc.tune.advice import Advice
 from tunnelcalc.tune.changes import Value
 
+TABLE_DIGITS = 10
+"""As in every table."""
 ADVICE_HEADER = (
     "chainage_m",
     "ground_unit",
@@ -66,8 +68,7 @@ def _advice_row(ground: Sections, advice: Advice) -> list[str]:
         *ends,
         ";".join(map(str, found.tried)) if found.of_words else "",
         ";".join(found.held),
-        number_text(advice.adequate_from),
-        number_text(advice.adequate_to),
+        *advice.ends(TABLE_DIGITS, _to_digits),
         ";".join(advice.words),
         advice.verdict,
     ]
@@ -91,6 +92,10 @@ def _trade_off_rows(ground: Sections, found: TradeOff) -> Iterator[list[str]]:
 
 def _named(found: TradeOff) -> tuple[str, ...]:
     return (found.support_class, found.element, found.parameter, found.unit)
+
+
+def _to_digits(value: float, digits: int) -> str:
+    return f"{value:.{digits}g}" if value == value else ""
 
 
 def _cell(value: Value | None) -> str:

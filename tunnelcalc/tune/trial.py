@@ -86,7 +86,7 @@ class Trial:
     def _computed(
         self, changes: Sequence[Change], ground: Sections
     ) -> tuple[Sections, Sequence[str]]:
-        tried, _ = changed(self.chosen, changes, self.registry)
+        tried, _ = changed(self.chosen, changes, self.registry, self.project.words)
         project = replace(self.project, support_classes=(tried,))
         plan = plan_classes(project, self.registry)
         stages = class_stages(project, self.registry, plan)

@@ -65,7 +65,7 @@ def tune(
     if class_name is not None:
         number = class_number(project, class_name)
     chosen = project.support_classes[number]
-    asked = Reading(chosen, registry, project.ground["radius_m"]).asked(vary, held)
+    asked = Reading(project, chosen, registry).asked(vary, held)
     target = Target(project_folder(path), out, numbered=TUNED)
     target.check()
     ground = failing(project, registry)

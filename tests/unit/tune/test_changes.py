@@ -83,3 +83,40 @@ def test_distances_and_the_rate_of_advance_change_too(name, installed, advance):
         assert made.advance_m_per_day != made.advance_m_per_day
     else:
         assert made.advance_m_per_day == advance
+
+
+ROW = {
+    "section_area_mm2": 5000.0,
+    "section_inertia_mm4": 2e7,
+    "section_depth_mm": 150.0,
+    "profile_source": "sections.csv, line 2",
+}
+WORDS = {("steel_sets", "profile"): {"MY 1": ROW}}
+
+
+def test_a_word_of_the_project_brings_the_values_of_its_row():
+    made, idle = changed(sets(RIGID), [change("steel_sets.profile", "MY 1")], REGISTRY, WORDS)
+    assert idle == ()
+    assert made.elements[0].values == {**RIGID, **ROW, "profile": "MY 1"}
+
+
+def test_a_word_of_the_project_keeps_them_while_something_else_changes():
+    own = {**RIGID, **ROW, "profile": "MY 1"}
+    made, _ = changed(sets(own), [change("steel_sets.spacing_m", 2.0)], REGISTRY, WORDS)
+    assert made.elements[0].values == {**own, "spacing_m": 2.0}
+
+
+def test_a_word_of_the_project_takes_them_with_it():
+    own = sets({**RIGID, **ROW, "profile": "MY 1"})
+    made, _ = changed(own, [change("steel_sets.profile", "HEB 200")], REGISTRY, WORDS)
+    assert made.elements[0].values == {**RIGID, "profile": "HEB 200"}
+    made, _ = changed(own, [change("steel_sets.profile", "own")], REGISTRY, WORDS)
+    assert "section_area_mm2" in [p.name for p in lacking(made.elements[0], KIND)]
+
+
+def test_what_a_row_states_cannot_be_held():
+    held = change("steel_sets.section_area_mm2", 9000.0)
+    own = {**RIGID, **ROW, "profile": "MY 1"}
+    made, idle = changed(sets(own), [held], REGISTRY, WORDS)
+    assert idle == (held,)
+    assert made.elements[0].values == own
