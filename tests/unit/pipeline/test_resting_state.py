@@ -9,7 +9,9 @@ from unit.pipeline.projects import BOLTS, SHOTCRETE, element, project, random_gr
 
 from tunnelcalc.pipeline.chain import section_stages
 from tunnelcalc.pipeline.plan import plan_classes
+from tunnelcalc.pipeline.resting_state import AgeingPath
 from tunnelcalc.plugin.registry import load_plugins
+from tunnelcalc.support.advance_step import Ageing
 
 YOUNG = SHOTCRETE | {"hardening": "chang_stille_1993"}
 GROUTED = {
@@ -73,3 +75,29 @@ def test_bolts_that_strengthen_the_ground_hold_it_and_carry_nothing_at_the_wall(
     )
     assert held["class_closure_mm"][0, 0] < bare["class_closure_mm"][0, 0]
     assert held["class_support_pressure_mpa"][0, 0] < bare["class_support_pressure_mpa"][0, 0]
+
+
+def path(trusted_from_days: float) -> AgeingPath:
+    """Three sections at four ages: one loaded at once, one later, one that is not known."""
+    ages = np.repeat([[0.0], [0.25], [1.0], [28.0]], 3, axis=1)
+    pressure = np.array([[0, 0, np.nan], [0.1, 0, np.nan], [0.2, 0.1, 0.3], [0.4, 0.3, 0.4]])
+    one = np.ones(3)
+    return AgeingPath(ages, ages, ages, pressure, 1 + ages, one, one, 28 * one, trusted_from_days)
+
+
+def test_what_is_carried_at_the_age_from_which_a_capacity_is_trusted():
+    """With water, once there is any load; rounding of an age does not matter."""
+    water = np.array([0.05, 0.05, 0.05])
+    for days in (0.25, 0.25 * (1 - 1e-12), 0.9):
+        np.testing.assert_allclose(path(days).early_pressure_mpa(water), [0.15, 0, np.nan])
+    np.testing.assert_allclose(path(3.0).early_pressure_mpa(water), [0.25, 0.15, np.nan])
+    assert path(0.0).early_pressure_mpa(water)[:2].tolist() == [0, 0]
+    assert path(3.0).hard_at(water)["early_pressure_mpa"].tolist() == [0, 0, 0]
+
+
+def test_that_age_is_reached_at_a_distance_by_the_rate_of_advance():
+    one = Ageing(lambda age: 100 * np.minimum(age, 1), np.array([2.0]), np.array([2.0]), 0.25)
+    np.testing.assert_allclose(one.trusted_at_m(np.array([8.0])), [4.0])
+    np.testing.assert_allclose(one.trusted_at_m(np.array([np.inf])), [2.0])
+    late = Ageing(one.stiffness_at, np.array([2.0]), np.array([9.0]), 0.25)
+    np.testing.assert_allclose(late.trusted_at_m(np.array([8.0])), [9.0])

@@ -88,6 +88,7 @@ def test_lines_limits_and_the_value_now_stand_where_they_should(tmp_path, monkey
     assert factor.lines[0].get_ydata().tolist() == [0.5, 1.1, 1.8]
     assert closure.lines[0].get_ydata().tolist() == [3.0, 1.5, 0.8]
     assert length.lines[0].get_ydata().tolist() == [0.0, 10.0, 30.0]
+    assert length.lines[0].get_drawstyle() == "steps-mid"  # a section is adequate or not
     for axes, limit in ((factor, 1.3), (closure, 1.0), (length, 60.0)):
         level = [line for line in axes.lines if list(line.get_ydata()) == [limit, limit]]
         assert len(level) == 1
