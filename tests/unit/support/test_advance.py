@@ -148,6 +148,16 @@ def test_ages_and_states_along_the_way():
     np.testing.assert_allclose(total, found.support_pressure_mpa, rtol=1e-14)
 
 
+@pytest.mark.parametrize("days", [0.004, 0.25, 3.0])
+def test_the_state_at_the_age_from_which_a_capacity_is_trusted_is_computed(days):
+    """It stands among the others, and the end is the same but for the steps."""
+    plain = follow([ageing()], WEAK)
+    found = follow([Ageing(hardening, full(1), full(1), days)], WEAK)
+    assert np.any(np.isclose(found.age_days[0, :, 0], days, rtol=1e-12))
+    assert len(found.distance_m) == len(plain.distance_m) + 1
+    np.testing.assert_allclose(found.support_pressure_mpa, plain.support_pressure_mpa, rtol=1e-3)
+
+
 def test_ring_closed_later_carries_less():
     loads = [
         follow([ageing(at=1, acts=acts)]).support_pressure_mpa[0] for acts in (1.0, 2.0, 5.0, 20.0)
