@@ -167,7 +167,7 @@ def case():
     credited = np.stack([capacity, full(BOLTS_CAPACITY)])
     for of_rest in LIMITS:
         limit = closure * of_rest
-        given = given_at_limit_mpa(parts, credited, begins, limit, [FACTOR, FACTOR])
+        given = given_at_limit_mpa(parts, credited, begins, limit, FACTOR)
         missing.append(missing_pressure_mpa(pressure_at_closure(ours, radius, limit), given))
     expected = [
         by_integration(
