@@ -15,18 +15,14 @@ from tunnelcalc.plugin.contract import (
     Amount,
     ClassCheck,
     ClassCheckWithOptions,
-    ClosureProfileMethod,
     Evaluation,
-    GroundReactionMethod,
     GroundReader,
     LiningCheck,
-    ModulusMethod,
     ReportWriter,
     RingKind,
     SectionFigure,
     SectionValues,
     SheetReader,
-    StrengthMethod,
     SupportCheck,
     SupportKind,
     TradeOffFigure,
@@ -34,6 +30,12 @@ from tunnelcalc.plugin.contract import (
 )
 from tunnelcalc.plugin.flag import Condition, Flag, NumberOfFlag
 from tunnelcalc.plugin.hooks import hookimpl
+from tunnelcalc.plugin.method_contract import (
+    ClosureProfileMethod,
+    GroundReactionMethod,
+    ModulusMethod,
+    StrengthMethod,
+)
 from tunnelcalc.plugin.parameter import Misfit, Parameter, WordTable, source_of
 from tunnelcalc.plugin.raw_table import RawTable
 from tunnelcalc.project import Element, Project, SupportClass

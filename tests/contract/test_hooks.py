@@ -11,7 +11,7 @@ from contract.source import ROOT
 from unit.plugin.strangers import own_points
 
 from tunnelcalc.builtin import verification
-from tunnelcalc.plugin import contract, hooks
+from tunnelcalc.plugin import contract, hooks, method_contract
 from tunnelcalc.plugin.registry import OWN_DISTRIBUTION, SORTS, load_plugins
 from tunnelcalc.verification import VerificationCheck
 
@@ -65,14 +65,17 @@ def test_tunnelcalc_register_class_checks():
 
 def test_tunnelcalc_register_strengths():
     assert_hook(
-        "tunnelcalc_register_strengths", contract.StrengthMethod, "strength", "hoek_brown_2002"
+        "tunnelcalc_register_strengths",
+        method_contract.StrengthMethod,
+        "strength",
+        "hoek_brown_2002",
     )
 
 
 def test_tunnelcalc_register_deformation_moduli():
     assert_hook(
         "tunnelcalc_register_deformation_moduli",
-        contract.ModulusMethod,
+        method_contract.ModulusMethod,
         "deformation_modulus",
         "hoek_diederichs_2006",
     )
@@ -81,7 +84,7 @@ def test_tunnelcalc_register_deformation_moduli():
 def test_tunnelcalc_register_ground_reactions():
     assert_hook(
         "tunnelcalc_register_ground_reactions",
-        contract.GroundReactionMethod,
+        method_contract.GroundReactionMethod,
         "ground_reaction",
         "hoek_brown_perfectly_plastic",
     )
@@ -90,7 +93,7 @@ def test_tunnelcalc_register_ground_reactions():
 def test_tunnelcalc_register_closure_profiles():
     assert_hook(
         "tunnelcalc_register_closure_profiles",
-        contract.ClosureProfileMethod,
+        method_contract.ClosureProfileMethod,
         "closure_profile",
         "vlachopoulos_diederichs_2009",
     )

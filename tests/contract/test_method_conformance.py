@@ -16,7 +16,7 @@ from tunnelcalc.pipeline.ground_stages import (
     intact_modulus_stage,
     strength_stage,
 )
-from tunnelcalc.plugin.contract import STRENGTH_COLUMNS
+from tunnelcalc.plugin.method_contract import STRENGTH_COLUMNS
 from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.validity import Level
 from tunnelcalc.vocabulary import GROUND, Sort

@@ -15,7 +15,8 @@ from tunnelcalc.explain.section import ComputedSection
 from tunnelcalc.inputs.estimates import ESTIMATED, FROM_LABORATORY, Estimator, estimator_told
 from tunnelcalc.pipeline.disturbed_ring_stage import OF_RING
 from tunnelcalc.pipeline.ground_stages import knows_ring
-from tunnelcalc.plugin.contract import STRENGTH_COLUMNS, SectionValues
+from tunnelcalc.plugin.contract import SectionValues
+from tunnelcalc.plugin.method_contract import STRENGTH_COLUMNS
 from tunnelcalc.vocabulary import GROUND, QUANTITIES
 
 OVERBURDEN = "Hoek & Brown, Underground Excavations in Rock (1980), ch. 5"

@@ -8,7 +8,8 @@ from typing import Any
 
 from tunnelcalc.calculation.line import SheetLine
 from tunnelcalc.explain.section import ComputedSection
-from tunnelcalc.plugin.contract import Method, SectionValues
+from tunnelcalc.plugin.contract import SectionValues
+from tunnelcalc.plugin.method_contract import Method
 from tunnelcalc.plugin.registry import describe
 
 Lines = tuple[SheetLine, ...]

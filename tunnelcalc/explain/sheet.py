@@ -17,7 +17,7 @@ from tunnelcalc.limits_statement import LIMITS
 from tunnelcalc.one_section import class_number, position_at
 from tunnelcalc.outputs.cells import number_text
 from tunnelcalc.pipeline.plan import PlannedClass
-from tunnelcalc.plugin.contract import Method
+from tunnelcalc.plugin.method_contract import Method
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.results import STRESS_CASES
 

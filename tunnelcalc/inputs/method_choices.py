@@ -12,7 +12,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.errors import Where
 from tunnelcalc.inputs.files import PROJECT_FILE
 from tunnelcalc.inputs.values import Reader
-from tunnelcalc.plugin.contract import STRENGTH_COLUMNS, Method, StrengthMethod
+from tunnelcalc.plugin.method_contract import STRENGTH_COLUMNS, Method, StrengthMethod
 from tunnelcalc.plugin.registry import Registry
 from tunnelcalc.project import DEFAULT_METHODS, MethodChoice
 from tunnelcalc.text import few, quoted, suggestion

@@ -31,13 +31,13 @@ from tunnelcalc.pipeline.resting_state import (
 from tunnelcalc.pipeline.ring_curves import curve_of_class
 from tunnelcalc.pipeline.system_limits import limited_elements, system_limits
 from tunnelcalc.plugin.contained_reaction import ElementResponse, contained_reaction
-from tunnelcalc.plugin.contract import ClosureProfileMethod
 from tunnelcalc.plugin.isolation import (
     NO_REASON,
     Contained,
     contained_class_evaluation,
     contained_evaluation,
 )
+from tunnelcalc.plugin.method_contract import ClosureProfileMethod
 from tunnelcalc.project import Criteria
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.adequacy import class_outcome, load_check, rule_check

@@ -11,7 +11,7 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.ground_reaction.mixed import MixedCurve
-from tunnelcalc.plugin.contract import (
+from tunnelcalc.plugin.method_contract import (
     ClosureProfileMethod,
     GroundReactionMethod,
     Method,

@@ -10,7 +10,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.dispatch import Chosen
 from tunnelcalc.pipeline.ground_stages import estimated_modulus_mpa, knows_ring, strengths
 from tunnelcalc.pipeline.stage import Stage
-from tunnelcalc.plugin.contract import GroundReactionMethod, ModulusMethod, StrengthMethod
+from tunnelcalc.plugin.method_contract import GroundReactionMethod, ModulusMethod, StrengthMethod
 from tunnelcalc.sections import Sections
 
 OF_RING = {"ring_mb": "mb", "ring_s": "s", "ring_a": "a"}

@@ -9,7 +9,7 @@ import numpy as np
 from tunnelcalc.arrays import Array
 from tunnelcalc.pipeline.dispatch import Chosen, curves
 from tunnelcalc.pipeline.stage import Stage
-from tunnelcalc.plugin.contract import (
+from tunnelcalc.plugin.method_contract import (
     STRENGTH_COLUMNS,
     GroundReactionMethod,
     ModulusMethod,

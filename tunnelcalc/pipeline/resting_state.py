@@ -11,7 +11,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.pipeline.dispatch import Chosen, closure_share
 from tunnelcalc.plugin.contained_reaction import ElementResponse
-from tunnelcalc.plugin.contract import ClosureProfileMethod
+from tunnelcalc.plugin.method_contract import ClosureProfileMethod
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.advance import Advance, Begins, advance
 from tunnelcalc.support.advance_step import Ageing, Constant

@@ -14,8 +14,8 @@ from tunnelcalc.ground_reaction.later_ring import LaterRingCurve
 from tunnelcalc.ground_reaction.mixed import MixedCurve
 from tunnelcalc.pipeline.dispatch import Chosen
 from tunnelcalc.plugin.contained_reaction import ElementResponse
-from tunnelcalc.plugin.contract import GroundReactionMethod
 from tunnelcalc.plugin.isolation import NO_REASON
+from tunnelcalc.plugin.method_contract import GroundReactionMethod
 from tunnelcalc.sections import Sections
 from tunnelcalc.support.equilibrium import pressure_at_closure
 from tunnelcalc.support.reaction import GroundRing

@@ -10,7 +10,7 @@ from tunnelcalc.arrays import Array
 from tunnelcalc.ground_reaction.curve import GroundCurve
 from tunnelcalc.pipeline.dispatch import Chosen, curves
 from tunnelcalc.pipeline.ground_stages import unsupported
-from tunnelcalc.plugin.contract import GroundReactionMethod
+from tunnelcalc.plugin.method_contract import GroundReactionMethod
 from tunnelcalc.project import Criteria
 from tunnelcalc.results import STRESS_CASES
 from tunnelcalc.sections import Sections

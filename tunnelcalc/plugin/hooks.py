@@ -15,17 +15,19 @@ import pluggy
 
 from tunnelcalc.plugin.contract import (
     ClassCheck,
-    ClosureProfileMethod,
-    GroundReactionMethod,
     GroundReader,
-    ModulusMethod,
     ReportWriter,
     SectionFigure,
-    StrengthMethod,
     SupportCheck,
     SupportKind,
     TradeOffFigure,
     ValidityFlag,
+)
+from tunnelcalc.plugin.method_contract import (
+    ClosureProfileMethod,
+    GroundReactionMethod,
+    ModulusMethod,
+    StrengthMethod,
 )
 from tunnelcalc.verification import VerificationCheck
 

@@ -15,7 +15,6 @@ from tunnelcalc.plugin import hooks
 from tunnelcalc.plugin.contract import (
     ClassCheck,
     GroundReader,
-    Method,
     ReportWriter,
     SectionFigure,
     SupportCheck,
@@ -24,6 +23,7 @@ from tunnelcalc.plugin.contract import (
     ValidityFlag,
 )
 from tunnelcalc.plugin.files import HashedFile, files_of, load_file, refusal
+from tunnelcalc.plugin.method_contract import Method
 from tunnelcalc.project import Element
 from tunnelcalc.verification import VerificationCheck
 
