@@ -34,7 +34,7 @@ class VerificationCheck:
     standing: Standing
     unit: str
     tolerance: float
-    expected: Callable[[], float]
+    expected: float | Callable[[], float]
     computed: Callable[[], float]
 
     @property
@@ -70,7 +70,8 @@ def verified(checks: Iterable[VerificationCheck]) -> tuple[Verified, ...]:
 
 def _verified(check: VerificationCheck) -> Verified:
     try:
-        return Verified(check, float(check.expected()), float(check.computed()))
+        expected = check.expected() if callable(check.expected) else check.expected
+        return Verified(check, float(expected), float(check.computed()))
     except Exception as error:  # a stranger's check may raise anything
         fault = f"{type(error).__name__}: {error}"
         return Verified(check, math.nan, math.nan, " ".join(fault.split())[:300])

@@ -49,20 +49,6 @@ def verification_checks() -> Iterator[VerificationCheck]:
     yield from _table()
 
 
-def _check(
-    method: str,
-    subject: str,
-    source: str,
-    standing: Standing,
-    unit: str,
-    tolerance: float,
-    expected: float | Callable[[], float],
-    computed: Callable[[], float],
-) -> VerificationCheck:
-    told = expected if callable(expected) else partial(float, expected)
-    return VerificationCheck(method, subject, source, standing, unit, tolerance, told, computed)
-
-
 def _blocked() -> Iterator[VerificationCheck]:
     for angle in (15.0, 22.5, 40.0):
         blocks = Blocks(math.radians(angle / 2), 0.075, 0.25, 10_000.0)
@@ -71,7 +57,7 @@ def _blocked() -> Iterator[VerificationCheck]:
             ("capacity", "MPa", 1e-10, _yield_by_statics, blocked_capacity_mpa),
             ("stiffness", "MPa/m", near, _stiffness_by_energy, blocked_stiffness_mpa_per_m),
         ):
-            yield _check(
+            yield VerificationCheck(
                 SteelSets.name,
                 f"blocks every {angle:g} deg, R 5 m: {quantity}",
                 STATICS,
@@ -92,7 +78,7 @@ def _close_blocks() -> Iterator[VerificationCheck]:
         ("stiffness", "MPa/m", 1e-5, hoop_stiffness_mpa_per_m, blocked_stiffness_mpa_per_m),
     ):
         limit = float(full(hoop, SET)[0])
-        yield _check(
+        yield VerificationCheck(
             SteelSets.name,
             f"blocks every 0.5 deg tend to full contact: {quantity}",
             "statics of half a ring; thin elastic ring",
@@ -102,7 +88,7 @@ def _close_blocks() -> Iterator[VerificationCheck]:
             limit,
             partial(_one, blocked, close),
         )
-    yield _check(
+    yield VerificationCheck(
         SteelSets.name,
         "most that blocked sets carry over full contact, angles from 1 to 120 deg, R 0.6 to 30 m",
         "statics: the block force is 2 N0 sin th",
@@ -121,7 +107,7 @@ def _sliding() -> Iterator[VerificationCheck]:
         (0.05, 0.075, "while they slide"),
         (0.6 / (2 * math.pi) + 0.002, 0.15, "when their travel is used up"),
     ):
-        yield _check(
+        yield VerificationCheck(
             SteelSets.name,
             f"sliding joints, {where}: pressure",
             "statics of half a ring; circumference",
@@ -142,7 +128,7 @@ def _girders() -> Iterator[VerificationCheck]:
         ("inertia_mm4", "mm4", inertia),
         ("depth_mm", "mm", 120.0),
     ):
-        yield _check(
+        yield VerificationCheck(
             LatticeGirders.name,
             f"four bars of 20 mm, layers 100 mm apart: {quantity}",
             "circles, by the parallel axis theorem",
@@ -161,7 +147,7 @@ def _table() -> Iterator[VerificationCheck]:
             ("area_cm2", "cm2", "area_mm2", MM2_PER_CM2),
             ("inertia_cm4", "cm4", "inertia_mm4", MM4_PER_CM4),
         ):
-            yield _check(
+            yield VerificationCheck(
                 SteelSets.name,
                 f"{row['designation']}: {column} from the dimensions",
                 row["source"],

@@ -3,31 +3,12 @@
 from __future__ import annotations
 
 import pytest
+from end_to_end.element_texts import HARDENING, SLIDING
 from end_to_end.projects import replaced, rows, write_project
 
 from tunnelcalc.curves import show_section
 from tunnelcalc.plugin.registry import load_plugins
 
-SLIDING = """\
-      - kind: steel_sets
-        profile: HEB 120
-        yield_strength_mpa: 235
-        steel_modulus_gpa: 200
-        spacing_m: 1
-        contact: embedded
-        joints: sliding
-        joint_count: 4
-        slip_load_kn: 200
-        joint_travel_mm: 100
-"""
-HARDENING = """\
-      - kind: shotcrete
-        thickness_mm: 120
-        strength_mpa: 25
-        modulus_gpa: 15
-        poisson_ratio: 0.2
-        hardening: meschke_1996
-"""
 GROUTED = """\
       - kind: grouted_rock_bolts
         diameter_mm: 25

@@ -77,14 +77,16 @@ class AdvanceBlock:
         end = len(states.distance_m) - 1
         acts = float(states.begins_at_m[self.position, 0])
         begin = int(np.flatnonzero(states.closure_m[:, 0] == acts)[0])
-        self._add("x_i", "distance of installation", "", known["x_i"], "m", "project")
+        self.work.add("x_i", "distance of installation", "", known["x_i"], "m", "project")
         meaning = "closure of the wall without pressure, with the ring of bolts if there is one"
-        self._add("u_f", meaning, "", known["u_f"], "mm", "ground reaction")
+        self.work.add("u_f", meaning, "", known["u_f"], "mm", "ground reaction")
         meaning = "share of the water pressure: see equilibrium"
-        self._add("w_p", meaning, "", known["w_p"], "MPa")
-        self._add("v", "advance of the face", "", known["v"], "m/day", "project")
-        self._add(f"w_{begin}", "closure where it begins to act", "", acts * MM_PER_M, "mm", BEGINS)
-        self._add(f"p_{begin}", "pressure there", "0", 0.0, "MPa")
+        self.work.add("w_p", meaning, "", known["w_p"], "MPa")
+        self.work.add("v", "advance of the face", "", known["v"], "m/day", "project")
+        self.work.add(
+            f"w_{begin}", "closure where it begins to act", "", acts * MM_PER_M, "mm", BEGINS
+        )
+        self.work.add(f"p_{begin}", "pressure there", "0", 0.0, "MPa")
         worst = int(path.worst_state(water[self.position])[0])
         shown = {*range(begin + 1, begin + 1 + SHOWN), worst, end}
         for state in range(begin + 1, end + 1):
@@ -102,22 +104,11 @@ class AdvanceBlock:
         )
         return SheetBlock(title, tuple(self.work.lines), (*self.notes, TABLE_NOTE, note))
 
-    def _add(
-        self,
-        symbol: str,
-        meaning: str,
-        formula: str,
-        result: float,
-        unit: str = "",
-        source: str | None = None,
-    ) -> None:
-        self.work.add(symbol, meaning, formula, result, unit, source)
-
     def _add_step(self, k: int, end: int, *, whole: bool) -> None:
         """From state k - 1 to state k."""
         states, path = self.advanced.states, self.found.rest.paths[self.position]
         o = k - 1
-        self._add(
+        self.work.add(
             f"x_{k}", f"distance behind the face, step {k}", "", path.distance_m[k, 0], "m", GRID
         )
         self._add_age(f"{k}", f"x_{k}", float(path.age_days[k, 0]))
@@ -127,18 +118,18 @@ class AdvanceBlock:
             self._add_wall(k, closure)
         else:
             how = "at rest: see equilibrium" if k == end else LIKE_SHOWN
-            self._add(f"w_{k}", f"closure of the wall, {how}", "", closure, "mm")
+            self.work.add(f"w_{k}", f"closure of the wall, {how}", "", closure, "mm")
         moved = closure - self.work.known[f"w_{o}"]
-        self._add(f"dw_{k}", "increment of closure", f"w_{k} - w_{o}", moved, "mm")
+        self.work.add(f"dw_{k}", "increment of closure", f"w_{k} - w_{o}", moved, "mm")
         pressure = float(path.pressure_mpa[k, 0])
         # From the closures: of a tiny increment rounding leaves fewer digits than of them.
         formula, gained = f"Km_{k}*(w_{k} - w_{o})/1000", pressure - self.work.known[f"p_{o}"]
-        self._add(f"dp_{k}", "increment of pressure", formula, gained, "MPa", OF_STEPS)
-        self._add(f"p_{k}", "pressure on the element", f"p_{o} + dp_{k}", pressure, "MPa")
+        self.work.add(f"dp_{k}", "increment of pressure", formula, gained, "MPa", OF_STEPS)
+        self.work.add(f"p_{k}", "pressure on the element", f"p_{o} + dp_{k}", pressure, "MPa")
         self._add_use(k, whole, float(path.capacity_mpa[k, 0]))
 
     def _add_age(self, ending: str, distance: str, age: float) -> None:
-        self._add(f"age_{ending}", "age", f"max({distance} - x_i, 0)/v", age, "day")
+        self.work.add(f"age_{ending}", "age", f"max({distance} - x_i, 0)/v", age, "day")
 
     def _add_stiffness(self, k: int, whole: bool) -> None:
         """Mean stiffness over the step, of the ages at its two Gauss points. [MPa/m]"""
@@ -151,13 +142,13 @@ class AdvanceBlock:
             found.append(stiffness)
             if whole:
                 meaning = "distance within the step, Gauss point of the unsupported closure"
-                self._add(f"x_{ending}", meaning, "", distance, "m", GRID)
+                self.work.add(f"x_{ending}", meaning, "", distance, "m", GRID)
                 self._add_age(ending, f"x_{ending}", age)
                 self._add_law(ending, age, STIFFNESS)
         mean = 0.5 * (found[0] + found[1])
         formula = f"(K_{k}a + K_{k}b)/2" if whole else ""
         meaning = "mean stiffness over the step" + ("" if whole else f", {LIKE_SHOWN}")
-        self._add(f"Km_{k}", meaning, formula, mean, "MPa/m")
+        self.work.add(f"Km_{k}", meaning, formula, mean, "MPa/m")
 
     def _at_age(self, age: float) -> tuple[float, float]:
         """Stiffness [MPa/m] and capacity [MPa] as the run took them."""
@@ -186,7 +177,7 @@ class AdvanceBlock:
             if symbol not in wanted:
                 continue
             if said is None:
-                self._add(f"{symbol}_{ending}", "at that age", "", value, unit, who)
+                self.work.add(f"{symbol}_{ending}", "at that age", "", value, unit, who)
             elif differ(said, value):
                 self.differences.append(
                     f"{item.element.label} at an age of {age!r} days: the line {symbol} says "
@@ -212,11 +203,11 @@ class AdvanceBlock:
         self._put(lines, f"{k}", "x")
         free = self._free_m(distance)
         formula = f"share_{k}*u_f" if f"share_{k}" in self.work.known else ""
-        self._add(f"u_{k}", "closure there without support", formula, free * MM_PER_M, "mm")
+        self.work.add(f"u_{k}", "closure there without support", formula, free * MM_PER_M, "mm")
         self._add_cell(f"{k}u", free)
         formula = CUBIC.format(e=f"{k}u", w=f"u_{k}")
         face = float(states.fictitious_pressure_mpa[k, 0])
-        self._add(f"pf_{k}", "pressure that stands for the face", formula, face, "MPa", FACE)
+        self.work.add(f"pf_{k}", "pressure that stands for the face", formula, face, "MPa", FACE)
         self.work.known[f"w_{k}"] = closure_mm
         others = " + ".join(["", *self._add_others(k)])
         self._add_cell(f"{k}w", closure_mm / MM_PER_M)
@@ -224,7 +215,7 @@ class AdvanceBlock:
             f"{CUBIC.format(e=f'{k}w', w=f'w_{k}')}"
             f" = pf_{k} + p_{o} + Km_{k}*(w_{k} - w_{o})/1000{others}"
         )
-        self._add(f"w_{k}", "closure of the wall, root of", formula, closure_mm, "mm")
+        self.work.add(f"w_{k}", "closure of the wall, root of", formula, closure_mm, "mm")
 
     def _free_m(self, distance_m: float) -> float:
         profile = self.section.method(self.section.steps.closure_profile)
@@ -243,9 +234,9 @@ class AdvanceBlock:
             ("d0", "slope, node before", first, "MPa/m"),
             ("d1", "slope, node behind", final, "MPa/m"),
         ):
-            self._add(f"{symbol}_{ending}", meaning, "", value, unit, TABLE)
+            self.work.add(f"{symbol}_{ending}", meaning, "", value, unit, TABLE)
         formula = f"1000*(q1_{ending} - q0_{ending})/(c1_{ending} - c0_{ending})"
-        self._add(f"S_{ending}", "slope between them", formula, secant, "MPa/m", TABLE)
+        self.work.add(f"S_{ending}", "slope between them", formula, secant, "MPa/m", TABLE)
 
     def _add_others(self, k: int) -> Iterator[str]:
         """The pressure on each other element that carries any in a state; its symbol."""
@@ -263,7 +254,7 @@ class AdvanceBlock:
             }
             formula = renamed(share_formula(response, own), {"us": f"w_{k}"})
             symbol = f"p{own}_{k}"
-            self._add(symbol, f"pressure on {label}", formula, pressure, "MPa")
+            self.work.add(symbol, f"pressure on {label}", formula, pressure, "MPa")
             yield symbol
 
     def _add_use(self, k: int, whole: bool, capacity: float) -> None:
@@ -271,19 +262,19 @@ class AdvanceBlock:
             self._add_law(f"{k}", self.work.known[f"age_{k}"], STIFFNESS + CAPACITY)
         else:
             meaning = f"capacity at that age, {LIKE_SHOWN}"
-            self._add(f"pmax_{k}", meaning, "", capacity, "MPa")
+            self.work.add(f"pmax_{k}", meaning, "", capacity, "MPa")
         pressure, water = self.work.known[f"p_{k}"], self.work.known["w_p"]
         use = (pressure + water) / capacity if pressure > 0 else 0.0
         formula = f"(p_{k} + w_p)/pmax_{k}" if pressure > 0 else "0"
         meaning = "use: pressure with water over the capacity of that age"
-        self._add(f"use_{k}", meaning, formula, use, "", "definition")
+        self.work.add(f"use_{k}", meaning, formula, use, "", "definition")
 
     def _add_sums(self, steps: range, pressure: float, worst: int) -> None:
         """The sum over all steps, and the step of greatest use."""
         total = " + ".join(f"dp_{k}" for k in steps)
         most = f"max({', '.join(f'use_{k}' for k in steps)}, 0)"
         end = steps[-1]
-        self._add(
+        self.work.add(
             "p_n",
             "pressure at rest: sum over all steps",
             _short(total, f"p_{end}"),
@@ -292,7 +283,7 @@ class AdvanceBlock:
         )
         use = max(self.work.known[f"use_{k}"] for k in steps)
         meaning = f"greatest use, in state {worst}" if use > 0 else "greatest use"
-        self._add("use", meaning, _short(most, ""), use, "", "definition")
+        self.work.add("use", meaning, _short(most, ""), use, "", "definition")
 
 
 def _short(formula: str, other: str) -> str:

@@ -67,42 +67,15 @@ class ElementReaction(Protocol):
 
 
 @dataclass(frozen=True, slots=True)
-class Spring:
-    """p = K m, with nothing declared beyond the capacity: the spring goes on, and is overloaded.
+class _OneStiffness:
+    """p = K m up to the capacity; what is beyond is each element's own.
 
     `stiffness_mpa_per_m` is K >= 0, `capacity_mpa` the pressure at its limit; both (n,).
     """
 
     breaks: ClassVar[bool] = False
-    stiffness_mpa_per_m: Array
-    capacity_mpa: Array
-
-    @property
-    def reaches_capacity_m(self) -> Array:
-        return _movement(self.capacity_mpa, self.stiffness_mpa_per_m)
-
-    @property
-    def holds_until_m(self) -> Array:
-        return self.reaches_capacity_m
-
-    def pressure_and_slope(self, moved_m: Array) -> tuple[Array, Array]:
-        return self.stiffness_mpa_per_m * moved_m, self.stiffness_mpa_per_m
-
-    def state(self, moved_m: Array) -> Array:
-        return _states(moved_m, (self.reaches_capacity_m, ElementState.OVERLOADED))
-
-    def take(self, index: Array) -> Self:
-        return _taken(self, index)
-
-
-@dataclass(frozen=True, slots=True)
-class Plateau:
-    """p = min(K m, capacity): an element that yields at its capacity and keeps it.
-
-    `stiffness_mpa_per_m` is K >= 0, `capacity_mpa` the pressure of the plateau; both (n,).
-    """
-
-    breaks: ClassVar[bool] = False
+    beyond: ClassVar[ElementState]
+    """The state of an element that is past its capacity."""
     stiffness_mpa_per_m: Array
     capacity_mpa: Array
 
@@ -113,47 +86,49 @@ class Plateau:
     @property
     def holds_until_m(self) -> Array:
         return _endless(self.reaches_capacity_m)
+
+    def pressure_and_slope(self, moved_m: Array) -> tuple[Array, Array]:
+        return self.stiffness_mpa_per_m * moved_m, self.stiffness_mpa_per_m
+
+    def state(self, moved_m: Array) -> Array:
+        return _states(moved_m, (self.reaches_capacity_m, self.beyond))
+
+    def take(self, index: Array) -> Self:
+        return _taken(self, index)
+
+
+@dataclass(frozen=True, slots=True)
+class Spring(_OneStiffness):
+    """p = K m, with nothing declared beyond the capacity: the spring goes on, and is overloaded."""
+
+    beyond: ClassVar[ElementState] = ElementState.OVERLOADED
+
+    @property
+    def holds_until_m(self) -> Array:
+        return self.reaches_capacity_m
+
+
+@dataclass(frozen=True, slots=True)
+class Plateau(_OneStiffness):
+    """p = min(K m, capacity): an element that yields at its capacity and keeps it."""
+
+    beyond: ClassVar[ElementState] = ElementState.YIELDING
 
     def pressure_and_slope(self, moved_m: Array) -> tuple[Array, Array]:
         spring = self.stiffness_mpa_per_m * moved_m
         slope = np.where(spring < self.capacity_mpa, self.stiffness_mpa_per_m, 0)
         return np.minimum(spring, self.capacity_mpa), slope
 
-    def state(self, moved_m: Array) -> Array:
-        return _states(moved_m, (self.reaches_capacity_m, ElementState.YIELDING))
-
-    def take(self, index: Array) -> Self:
-        return _taken(self, index)
-
 
 @dataclass(frozen=True, slots=True)
-class Brittle:
+class Brittle(_OneStiffness):
     """p = K m up to the capacity, nothing at all once the wall has moved further.
 
-    `stiffness_mpa_per_m` is K >= 0, `capacity_mpa` the pressure at which it breaks; both (n,).
     The curve is that of the unbroken element: whoever uses it heeds `breaks`.
     """
 
     breaks: ClassVar[bool] = True
-    stiffness_mpa_per_m: Array
-    capacity_mpa: Array
-
-    @property
-    def reaches_capacity_m(self) -> Array:
-        return _movement(self.capacity_mpa, self.stiffness_mpa_per_m)
-
-    @property
-    def holds_until_m(self) -> Array:
-        return _endless(self.reaches_capacity_m)
-
-    def pressure_and_slope(self, moved_m: Array) -> tuple[Array, Array]:
-        return self.stiffness_mpa_per_m * moved_m, self.stiffness_mpa_per_m
-
-    def state(self, moved_m: Array) -> Array:
-        return _states(moved_m, (self.reaches_capacity_m, ElementState.FAILED))
-
-    def take(self, index: Array) -> Self:
-        return _taken(self, index)
+    beyond: ClassVar[ElementState] = ElementState.FAILED
 
 
 @dataclass(frozen=True, slots=True)

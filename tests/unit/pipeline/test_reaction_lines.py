@@ -6,6 +6,7 @@ import math
 
 import numpy as np
 import pytest
+from end_to_end.element_texts import HARDENING, SLIDING
 from end_to_end.projects import replaced, write_project
 from unit.plugin.strangers import own_points
 
@@ -15,26 +16,6 @@ from tunnelcalc.plugin.registry import load_plugins
 from tunnelcalc.section_curves import CAPACITY, CaseCurves
 
 REGISTRY = load_plugins(own_points())
-SLIDING = """\
-      - kind: steel_sets
-        profile: HEB 120
-        yield_strength_mpa: 235
-        steel_modulus_gpa: 200
-        spacing_m: 1
-        contact: embedded
-        joints: sliding
-        joint_count: 4
-        slip_load_kn: 200
-        joint_travel_mm: 100
-"""
-HARDENING = """\
-      - kind: shotcrete
-        thickness_mm: 120
-        strength_mpa: 25
-        modulus_gpa: 15
-        poisson_ratio: 0.2
-        hardening: meschke_1996
-"""
 GROUTED = """\
       - kind: grouted_rock_bolts
         diameter_mm: 25

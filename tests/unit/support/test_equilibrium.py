@@ -7,19 +7,10 @@ without support.
 
 import numpy as np
 import pytest
-from unit.ground_reaction.sound_ground import curve
+from unit.ground_reaction.sound_ground import ELASTIC, curve
 
 from tunnelcalc.support.equilibrium import equilibrium, pressure_at_closure
 
-ELASTIC = {
-    "in_situ_stress_mpa": 4.0,
-    "intact_strength_mpa": 1000.0,
-    "mb": 10.0,
-    "s": 1.0,
-    "a": 0.5,
-    "deformation_modulus_mpa": 1250.0,
-    "poisson_ratio": 0.25,
-}
 RADIUS = np.array([5.0])
 FREE_M = 0.02
 

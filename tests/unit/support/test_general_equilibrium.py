@@ -5,7 +5,7 @@ The ground is elastic, 200 MPa a metre of wall: p = 200 (0.020 - u), 20 mm witho
 
 import numpy as np
 import pytest
-from unit.ground_reaction.sound_ground import curve
+from unit.ground_reaction.sound_ground import ELASTIC, curve
 from unit.support.other_ground import Kinked, VerticalAtZero
 
 from tunnelcalc.support.element_reactions import (
@@ -19,15 +19,6 @@ from tunnelcalc.support.element_reactions import (
 from tunnelcalc.support.general_equilibrium import general_equilibrium
 from tunnelcalc.support.mobilisation import NO_ELEMENT, first_failure, full_mobilisation
 
-ELASTIC = {
-    "in_situ_stress_mpa": 4.0,
-    "intact_strength_mpa": 1000.0,
-    "mb": 10.0,
-    "s": 1.0,
-    "a": 0.5,
-    "deformation_modulus_mpa": 1250.0,
-    "poisson_ratio": 0.25,
-}
 RADIUS = np.array([5.0])
 (ELASTIC_STATE, YIELDING, SLIPPING, USED_UP, OVERLOADED, FAILED) = list(ElementState)[2:]
 

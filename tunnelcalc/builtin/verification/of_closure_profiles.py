@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from functools import partial
 
 from tunnelcalc.api import Standing, VerificationCheck
-from tunnelcalc.builtin.verification.tables import check, number
+from tunnelcalc.builtin.verification.tables import number
 from tunnelcalc.ground_reaction import closure_profile as profiles
 
 OWN_FORM = "the published form, evaluated by hand"
@@ -58,7 +58,7 @@ def _checks() -> Iterator[VerificationCheck]:
     for method, profile, more, at_face, source in FACE:
         share = partial(number, profile)
         exact = Standing.EXACT
-        yield check(
+        yield VerificationCheck(
             method,
             "share at the face, R 1 m, elastic",
             source,
@@ -68,7 +68,7 @@ def _checks() -> Iterator[VerificationCheck]:
             at_face,
             partial(share, 0, *more),
         )
-        yield check(
+        yield VerificationCheck(
             method,
             "share far behind the face",
             source,
@@ -78,7 +78,7 @@ def _checks() -> Iterator[VerificationCheck]:
             1.0,
             partial(share, 1e6, *more),
         )
-        yield check(
+        yield VerificationCheck(
             method,
             "share two radii behind the face",
             source,

@@ -15,7 +15,7 @@ import numpy as np
 
 from tunnelcalc.api import Array, Standing, VerificationCheck
 from tunnelcalc.builtin.verification.independent import hoek_brown_strength
-from tunnelcalc.builtin.verification.tables import check, number
+from tunnelcalc.builtin.verification.tables import number
 from tunnelcalc.rock_mass import envelope
 from tunnelcalc.rock_mass.hoek_brown import equivalent_mohr_coulomb
 from tunnelcalc.rock_mass.mohr_coulomb import slope
@@ -111,7 +111,7 @@ def _constructed_part(rock: Rock, minor: float, which: int) -> float:
 
 def _balmer() -> Iterator[VerificationCheck]:
     for cohesion, friction, minor in ((0.58, 47.16, 1.0), (0.2, 24.0, 3.0)):
-        yield check(
+        yield VerificationCheck(
             "shear_strength",
             f"c {cohesion:g} MPa, phi {friction:g} deg, s3 {minor:g} MPa: tau = c + sn tan phi",
             f"{BALMER}; the line is its own envelope",
@@ -122,7 +122,7 @@ def _balmer() -> Iterator[VerificationCheck]:
             partial(_shear_on_line, cohesion, friction, minor),
         )
     for rock in ROCKS:
-        yield check(
+        yield VerificationCheck(
             "shear_strength",
             f"{rock.name}, s3 0.5 MPa: tau",
             f"{BALMER}; by a search for the highest circle",
@@ -132,7 +132,7 @@ def _balmer() -> Iterator[VerificationCheck]:
             partial(_by_circles, rock, 0.5),
             partial(_constructed_part, rock, 0.5, 1),
         )
-        yield check(
+        yield VerificationCheck(
             "shear_strength",
             f"{rock.name}, s3 0.5 MPa: tan of the tangent",
             f"{BALMER}; by numerical derivative of the highest circles",
@@ -181,7 +181,7 @@ def _line_errors() -> Iterator[VerificationCheck]:
             ("difference_mpa", "MPa", "largest error"),
             ("relative", "", "largest relative error"),
         ):
-            yield check(
+            yield VerificationCheck(
                 "line_error",
                 f"{rock.name}, {line} up to {rock.confinement:g} MPa: {what}",
                 "criterion and line in principal stresses; dense search",

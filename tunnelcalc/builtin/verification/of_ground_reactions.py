@@ -20,7 +20,6 @@ from tunnelcalc.builtin.verification.grounds import (
     wall_value,
 )
 from tunnelcalc.builtin.verification.independent import Ground, line_strength
-from tunnelcalc.builtin.verification.tables import check
 from tunnelcalc.ground_reaction.elastic import ElasticCurve
 
 APART, MEMORY, EXACT = Standing.INDEPENDENT, Standing.FROM_MEMORY, Standing.EXACT
@@ -48,7 +47,7 @@ def _by_integration() -> Iterator[VerificationCheck]:
             ("plastic_ratio", "", 1e-7),
             ("closure_ratio", "", 1e-9),
         ):
-            yield check(
+            yield VerificationCheck(
                 method,
                 f"{subject}: {quantity}",
                 f"equilibrium and flow rule; {source}",
@@ -82,7 +81,7 @@ def _closed_form(case: Case, pressure: float) -> float:
 def _closed_forms() -> Iterator[VerificationCheck]:
     for dilation in (0.0, 10.0, 30.0):
         case = Case(3.31, 1380, 0.25, 27.6, SOFT.peak, SOFT.peak, dilation)
-        yield check(
+        yield VerificationCheck(
             "hoek_brown_perfectly_plastic",
             f"soft rock, psi {dilation:g} deg: u / R",
             "Carranza-Torres & Fairhurst (1999), Int. J. Rock Mech. Min. Sci. 36, 777-809, "
@@ -93,7 +92,7 @@ def _closed_forms() -> Iterator[VerificationCheck]:
             partial(_closed_form, case, 0.1),
             partial(wall_value, case.plastic, 0.1, "closure_ratio"),
         )
-    yield check(
+    yield VerificationCheck(
         "elastic",
         "p0 10, pi 4 MPa, E 3000 MPa, nu 0.25: u / R = (p0 - pi) / (2 G)",
         "Lame; Timoshenko & Goodier, Theory of Elasticity",
@@ -127,7 +126,7 @@ def _straight_line() -> Iterator[VerificationCheck]:
     plastic, brittle = "mohr_coulomb_perfectly_plastic", "mohr_coulomb_brittle"
     source = "Duncan Fama (1993), Comprehensive Rock Engineering 2, ch. 5, closed form"
     for quantity in ("plastic_ratio", "closure_ratio"):
-        yield check(
+        yield VerificationCheck(
             plastic,
             f"psi 0, pi 0.2 MPa: {quantity}",
             source,
@@ -137,7 +136,7 @@ def _straight_line() -> Iterator[VerificationCheck]:
             partial(_duncan_fama, 0.2, quantity),
             partial(wall_value, line_curve, 0.2, quantity),
         )
-    yield check(
+    yield VerificationCheck(
         brittle,
         "phi 45 to 30 deg: critical pressure",
         SAMPLE,
@@ -148,7 +147,7 @@ def _straight_line() -> Iterator[VerificationCheck]:
         partial(wall_value, partial(line_curve, 0.0, True), 0.0, "critical_pressure_mpa"),
     )
     # With a residual friction of 30 degrees and no cohesion, Rp / R = (pcr / pi)^(1/2).
-    yield check(
+    yield VerificationCheck(
         brittle,
         "phi 45 to 30 deg, pi 0.4 MPa: Rp / R",
         SAMPLE,
@@ -161,7 +160,7 @@ def _straight_line() -> Iterator[VerificationCheck]:
     for method, residual in ((plastic, line_strength(2.414, 45)), (brittle, line_strength(0, 30))):
         ground = Ground(10, 1500, 0.25, 15, line_strength(2.414, 45), residual)
         make = partial(line_curve, 15.0, method == brittle)
-        yield check(
+        yield VerificationCheck(
             method,
             "psi 15 deg, pi 0.4 MPa: u / R",
             f"equilibrium and flow rule; {SAMPLE}",

@@ -6,7 +6,7 @@ from collections.abc import Iterator
 from functools import partial
 
 from tunnelcalc.api import Standing, VerificationCheck
-from tunnelcalc.builtin.verification.tables import check, number
+from tunnelcalc.builtin.verification.tables import number
 from tunnelcalc.rock_mass import deformation_modulus as relations
 
 BARTON = "Barton (2002), Int. J. Rock Mech. Min. Sci. 39, 185-216, table 6"
@@ -23,7 +23,7 @@ def _barton() -> Iterator[VerificationCheck]:
         ("row 4", 30 / 15 * 1 / 4 * 0.66 / 2.5, 33, 3.5, 0.05),
     )
     for row, q, strength, expected, tolerance in rows:
-        yield check(
+        yield VerificationCheck(
             "barton_2002",
             f"{row}: Q {q:.3g}, sci {strength} MPa",
             BARTON,
@@ -42,7 +42,7 @@ def _of_2002() -> Iterator[VerificationCheck]:
         ("very poor rock: GSI 30, sci 20 MPa", 30, 20, 1400, 50),
     )
     for subject, gsi, strength, expected, tolerance in rows:
-        yield check(
+        yield VerificationCheck(
             "hoek_2002",
             subject,
             CLASSES_1997,
@@ -52,7 +52,7 @@ def _of_2002() -> Iterator[VerificationCheck]:
             expected,
             partial(number, relations.hoek_2002_mpa, gsi, 0, strength),
         )
-    yield check(
+    yield VerificationCheck(
         "hoek_2002",
         "schist: GSI 20, sci 5 MPa",
         "Hoek, rock mass properties, worked examples",
@@ -98,7 +98,9 @@ def _exact() -> Iterator[VerificationCheck]:
         ),
     )
     for method, subject, source, expected, computed in rows:
-        yield check(method, subject, source, Standing.EXACT, "MPa", 1e-8, expected, computed)
+        yield VerificationCheck(
+            method, subject, source, Standing.EXACT, "MPa", 1e-8, expected, computed
+        )
 
 
 MODULUS_CHECKS = (*_barton(), *_of_2002(), *_exact())

@@ -6,7 +6,7 @@ from collections.abc import Iterator
 from functools import partial
 
 from tunnelcalc.api import Standing, VerificationCheck
-from tunnelcalc.builtin.verification.tables import check, number
+from tunnelcalc.builtin.verification.tables import number
 from tunnelcalc.rock_mass import observations
 
 EXACT, APART = Standing.EXACT, Standing.INDEPENDENT
@@ -39,12 +39,12 @@ def _exact() -> Iterator[VerificationCheck]:
     )
     for method, subject, source, unit, expected, function, values in rows:
         computed = partial(number, function, *values)
-        yield check(method, subject, source, EXACT, unit, 1e-12, expected, computed)
+        yield VerificationCheck(method, subject, source, EXACT, unit, 1e-12, expected, computed)
 
 
 def _worked_apart() -> Iterator[VerificationCheck]:
     for volume, condition, expected in BLOCKS:
-        yield check(
+        yield VerificationCheck(
             "block_volume",
             f"Vb {volume:g} cm3, Jc {condition:g}: GSI",
             CAI_2006,
@@ -55,7 +55,7 @@ def _worked_apart() -> Iterator[VerificationCheck]:
             partial(number, observations.gsi_from_block_volume, volume, condition),
         )
     for peak, expected in RESIDUAL:
-        yield check(
+        yield VerificationCheck(
             "cai_2007",
             f"GSI {peak}: residual GSI",
             CAI_2007,

@@ -19,7 +19,6 @@ from tunnelcalc.builtin.verification.grounds import (
     ring_curve,
     wall_value,
 )
-from tunnelcalc.builtin.verification.tables import check
 from tunnelcalc.ground_reaction.elastic import ElasticCurve
 from tunnelcalc.ground_reaction.finite_strain import FiniteStrainCurve
 
@@ -33,7 +32,7 @@ def _limits() -> Iterator[VerificationCheck]:
         (1e9, "perfectly plastic", SOFTER.plastic),
         (1e-9, "brittle", SOFTER.brittle),
     ):
-        yield check(
+        yield VerificationCheck(
             softening,
             f"critical strain {strain:g}: u / R is the {other} one",
             f"limit of the law; {SOFTENING}",
@@ -48,7 +47,7 @@ def _limits() -> Iterator[VerificationCheck]:
         (1e6, (0.6, 1e-4, 0.53), 700),
     ):
         alone = Case(WEAK.p0, modulus, WEAK.nu, WEAK.sci, constants, constants, WEAK.dilation)
-        yield check(
+        yield VerificationCheck(
             ring,
             f"ring to {ratio:g} R: u / R of uniform ground",
             "limit of the law; Lame; invented ground",
@@ -66,7 +65,7 @@ def _softening() -> Iterator[VerificationCheck]:
         make = partial(SOFTER.softening, strain)
         ground = SOFTER.softening_apart(strain)
         for quantity, tolerance in (("plastic_ratio", 2e-5), ("closure_ratio", 2e-7)):
-            yield check(
+            yield VerificationCheck(
                 "hoek_brown_softening",
                 f"critical strain {strain:g}, pi {pressure:g} MPa: {quantity}",
                 f"equilibrium and flow rule; {SOFTENING}",
@@ -94,7 +93,7 @@ def _order(strain: float, pressure: float) -> float:
 
 def _convergence() -> Iterator[VerificationCheck]:
     for strain, pressure in ((0.01, 0.5), (0.05, 0.5)):
-        yield check(
+        yield VerificationCheck(
             "hoek_brown_softening",
             f"critical strain {strain:g}, pi {pressure:g} MPa: order of convergence of u / R, "
             "50, 100, 200 annuli",
@@ -120,7 +119,7 @@ TABLE = (
 def _finite_strain() -> Iterator[VerificationCheck]:
     source = "Vrakas & Anagnostou (2014), Int. J. Numer. Anal. Methods Geomech. 38, 1131-1148"
     for dilation, small, finite in TABLE:
-        yield check(
+        yield VerificationCheck(
             "hoek_brown_perfectly_plastic_finite_strain",
             f"psi {dilation} deg, small-strain u / R {small:g}",
             source,
@@ -137,7 +136,7 @@ def _finite_strain() -> Iterator[VerificationCheck]:
         ("mohr_coulomb_perfectly_plastic", partial(line_curve, 10.0)),
         ("mohr_coulomb_brittle", partial(line_curve, 10.0, True)),
     ):
-        yield check(
+        yield VerificationCheck(
             f"{law}_finite_strain",
             "psi 10 deg, pi 0.4 MPa: u / R of conserved r^K dr",
             source,

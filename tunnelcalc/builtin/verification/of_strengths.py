@@ -9,7 +9,7 @@ from functools import partial
 import numpy as np
 
 from tunnelcalc.api import Standing, VerificationCheck
-from tunnelcalc.builtin.verification.tables import check, number
+from tunnelcalc.builtin.verification.tables import number
 from tunnelcalc.rock_mass import hoek_brown
 from tunnelcalc.rock_mass.mohr_coulomb import unconfined_strength_mpa
 
@@ -48,7 +48,9 @@ def _worked_example() -> Iterator[VerificationCheck]:
     for subject, slope, which, unit, tolerance, expected in rows:
         computed = partial(_line, slope, which)
         standing = Standing.FROM_MEMORY
-        yield check(OF_GSI, subject, PAPER_2002, standing, unit, tolerance, expected, computed)
+        yield VerificationCheck(
+            OF_GSI, subject, PAPER_2002, standing, unit, tolerance, expected, computed
+        )
 
 
 def _rock_masses() -> Iterator[VerificationCheck]:
@@ -63,7 +65,9 @@ def _rock_masses() -> Iterator[VerificationCheck]:
     for subject, gsi, mi, which, tolerance, expected in rows:
         computed = partial(lambda g, m, w: constants(g, m, 0)[w], gsi, mi, which)
         standing = Standing.FROM_MEMORY
-        yield check(OF_GSI, subject, EXAMPLES, standing, "", tolerance, expected, computed)
+        yield VerificationCheck(
+            OF_GSI, subject, EXAMPLES, standing, "", tolerance, expected, computed
+        )
 
 
 def _unconfined_by_line(which: int) -> float:
@@ -76,7 +80,7 @@ def _unconfined_by_line(which: int) -> float:
 
 
 def _others() -> Iterator[VerificationCheck]:
-    yield check(
+    yield VerificationCheck(
         OF_GSI,
         "line up to sci/4: its unconfined strength is the global strength",
         "Hoek, Carranza-Torres & Corkum (2002), identity of their derivation",
@@ -86,7 +90,7 @@ def _others() -> Iterator[VerificationCheck]:
         partial(_unconfined_by_line, 0),
         partial(_unconfined_by_line, 1),
     )
-    yield check(
+    yield VerificationCheck(
         OF_GSI,
         "intact rock, GSI 100, D 0: exponent a",
         "Hoek, Carranza-Torres & Corkum (2002), intact rock",
@@ -96,7 +100,7 @@ def _others() -> Iterator[VerificationCheck]:
         0.5,
         lambda: constants(100, 10, 0)[2],
     )
-    yield check(
+    yield VerificationCheck(
         "hoek_brown_constants",
         "original form, a 0.5, s 0.004, sci 30 MPa: unconfined strength sci sqrt(s)",
         "Hoek & Brown (1980), J. Geotech. Eng. Div. 106, original criterion",
@@ -106,7 +110,7 @@ def _others() -> Iterator[VerificationCheck]:
         30 * math.sqrt(0.004),
         lambda: number(hoek_brown.rock_mass_strength_mpa, 30, 0.004, 0.5),
     )
-    yield check(
+    yield VerificationCheck(
         "mohr_coulomb",
         "phi 45 deg, c 2.414 MPa: unconfined strength",
         "Brady & Brown, Rock Mechanics for Underground Mining, sample problem",

@@ -9,7 +9,6 @@ import numpy as np
 
 from tunnelcalc.api import Sections, Standing, VerificationCheck
 from tunnelcalc.builtin.class_checks import WaterOnLining
-from tunnelcalc.builtin.verification.tables import check
 from tunnelcalc.pipeline.ground_stages import in_situ_stress_stage
 from tunnelcalc.project import DRAINED, WATERTIGHT
 
@@ -83,13 +82,15 @@ def _checks() -> Iterator[VerificationCheck]:
     )
     for method, subject, source, expected, column, drainage, ratio, head in rows:
         computed = partial(_stress, column, drainage, ratio, head)
-        yield check(method, subject, source, Standing.EXACT, "MPa", 1e-12, expected, computed)
+        yield VerificationCheck(
+            method, subject, source, Standing.EXACT, "MPa", 1e-12, expected, computed
+        )
     for subject, expected, drainage in (
         ("head 100 m, watertight: pressure on the rings", 0.981, WATERTIGHT),
         ("head 100 m, drained: pressure on the rings", 0.0, DRAINED),
     ):
         computed = partial(_on_lining, drainage)
-        yield check(
+        yield VerificationCheck(
             "water_on_lining", subject, WATER, Standing.EXACT, "MPa", 1e-12, expected, computed
         )
 
